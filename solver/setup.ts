@@ -1,0 +1,67 @@
+/**
+ * What a box of fluid is, in lattice units: cell size 1, time step 1, CS2 = 1/3.
+ * x runs along the channel (0 .. nx-1), y across it (0 .. ny-1, from the left wall); the centre of cell (x, y) lies at (x, y),
+ * so a halfway wall on the left side lies at y = -1/2.
+ */
+
+/** How one side of the box ends. A moving wall slides along itself with `speed` (+x on left/right, +y on bottom/top). */
+export type Side = 'periodic' | 'wall' | 'slip' | { speed: number };
+
+export interface Fluid {
+  /** density */
+  density: number;
+  /** dynamic viscosity eta */
+  viscosity: number;
+}
+
+/** A vector along (x) and across (y) the channel. */
+export interface Vector {
+  x: number;
+  y: number;
+}
+
+/** Closes a periodic channel along x by a uniform force on all cells, set anew in every step from the mean of ux. */
+export type Drive =
+  /** -coefficient * U |U|, U = mean ux: the resistance of the way back through the tank */
+  | { kind: 'loss'; coefficient: number }
+  /** holds the mean of ux at `target` (a pump) */
+  | { kind: 'upflow'; target: number };
+
+export interface Setup {
+  nx: number;
+  ny: number;
+  /** sides at y = -1/2, y = ny - 1/2, x = -1/2, x = nx - 1/2; periodic sides come in pairs */
+  sides: { left: Side; right: Side; bottom: Side; top: Side };
+  liquid: Fluid;
+  /** without a gas the box holds one phase, and phi is 1 everywhere */
+  gas?: Fluid;
+  /** sigma; needed with a gas */
+  surfaceTension?: number;
+  /** W, cells; 5 by default */
+  interfaceWidth?: number;
+  /** M of the interface equation; 0.1 by default */
+  mobility?: number;
+  /** theta at walls and solids, radians, measured in the liquid; pi/2 by default */
+  contactAngle?: number;
+  /** 1 where a cell is solid; shape (ny, nx), x contiguous: index y * nx + x */
+  solid?: Uint8Array;
+  /** acceleration on (rho - liquid density), times `buoyancy`; the hydrostatic pressure of the liquid is left out of p */
+  gravity?: Vector;
+  /** factor on the density difference in the buoyancy, where the gas is heavier than the real one; 1 by default */
+  buoyancy?: number;
+  /** force per volume on all cells */
+  force?: Vector;
+  drive?: Drive;
+  /** share of the gas taken out in one step, per x; shape (nx) */
+  skim?: Float64Array;
+  /** state at the start as functions of the cell's centre; phi 1, at rest, p 0 by default */
+  initial?: {
+    phi?: (x: number, y: number) => number;
+    velocity?: (x: number, y: number) => Vector;
+    pressure?: (x: number, y: number) => number;
+  };
+  /** speed at which a run is stopped as too fast; 0.4 by default */
+  speedLimit?: number;
+  /** f32 by default; f64 serves validation */
+  precision?: 'f32' | 'f64';
+}
