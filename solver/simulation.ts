@@ -5,9 +5,7 @@ import type { Setup } from './setup.ts';
 export type Field = NdArray<Float32Array | Float64Array>;
 
 /** How `advance` ended. On a failure `x`, `y` name the first bad cell of `step`. */
-export type Status =
-  | { kind: 'ok'; step: number }
-  | { kind: 'nonFinite' | 'tooFast'; step: number; x: number; y: number; speed: number };
+export type Status = { kind: 'ok'; step: number } | { kind: 'nonFinite' | 'tooFast'; step: number; x: number; y: number; speed: number };
 
 /** A series along time: `get(sample, x)`, shape [samples, nx]. */
 export type Rows = NdArray<Float32Array>;

@@ -1,0 +1,111 @@
+import { CS2 } from './constants.ts';
+import { type Geometry, geometry } from './geometry.ts';
+import type { Drive, Setup, Side } from './setup.ts';
+
+/** A setup with every default filled in and every derived number worked out, as both implementations of the step read it. */
+export interface Box {
+  setup: Setup;
+  nx: number;
+  ny: number;
+  twoPhase: boolean;
+  rhoLiquid: number;
+  rhoGas: number;
+  /** 1 / eta of both phases: 1/eta is linear in phi (harmonic mixing) */
+  fluidityLiquid: number;
+  fluidityGas: number;
+  /** mu = 4 beta phi (phi - 1) (phi - 1/2) - kappa lap phi */
+  beta: number;
+  kappa: number;
+  W: number;
+  mobility: number;
+  omegaPhi: number;
+  /** (4 / W) cos(theta): slope of phi at a wall over phi (1 - phi) */
+  wetting: number;
+  sigma: number;
+  /** force on all cells */
+  forceX: number;
+  forceY: number;
+  /** force per (rho - rhoLiquid): gravity times the buoyancy factor */
+  gravityX: number;
+  gravityY: number;
+  drive: Drive | undefined;
+  /** s / (1 - s) of the skimmed share s, per x; shape (nx) */
+  skim: Float64Array;
+  speedLimit: number;
+  geometry: Geometry;
+}
+
+const fail = (what: string): never => {
+  throw new RangeError(`setup: ${what}`);
+};
+
+const positive = (name: string, value: number): number =>
+  value > 0 && Number.isFinite(value) ? value : fail(`${name} is ${value}; it must be positive and finite`);
+
+const finite = (name: string, value: number): number => (Number.isFinite(value) ? value : fail(`${name} is ${value}; it must be finite`));
+
+/**
+ * Checks a setup and fills in its defaults.
+ * @throws {RangeError} naming the entry, its value and what it must be
+ */
+export function resolve(setup: Setup): Box {
+  const { nx, ny, sides } = setup;
+  if (!Number.isInteger(nx) || nx < 1) fail(`nx is ${nx}; it must be a whole number of at least 1`);
+  if (!Number.isInteger(ny) || ny < 1) fail(`ny is ${ny}; it must be a whole number of at least 1`);
+  checkPair('left', sides.left, 'right', sides.right);
+  checkPair('bottom', sides.bottom, 'top', sides.top);
+  if (setup.solid && setup.solid.length !== nx * ny) fail(`solid has ${setup.solid.length} entries; nx * ny = ${nx * ny} are needed`);
+  if (setup.skim && setup.skim.length !== nx) fail(`skim has ${setup.skim.length} entries; nx = ${nx} are needed`);
+  const twoPhase = setup.gas !== undefined;
+  if (twoPhase && setup.surfaceTension === undefined) fail('surfaceTension is missing; a box with gas needs it (0 is allowed)');
+  const sigma = finite('surfaceTension', setup.surfaceTension ?? 0);
+  if (sigma < 0) fail(`surfaceTension is ${sigma}; it must not be negative`);
+  const gas = setup.gas ?? setup.liquid;
+  const W = positive('interfaceWidth', setup.interfaceWidth ?? 5);
+  const mobility = positive('mobility', setup.mobility ?? 0.1);
+  const buoyancy = finite('buoyancy', setup.buoyancy ?? 1);
+  return {
+    setup,
+    nx,
+    ny,
+    twoPhase,
+    rhoLiquid: positive('liquid.density', setup.liquid.density),
+    rhoGas: positive('gas.density', gas.density),
+    fluidityLiquid: 1 / positive('liquid.viscosity', setup.liquid.viscosity),
+    fluidityGas: 1 / positive('gas.viscosity', gas.viscosity),
+    beta: (12 * sigma) / W,
+    kappa: (3 * sigma * W) / 2,
+    W,
+    mobility,
+    omegaPhi: 1 / (mobility / CS2 + 0.5),
+    wetting: (4 / W) * Math.cos(finite('contactAngle', setup.contactAngle ?? Math.PI / 2)),
+    sigma,
+    forceX: finite('force.x', setup.force?.x ?? 0),
+    forceY: finite('force.y', setup.force?.y ?? 0),
+    gravityX: buoyancy * finite('gravity.x', setup.gravity?.x ?? 0),
+    gravityY: buoyancy * finite('gravity.y', setup.gravity?.y ?? 0),
+    drive: setup.drive,
+    skim: Float64Array.from({ length: nx }, (_, x) => skimRatio(setup.skim?.[x] ?? 0)),
+    speedLimit: positive('speedLimit', setup.speedLimit ?? 0.4),
+    geometry: geometry(setup),
+  };
+}
+
+function skimRatio(share: number): number {
+  return share >= 0 && share < 1 ? share / (1 - share) : fail(`skim holds ${share}; a share lies in 0 to 1`);
+}
+
+function checkPair(nameA: string, a: Side, nameB: string, b: Side): void {
+  if ((a === 'periodic') !== (b === 'periodic')) fail(`${nameA} and ${nameB} must both be periodic or neither`);
+  for (const side of [a, b]) if (typeof side === 'object') finite(`speed of a moving wall`, side.speed);
+}
+
+/** Tangential speed of a side's wall. */
+export const wallSpeed = (side: Side): number => (typeof side === 'object' ? side.speed : 0);
+
+/** Uniform x-force of the drive for a mean velocity `now` that was `before` one step ago. */
+export function driveForce(drive: Drive | undefined, rhoLiquid: number, previousForce: number, now: number, before: number): number {
+  if (drive === undefined) return 0;
+  if (drive.kind === 'loss') return -drive.coefficient * now * Math.abs(now);
+  return previousForce + 0.05 * rhoLiquid * (drive.target - 2 * now + before);
+}

@@ -1,0 +1,91 @@
+import { ex, ey, w } from './lattice.ts';
+import type { Setup } from './setup.ts';
+
+/** A pull from a solid cell: what leaves the fluid cell against `k` comes back along `k`. */
+export interface Link {
+  /** solid cell whose slot `k` is filled */
+  x: number;
+  y: number;
+  k: number;
+  /** fluid cell x + ex[k], y + ey[k] (wrapped where a side is periodic) */
+  fluidX: number;
+  fluidY: number;
+}
+
+/** A solid cell next to fluid: it carries a ghost value of phi, made from the weighted mean of its fluid neighbours. */
+export interface SolidGhost {
+  x: number;
+  y: number;
+  neighbours: { x: number; y: number; weight: number }[];
+}
+
+/** What the solids of a box amount to, worked out once. */
+export interface Geometry {
+  links: Link[];
+  ghosts: SolidGhost[];
+  /** 1 fluid, 0 solid; shape (ny, nx) */
+  fluid: Uint8Array;
+  /** runs of solid cells per row: [y, first x, end x) */
+  runs: [number, number, number][];
+  /**
+   * Weights of the first and second cell in the wall value of the shear, per x: 1.5 and -0.5 (linear extrapolation to the
+   * halfway wall), 1 and 0 where a solid stands on the second cell, 0 and 0 where it stands on the first; shape (nx)
+   */
+  wallWeights: { left: [Float64Array, Float64Array]; right: [Float64Array, Float64Array] };
+}
+
+/** Cells of the box that a neighbour in direction `k` lies in, or undefined outside a side that is not periodic. */
+function neighbour(setup: Setup, x: number, y: number, k: number): [number, number] | undefined {
+  let nx = x + ex[k];
+  let ny = y + ey[k];
+  if (nx < 0 || nx >= setup.nx) {
+    if (setup.sides.bottom !== 'periodic') return undefined;
+    nx = (nx + setup.nx) % setup.nx;
+  }
+  if (ny < 0 || ny >= setup.ny) {
+    if (setup.sides.left !== 'periodic') return undefined;
+    ny = (ny + setup.ny) % setup.ny;
+  }
+  return [nx, ny];
+}
+
+/** Links, ghosts and wall weights of a box's solid cells. */
+export function geometry(setup: Setup): Geometry {
+  const { nx, ny } = setup;
+  const fluid = new Uint8Array(nx * ny).fill(1);
+  const links: Link[] = [];
+  const ghosts: SolidGhost[] = [];
+  const runs: [number, number, number][] = [];
+  if (setup.solid) for (let i = 0; i < fluid.length; i++) fluid[i] = setup.solid[i] === 0 ? 1 : 0;
+  for (let y = 0; y < ny; y++) {
+    for (let x = 0; x < nx; x++) {
+      if (fluid[y * nx + x] === 1) continue;
+      const run = runs.at(-1);
+      if (run && run[0] === y && run[2] === x) run[2] = x + 1;
+      else runs.push([y, x, x + 1]);
+      const neighbours: SolidGhost['neighbours'] = [];
+      for (let k = 1; k < 9; k++) {
+        const cell = neighbour(setup, x, y, k);
+        if (cell === undefined || fluid[cell[1] * nx + cell[0]] === 0) continue;
+        links.push({ x, y, k, fluidX: cell[0], fluidY: cell[1] });
+        neighbours.push({ x: cell[0], y: cell[1], weight: w[k] });
+      }
+      const sum = neighbours.reduce((total, n) => total + n.weight, 0);
+      for (const n of neighbours) n.weight /= sum;
+      if (neighbours.length > 0) ghosts.push({ x, y, neighbours });
+    }
+  }
+  return { links, ghosts, fluid, runs, wallWeights: { left: wallWeights(fluid, nx, 0, 1), right: wallWeights(fluid, nx, ny - 1, ny - 2) } };
+}
+
+function wallWeights(fluid: Uint8Array, nx: number, first: number, second: number): [Float64Array, Float64Array] {
+  const a = new Float64Array(nx);
+  const b = new Float64Array(nx);
+  for (let x = 0; x < nx; x++) {
+    if (fluid[first * nx + x] === 0) continue;
+    const open = second >= 0 && second * nx < fluid.length && fluid[second * nx + x] === 1;
+    a[x] = open ? 1.5 : 1;
+    b[x] = open ? -0.5 : 0;
+  }
+  return [a, b];
+}

@@ -1,0 +1,347 @@
+/**
+ * The method in plain f64 TypeScript: a text to read, and the oracle of the kernel's tests. One step, in order:
+ *
+ * 1. `fillGhosts`: populations leaving the box come back through its sides; solids return what met them.
+ * 2. `interfacePass`: phi of every cell is the sum of the g that arrive; skimming; ghosts of phi carry the wetting.
+ * 3. `cell`: gradients of phi, forces, velocity, pressure, wall stress; then both collisions (collide.ts).
+ *
+ * Layout: fields of shape (ny + 2, nx + 2), row-major, a ghost ring of one; populations one such field per direction,
+ * after collision, f as it is (it sums to about 0), g less w/2.
+ */
+import ndarray from 'ndarray';
+import { type Box, driveForce, resolve, wallSpeed } from './box.ts';
+import { type Cell, collideFlow, collideInterface, newCell } from './collide.ts';
+import { Q } from './constants.ts';
+import { ex, ey, mirrorX, mirrorY, opposite, w } from './lattice.ts';
+import { Recorder } from './recorder.ts';
+import type { Setup, Side } from './setup.ts';
+import type { Field, Samples, Simulation, Status } from './simulation.ts';
+import { equilibriumState, placeCircle } from './state.ts';
+
+export class Reference implements Simulation {
+  readonly setup: Setup;
+  readonly phi: Field;
+  readonly ux: Field;
+  readonly uy: Field;
+  readonly pressure: Field;
+  step = 0;
+  private readonly box: Box;
+  private readonly S: number;
+  /** f, g now and after the running step; [direction][cell] */
+  private f: Float64Array[];
+  private g: Float64Array[];
+  private fNext: Float64Array[];
+  private gNext: Float64Array[];
+  private readonly fields: Record<'phi' | 'ux' | 'uy' | 'p', Float64Array>;
+  /** wall stress of the first and second row at either wall; shape (4, nx) */
+  private readonly stress: Float64Array[];
+  private readonly recorder: Recorder;
+  private readonly cell: Cell = newCell();
+  /** drive force now, mean ux now and one step ago, gas area, gas skimmed */
+  private readonly totalsNow = new Float64Array(5);
+
+  constructor(setup: Setup) {
+    this.setup = setup;
+    this.box = resolve(setup);
+    const { nx, ny } = this.box;
+    this.S = nx + 2;
+    const size = this.S * (ny + 2);
+    const field = () => new Float64Array(size);
+    const populations = () => Array.from({ length: Q }, field);
+    this.f = populations();
+    this.g = populations();
+    this.fNext = populations();
+    this.gNext = populations();
+    this.fields = { phi: field(), ux: field(), uy: field(), p: field() };
+    this.stress = Array.from({ length: 4 }, () => new Float64Array(nx));
+    this.recorder = new Recorder(nx);
+    const view = (data: Float64Array): Field => ndarray(data, [nx, ny], [1, this.S], this.S + 1);
+    this.phi = view(this.fields.phi);
+    this.ux = view(this.fields.ux);
+    this.uy = view(this.fields.uy);
+    this.pressure = view(this.fields.p);
+    for (let y = 0; y < ny; y++) for (let x = 0; x < nx; x++) this.start(x, y);
+  }
+
+  /** Index of a cell. */
+  private at(x: number, y: number): number {
+    return (y + 1) * this.S + x + 1;
+  }
+
+  private start(x: number, y: number): void {
+    const { initial } = this.setup;
+    if (this.box.geometry.fluid[y * this.box.nx + x] === 0) {
+      this.fields.phi[this.at(x, y)] = 1;
+      return;
+    }
+    const velocity = initial?.velocity?.(x, y) ?? { x: 0, y: 0 };
+    const phi = this.box.twoPhase ? (initial?.phi?.(x, y) ?? 1) : 1;
+    this.setCell(x, y, phi, velocity.x, velocity.y, initial?.pressure?.(x, y) ?? 0);
+    this.totalsNow[1] += velocity.x / (this.box.nx * this.box.ny);
+    this.totalsNow[2] = this.totalsNow[1];
+  }
+
+  private setCell(x: number, y: number, phi: number, ux: number, uy: number, p: number): void {
+    const i = this.at(x, y);
+    const state = equilibriumState(this.box, phi, ux, uy, p);
+    for (let k = 0; k < Q; k++) {
+      this.f[k][i] = state.f[k];
+      this.g[k][i] = state.g[k];
+    }
+    this.fields.phi[i] = phi;
+    this.fields.ux[i] = ux;
+    this.fields.uy[i] = uy;
+    this.fields.p[i] = p;
+  }
+
+  advance(steps: number, sampleEvery = 0): Status {
+    for (let n = 0; n < steps; n++) {
+      this.fillGhosts();
+      if (this.box.twoPhase) this.interfacePass();
+      const status = this.cells();
+      [this.f, this.fNext] = [this.fNext, this.f];
+      [this.g, this.gNext] = [this.gNext, this.g];
+      this.step++;
+      if (sampleEvery > 0 && this.step % sampleEvery === 0) this.sample();
+      if (status) return status;
+    }
+    return { kind: 'ok', step: this.step };
+  }
+
+  // ---- 1. ghosts of the populations
+
+  private fillGhosts(): void {
+    const { nx, ny, setup, twoPhase, geometry } = this.box;
+    const sets = twoPhase ? [this.f, this.g] : [this.f];
+    for (const set of sets) {
+      for (const { x, y, k, fluidX, fluidY } of geometry.links) set[k][this.at(x, y)] = set[opposite[k]][this.at(fluidX, fluidY)];
+      if (setup.sides.bottom === 'periodic') {
+        for (const field of set) {
+          for (let y = 0; y < ny; y++) {
+            field[this.at(-1, y)] = field[this.at(nx - 1, y)];
+            field[this.at(nx, y)] = field[this.at(0, y)];
+          }
+        }
+      } else {
+        this.reflect(set, setup.sides.bottom, 'x', 0, 1);
+        this.reflect(set, setup.sides.top, 'x', nx - 1, -1);
+      }
+      if (setup.sides.left === 'periodic') {
+        const [from, to] = setup.sides.bottom === 'periodic' ? [-1, nx + 1] : [0, nx];
+        for (const field of set) {
+          for (let x = from; x < to; x++) {
+            field[this.at(x, -1)] = field[this.at(x, ny - 1)];
+            field[this.at(x, ny)] = field[this.at(x, 0)];
+          }
+        }
+      } else {
+        this.reflect(set, setup.sides.left, 'y', 0, 1);
+        this.reflect(set, setup.sides.right, 'y', ny - 1, -1);
+      }
+    }
+  }
+
+  /**
+   * Fills the ghosts beyond one side from its first row of cells. `axis` is the one across the side, `edge` the row's
+   * coordinate on it, `inward` the sign of the directions that come back. A wall sends each population back where it came
+   * from, adding 2 w rho e.u/CS2 when it moves; a slip side mirrors it. In a corner of two sides that are not periodic the
+   * diagonal goes straight back.
+   */
+  private reflect(set: Float64Array[], side: Side, axis: 'x' | 'y', edge: number, inward: 1 | -1): void {
+    const { nx, ny } = this.box;
+    const [eN, eT, length] = axis === 'y' ? [ey, ex, nx] : [ex, ey, ny];
+    const periodicT = (axis === 'y' ? this.setup.sides.bottom : this.setup.sides.left) === 'periodic';
+    const mirrored = axis === 'y' ? mirrorY : mirrorX;
+    const speed = set === this.f ? wallSpeed(side) : 0;
+    const place = (t: number, n: number): number => (axis === 'y' ? this.at(t, n) : this.at(n, t));
+    for (let k = 1; k < Q; k++) {
+      if (eN[k] !== inward) continue;
+      for (let t = 0; t < length; t++) {
+        const ghost = place(t - eT[k], edge - inward);
+        const corner = !periodicT && (t - eT[k] < 0 || t - eT[k] >= length);
+        if (side === 'slip' && !corner) {
+          set[k][ghost] = set[mirrored[k]][place((t - eT[k] + length) % length, edge)];
+        } else {
+          const rho = this.box.rhoGas + this.fields.phi[place(t, edge)] * (this.box.rhoLiquid - this.box.rhoGas);
+          set[k][ghost] = set[opposite[k]][place(t, edge)] + 6 * w[k] * rho * eT[k] * speed;
+        }
+      }
+    }
+  }
+
+  // ---- 2. phi
+
+  private interfacePass(): void {
+    const { nx, ny, skim, geometry } = this.box;
+    const { phi } = this.fields;
+    let gas = 0;
+    let skimmed = 0;
+    for (let y = 0; y < ny; y++) {
+      for (let x = 0; x < nx; x++) {
+        const i = this.at(x, y);
+        let sum = 0.5;
+        for (let k = 0; k < Q; k++) sum += this.g[k][i - ey[k] * this.S - ex[k]];
+        const left = (1 - sum) / (1 + skim[x]);
+        phi[i] = 1 - left;
+        if (geometry.fluid[y * nx + x] === 0) continue;
+        gas += left;
+        skimmed += left * skim[x];
+      }
+    }
+    this.totalsNow[3] = gas;
+    this.totalsNow[4] += skimmed;
+    this.fillPhiGhosts();
+  }
+
+  /** phi at a wall whose first cell holds `phi`, from d(phi)/dn = -(4/W) cos(theta) phi (1 - phi), and the ghost beyond it. */
+  private wettedGhost(phi: number): number {
+    const c = this.box.wetting;
+    const wall = (4 * phi) / (2 - c + Math.sqrt(Math.max((2 - c) * (2 - c) + 8 * c * phi, 0)));
+    return 2 * wall - phi;
+  }
+
+  private fillPhiGhosts(): void {
+    const { nx, ny, setup, geometry } = this.box;
+    const { phi } = this.fields;
+    for (const ghost of geometry.ghosts) {
+      let mean = 0;
+      for (const n of ghost.neighbours) mean += n.weight * phi[this.at(n.x, n.y)];
+      phi[this.at(ghost.x, ghost.y)] = this.wettedGhost(mean);
+    }
+    const beyond = (side: Side, inside: number, across: number): number =>
+      side === 'periodic' ? phi[across] : side === 'slip' ? phi[inside] : this.wettedGhost(phi[inside]);
+    const { left, right, bottom, top } = setup.sides;
+    for (let x = 0; x < nx; x++) {
+      phi[this.at(x, -1)] = beyond(left, this.at(x, 0), this.at(x, ny - 1));
+      phi[this.at(x, ny)] = beyond(right, this.at(x, ny - 1), this.at(x, 0));
+    }
+    for (let y = -1; y <= ny; y++) {
+      phi[this.at(-1, y)] = beyond(bottom, this.at(0, y), this.at(nx - 1, y));
+      phi[this.at(nx, y)] = beyond(top, this.at(nx - 1, y), this.at(0, y));
+    }
+  }
+
+  // ---- 3. collision
+
+  private cells(): Status | undefined {
+    const { nx, ny, geometry, speedLimit } = this.box;
+    const { f, g, S, cell, fields } = this;
+    let sumUx = 0;
+    let bad: Status | undefined;
+    for (let y = 0; y < ny; y++) {
+      for (let x = 0; x < nx; x++) {
+        const i = this.at(x, y);
+        if (geometry.fluid[y * nx + x] === 0) {
+          for (let k = 0; k < Q; k++) this.fNext[k][i] = this.gNext[k][i] = 0;
+          continue;
+        }
+        for (let k = 0; k < Q; k++) {
+          const from = i - ey[k] * S - ex[k];
+          cell.f[k] = f[k][from];
+          cell.g[k] = g[k][from];
+        }
+        if (this.box.twoPhase) this.gradients(i);
+        cell.driveX = this.totalsNow[0];
+        cell.skim = this.box.skim[x];
+        collideFlow(this.box, cell);
+        if (this.box.twoPhase) collideInterface(this.box, cell);
+        for (let k = 0; k < Q; k++) {
+          this.fNext[k][i] = cell.f[k];
+          this.gNext[k][i] = cell.g[k];
+        }
+        fields.ux[i] = cell.ux;
+        fields.uy[i] = cell.uy;
+        fields.p[i] = cell.p;
+        sumUx += cell.ux;
+        if (y < 2) this.stress[y][x] = cell.tauXY;
+        if (y >= ny - 2) this.stress[2 + ny - 1 - y][x] = cell.tauXY;
+        const speed = Math.hypot(cell.ux, cell.uy);
+        if (!(speed < speedLimit) && bad === undefined) {
+          bad = { kind: Number.isFinite(speed) ? 'tooFast' : 'nonFinite', step: this.step + 1, x, y, speed };
+        }
+      }
+    }
+    const before = this.totalsNow[1];
+    const now = sumUx / (nx * ny);
+    this.totalsNow[0] = driveForce(this.box.drive, this.box.rhoLiquid, this.totalsNow[0], now, before);
+    this.totalsNow[1] = now;
+    this.totalsNow[2] = before;
+    return bad;
+  }
+
+  /** Isotropic gradient (8 neighbours) and Laplacian (9 points) of phi. */
+  private gradients(i: number): void {
+    const { phi } = this.fields;
+    const { S, cell } = this;
+    const [E, N, Wst, Sth] = [phi[i + 1], phi[i + S], phi[i - 1], phi[i - S]];
+    const [NE, NW, SW, SE] = [phi[i + S + 1], phi[i + S - 1], phi[i - S - 1], phi[i - S + 1]];
+    cell.phi = phi[i];
+    cell.phiX = (E - Wst) / 3 + (NE - NW + SE - SW) / 12;
+    cell.phiY = (N - Sth) / 3 + (NE - SE + NW - SW) / 12;
+    cell.lapPhi = (4 * (E + Wst + N + Sth) + NE + NW + SE + SW - 20 * phi[i]) / 6;
+  }
+
+  // ---- samples, totals, changes from outside
+
+  private sample(): void {
+    const { nx, ny, geometry } = this.box;
+    const { phi } = this.fields;
+    const [a0, a1] = geometry.wallWeights.left;
+    const [b0, b1] = geometry.wallWeights.right;
+    const row = this.recorder.next(this.step, this.totalsNow[1], this.totalsNow[3], this.totalsNow[4]);
+    for (let x = 0; x < nx; x++) {
+      row.shearLeft[x] = a0[x] * this.stress[0][x] + a1[x] * this.stress[1][x];
+      row.shearRight[x] = -(b0[x] * this.stress[2][x] + b1[x] * this.stress[3][x]);
+      row.phiLeft[x] = (phi[this.at(x, 0)] + phi[this.at(x, -1)]) / 2;
+      row.phiRight[x] = (phi[this.at(x, ny - 1)] + phi[this.at(x, ny)]) / 2;
+    }
+  }
+
+  takeSamples(): Samples {
+    return this.recorder.take();
+  }
+
+  totals(): { gasArea: number; skimmed: number; upflow: number } {
+    return { gasArea: this.totalsNow[3], skimmed: this.totalsNow[4], upflow: this.totalsNow[1] };
+  }
+
+  placeGas(circle: { x: number; y: number; radius: number }): number {
+    return placeCircle(this.box, circle, {
+      phi: (x, y) => this.phi.get(x, y),
+      ux: (x, y) => this.ux.get(x, y),
+      uy: (x, y) => this.uy.get(x, y),
+      pressure: (x, y) => this.pressure.get(x, y),
+      set: (...cell) => this.setCell(...cell),
+    });
+  }
+
+  /** Everything a step reads, in one order. */
+  private arrays(): Float64Array[] {
+    return [this.totalsNow, ...this.f, ...this.g, ...Object.values(this.fields)];
+  }
+
+  save(): Uint8Array {
+    const arrays = this.arrays();
+    const image = new Float64Array(1 + arrays.reduce((n, a) => n + a.length, 0));
+    image[0] = this.step;
+    let at = 1;
+    for (const array of arrays) {
+      image.set(array, at);
+      at += array.length;
+    }
+    return new Uint8Array(image.buffer);
+  }
+
+  restore(bytes: Uint8Array): void {
+    const image = new Float64Array(bytes.slice().buffer);
+    const arrays = this.arrays();
+    const size = 1 + arrays.reduce((n, a) => n + a.length, 0);
+    if (image.length !== size) throw new RangeError(`restore: image holds ${image.length} numbers; this box needs ${size}`);
+    this.step = image[0];
+    let at = 1;
+    for (const array of arrays) {
+      array.set(image.subarray(at, at + array.length));
+      at += array.length;
+    }
+  }
+}

@@ -1,0 +1,54 @@
+import type { Box } from './box.ts';
+import { fromMoments } from './collide.ts';
+import { CS2 } from './constants.ts';
+
+/** Equilibrium populations of a cell: f, and g less w/2. */
+export function equilibriumState(box: Box, phi: number, ux: number, uy: number, p: number): { f: Float64Array; g: Float64Array } {
+  const rho = box.rhoGas + phi * (box.rhoLiquid - box.rhoGas);
+  const u2 = ux * ux + uy * uy;
+  const f = new Float64Array(9);
+  const g = new Float64Array(9);
+  const [jx, jy] = [rho * ux, rho * uy];
+  fromMoments(f, 0, jx, jy, p + jx * ux, p + jy * uy, jx * uy, CS2 * jy, CS2 * jx, CS2 * (p + rho * u2));
+  const less = phi - 0.5;
+  const [kx, ky] = [phi * ux, phi * uy];
+  fromMoments(g, less, kx, ky, CS2 * less + kx * ux, CS2 * less + ky * uy, kx * uy, CS2 * ky, CS2 * kx, CS2 * (CS2 * less + phi * u2));
+  return { f, g };
+}
+
+/** What `placeCircle` reads and writes of a cell. */
+export interface CellAccess {
+  phi(x: number, y: number): number;
+  ux(x: number, y: number): number;
+  uy(x: number, y: number): number;
+  pressure(x: number, y: number): number;
+  set(x: number, y: number, phi: number, ux: number, uy: number, p: number): void;
+}
+
+/**
+ * Lowers phi to 1/2 + 1/2 tanh(2 d / W), d the distance from the circle, where that is lower. Velocity and pressure stay, the
+ * Laplace pressure sigma / radius comes on top in proportion to the gas that is new: both would otherwise send a sound wave.
+ * @returns gas area added
+ */
+export function placeCircle(box: Box, circle: { x: number; y: number; radius: number }, cells: CellAccess): number {
+  if (!(circle.radius > 0)) throw new RangeError(`placeGas: radius is ${circle.radius}; it must be positive`);
+  const { nx, ny, setup, geometry } = box;
+  let added = 0;
+  const reach = circle.radius + 3 * box.W;
+  const wrap = (d: number, n: number, periodic: boolean): number => (periodic ? d - n * Math.round(d / n) : d);
+  for (let y = 0; y < ny; y++) {
+    for (let x = 0; x < nx; x++) {
+      if (geometry.fluid[y * nx + x] === 0) continue;
+      const dx = wrap(x - circle.x, nx, setup.sides.bottom === 'periodic');
+      const dy = wrap(y - circle.y, ny, setup.sides.left === 'periodic');
+      const d = Math.hypot(dx, dy);
+      if (d > reach) continue;
+      const profile = 0.5 + 0.5 * Math.tanh((2 * (d - circle.radius)) / box.W);
+      const phi = cells.phi(x, y);
+      if (profile >= phi) continue;
+      added += phi - profile;
+      cells.set(x, y, profile, cells.ux(x, y), cells.uy(x, y), cells.pressure(x, y) + (phi - profile) * (box.sigma / circle.radius));
+    }
+  }
+  return added;
+}
