@@ -1,0 +1,1 @@
+export { type Measures, measure, type WallMeasures } from './measures/measures.ts';

@@ -1,0 +1,106 @@
+import type { Recording, WallSide } from '../../cases/index.ts';
+import { type ElementRow, elementRows } from './elements.ts';
+import { type Histogram, shearHistogram } from './histogram.ts';
+import { type ShearStatistics, shearStatistics } from './shear.ts';
+import { layWall } from './surface.ts';
+import { type Swept, sweptFraction, sweptTogether, windowSamples } from './swept.ts';
+
+/** The answers of one recording. Shares are dimensionless, 0 to 1; null: not to be had from this recording, see `notes`. */
+export interface Measures {
+  /** false while the asked span is not fully recorded */
+  complete: boolean;
+  recorded: { samples: number; from_s: number | null; to_s: number | null; every_s: number };
+  /** what swept means here */
+  swept: { above_Pa: number; within_s: number };
+  walls: Record<WallSide, WallMeasures>;
+  /** the walls that carry a membrane, as one surface */
+  together: Swept;
+  /** one row per element, left wall first; bands included */
+  elements: ElementRow[];
+  /** what a reader must know about these numbers */
+  notes: string[];
+}
+
+export interface WallMeasures {
+  /** carries a membrane; a plain wall is measured all the same, over the same height */
+  membrane: boolean;
+  /** between the bands: those that count, and those a fin covers */
+  elements: { open: number; underFin: number };
+  shear: ShearStatistics;
+  histogram: Histogram;
+  swept: Swept;
+}
+
+/** All measures of a recording. Pure: the recording is not changed. */
+export function measure(recording: Recording): Measures {
+  const asked = recording.case.swept;
+  const walls = { left: measureWall(recording, 'left'), right: measureWall(recording, 'right') };
+  const { membranes } = recording.case.channel;
+  const times = recording.times_s;
+  return {
+    complete: recording.complete,
+    recorded: {
+      samples: times.length,
+      from_s: times.length === 0 ? null : times[0],
+      to_s: times.length === 0 ? null : times[times.length - 1],
+      every_s: recording.derived.sampleEvery * recording.derived.dt_s,
+    },
+    swept: { above_Pa: asked.above_Pa, within_s: asked.within_s },
+    walls,
+    together: sweptTogether(membranes.map((side) => walls[side].swept)),
+    elements: [...elementRows(recording, 'left'), ...elementRows(recording, 'right')],
+    notes: notes(recording, walls),
+  };
+}
+
+function measureWall(recording: Recording, side: WallSide): WallMeasures {
+  const surface = layWall(recording, side);
+  const sorted_Pa = surface.magnitude_Pa.data.slice().sort();
+  return {
+    membrane: surface.membrane,
+    elements: { open: surface.elements.length, underFin: surface.covered },
+    shear: shearStatistics(surface, recording.case.swept.above_Pa, sorted_Pa),
+    histogram: shearHistogram(sorted_Pa),
+    swept: sweptFraction(surface, recording.case.swept),
+  };
+}
+
+function notes(recording: Recording, walls: Record<WallSide, WallMeasures>): string[] {
+  const found: string[] = [];
+  const { case: panel, derived, times_s } = recording;
+  const every_s = derived.sampleEvery * derived.dt_s;
+  const held_s = times_s.length * every_s;
+  if (!recording.complete) {
+    found.push(
+      `The recording is not complete: ${seconds(held_s)} of ${seconds(panel.record.span_s)} are recorded. Run it to its end before using the numbers.`,
+    );
+  }
+  if (times_s.length === 0) {
+    found.push('No wall sample was recorded: every wall measure is empty. Record beyond the settling time (record.settle, record.span).');
+  } else if (windowSamples(panel.swept.within_s, every_s) > times_s.length) {
+    found.push(
+      `The recording of ${seconds(held_s)} is shorter than the window of ${seconds(panel.swept.within_s)} asked for the swept fraction, which is therefore empty; ` +
+        'the fraction over the whole recording is given. Lengthen record.span or shorten swept.within.',
+    );
+  } else if (held_s < 2 * panel.swept.within_s) {
+    found.push(
+      `The recording of ${seconds(held_s)} holds fewer than two separate windows of ${seconds(panel.swept.within_s)}: the swept fraction may change much with a longer record.span.`,
+    );
+  }
+  for (const side of ['left', 'right'] as const) {
+    const { open, underFin } = walls[side].elements;
+    if (underFin > 0)
+      found.push(`The ${side} wall has ${underFin} of ${open + underFin} elements under fins; they are left out of every measure.`);
+  }
+  if (panel.gas.softened) {
+    found.push(
+      `The gas is softened: computed with ${panel.gas.density_kg_m3} kg/m3 and ${panel.gas.viscosity_Pa_s} Pa s instead of air at ` +
+        `${panel.gas.airDensity_kg_m3.toPrecision(3)} kg/m3; the buoyancy is that of real air.`,
+    );
+  }
+  return found;
+}
+
+function seconds(value_s: number): string {
+  return `${Number(value_s.toPrecision(4))} s`;
+}

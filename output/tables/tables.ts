@@ -1,0 +1,91 @@
+import type { Recording } from '../../cases/index.ts';
+import type { Measures } from '../measures/measures.ts';
+import type { Swept } from '../measures/swept.ts';
+import { type Cell, csv } from './table.ts';
+
+/** Every table of a run folder by file name. Empty cells: not to be had (under a fin, recording too short). */
+export function tables(recording: Recording, measures: Measures): Record<TableName, string> {
+  return {
+    'walls.csv': walls(measures),
+    'histogram.csv': histogram(measures),
+    'swept.csv': swept(measures),
+    'history.csv': history(recording),
+    'bubbles.csv': bubbles(recording),
+  };
+}
+
+export type TableName = 'walls.csv' | 'histogram.csv' | 'swept.csv' | 'history.csv' | 'bubbles.csv';
+
+/** One row per wall element over the whole height, left wall first, upward; `in_membrane` 1: counts in the measures. */
+function walls(measures: Measures): string {
+  const header =
+    'wall,x_m,in_membrane,under_fin,mean_abs_Pa,mean_Pa,rms_Pa,p95_Pa,max_Pa,share_above,events_1_s,reversal,share_under_gas'.split(',');
+  return csv(
+    header,
+    measures.elements.map((row) => [
+      row.wall,
+      row.x_m,
+      row.inMembrane,
+      row.underFin,
+      row.meanAbs_Pa,
+      row.mean_Pa,
+      row.rms_Pa,
+      row.p95_Pa,
+      row.max_Pa,
+      row.shareAbove,
+      row.events_1_s,
+      row.reversal,
+      row.shareUnderGas,
+    ]),
+  );
+}
+
+/** One row per wall and bin of |wall shear|; the last bin has no upper end. */
+function histogram(measures: Measures): string {
+  const rows: Cell[][] = [];
+  for (const side of ['left', 'right'] as const) {
+    for (const bin of measures.walls[side].histogram.bins) rows.push([side, bin.from_Pa, bin.to_Pa, bin.share, bin.density_1_Pa]);
+  }
+  return csv(['wall', 'from_Pa', 'to_Pa', 'share', 'density_1_Pa'], rows);
+}
+
+/**
+ * Long form. kind=threshold: swept in a window of `window_s` against the threshold, and again for the window that is the whole recording.
+ * kind=time: swept and touched at the asked threshold against the length of the window. wall=together: all membrane walls.
+ */
+function swept(measures: Measures): string {
+  const rows: Cell[][] = [];
+  const whole_s = measures.recorded.samples * measures.recorded.every_s;
+  const { above_Pa, within_s } = measures.swept;
+  const add = (wall: string, of: Swept) => {
+    const { overThreshold, overTime } = of;
+    overThreshold.threshold_Pa.forEach((threshold_Pa, i) => {
+      rows.push(['threshold', wall, threshold_Pa, within_s, overThreshold.within[i], null]);
+    });
+    overThreshold.threshold_Pa.forEach((threshold_Pa, i) => {
+      rows.push(['threshold', wall, threshold_Pa, whole_s, overThreshold.whole[i], null]);
+    });
+    overTime.window_s.forEach((window_s, i) => {
+      rows.push(['time', wall, above_Pa, window_s, overTime.swept[i], overTime.touched[i]]);
+    });
+  };
+  add('left', measures.walls.left.swept);
+  add('right', measures.walls.right.swept);
+  add('together', measures.together);
+  return csv(['kind', 'wall', 'threshold_Pa', 'window_s', 'swept', 'touched'], rows);
+}
+
+function history(recording: Recording): string {
+  const { time_s, holdup, upflow_m_s, released_m2, skimmed_m2, present_m2 } = recording.history;
+  return csv(
+    ['time_s', 'holdup', 'upflow_m_s', 'released_m2', 'skimmed_m2', 'present_m2'],
+    time_s.map((time, i) => [time, holdup[i], upflow_m_s[i], released_m2[i], skimmed_m2[i], present_m2[i]]),
+  );
+}
+
+function bubbles(recording: Recording): string {
+  return csv(
+    ['time_s', 'bubble', 'area_m2', 'x_m', 'y_m', 'ux_m_s', 'uy_m_s'],
+    recording.bubbles.map((row) => [row.time_s, row.bubble, row.area_m2, row.x_m, row.y_m, row.ux_m_s, row.uy_m_s]),
+  );
+}
