@@ -1,3 +1,5 @@
+import { Compiled } from './compiled.ts';
+import { kernelModule } from './module.ts';
 import { Reference } from './reference.ts';
 import type { Setup } from './setup.ts';
 import type { Simulation } from './simulation.ts';
@@ -6,8 +8,11 @@ export { CaseError, type CaseFault, OutputError, SolverError, SwatheError, Usage
 export type { Drive, Fluid, Setup, Side, Vector } from './setup.ts';
 export type { Field, Rows, Samples, Simulation, Status } from './simulation.ts';
 
-/** The slow, plain twin of `createSimulation`: scalar f64, for tests of the kernel. */
-export const createReference = (setup: Setup): Simulation => new Reference(setup);
+/**
+ * A simulation of the box on the compiled kernel (f32 unless the setup says f64).
+ * @throws {RangeError} on a setup that cannot be computed
+ */
+export const createSimulation = async (setup: Setup): Promise<Simulation> => Compiled.create(setup, await kernelModule());
 
-/** A simulation of the box on the compiled kernel. */
-export const createSimulation = async (setup: Setup): Promise<Simulation> => new Reference(setup);
+/** The slow, plain twin of `createSimulation`: scalar f64, one step after another as reference.ts reads. */
+export const createReference = (setup: Setup): Simulation => new Reference(setup);

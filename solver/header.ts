@@ -1,0 +1,87 @@
+// The header of the kernel's memory: one f64 per entry, at byte 8 * entry. Literals only, compiled by both compilers.
+
+/** checked by the host against the kernel's own copy when it is loaded */
+export const VERSION = 1;
+/** bytes kept for the header */
+export const HEADER_BYTES = 1024;
+
+// ---- sizes
+export const NX = 0;
+export const NY = 1;
+/** bytes of one row of one field, ghosts and padding included */
+export const STRIDE = 2;
+/** rows of populations in the ring: ny + 3 */
+export const RING = 3;
+export const TWO_PHASE = 4;
+
+// ---- addresses of cell (0, 0); of the first entry of a list
+export const AT_POPULATIONS = 5;
+export const AT_PHI = 6;
+export const AT_UX = 7;
+export const AT_UY = 8;
+export const AT_P = 9;
+/** viscous shear stress of the rows next to the walls, at sample steps */
+export const AT_TAU = 10;
+/** 1 fluid, 0 solid or padding */
+export const AT_MASK = 11;
+/** s / (1 - s) per x */
+export const AT_SKIM = 12;
+/** four rows: first and second cell of the left wall, first and second of the right */
+export const AT_WEIGHTS = 13;
+/** five i32 each: solid x, y, direction, fluid x, y */
+export const AT_LINKS = 14;
+export const LINKS = 15;
+/** three i32 each: y, first x, end x */
+export const AT_RUNS = 16;
+export const RUNS = 17;
+/** f64: x, y, n, then n times x, y, weight */
+export const AT_GHOSTS = 18;
+export const GHOSTS = 19;
+/** per sample: four f64 (step, upflow, gas area, skimmed), then four rows of nx f32 (shear left, right, phi left, right) */
+export const AT_SAMPLES = 20;
+/** samples in the buffer */
+export const SAMPLES = 21;
+
+// ---- sides: 0 periodic, 1 wall, 2 slip; speed of a moving wall
+export const SIDE_LEFT = 24;
+export const SIDE_RIGHT = 25;
+export const SIDE_BOTTOM = 26;
+export const SIDE_TOP = 27;
+export const SPEED_LEFT = 28;
+export const SPEED_RIGHT = 29;
+export const SPEED_BOTTOM = 30;
+export const SPEED_TOP = 31;
+
+// ---- the box's numbers, see box.ts
+export const RHO_LIQUID = 32;
+export const RHO_GAS = 33;
+export const FLUIDITY_LIQUID = 34;
+export const FLUIDITY_GAS = 35;
+export const BETA = 36;
+export const KAPPA = 37;
+export const WIDTH = 38;
+export const OMEGA_PHI = 39;
+export const WETTING = 40;
+export const FORCE_X = 41;
+export const FORCE_Y = 42;
+export const GRAVITY_X = 43;
+export const GRAVITY_Y = 44;
+export const SPEED_LIMIT = 45;
+/** 0 none, 1 loss, 2 upflow; the coefficient or the target */
+export const DRIVE_KIND = 46;
+export const DRIVE_VALUE = 47;
+
+// ---- state
+export const STEP = 64;
+/** slot of the ring that holds row -1 */
+export const BASE = 65;
+export const DRIVE_FORCE = 66;
+export const UPFLOW = 67;
+export const UPFLOW_BEFORE = 68;
+export const GAS_AREA = 69;
+export const SKIMMED = 70;
+/** 0 well, 1 not finite, 2 too fast; the cell and its speed */
+export const STATUS = 71;
+export const BAD_X = 72;
+export const BAD_Y = 73;
+export const BAD_SPEED = 74;

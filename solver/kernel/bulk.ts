@@ -1,0 +1,124 @@
+// The flow collision of one row of a box that holds liquid alone: flow.ts with phi = 1 and no gradients.
+// Reads f of rows y - 1, y, y + 1 and mask; writes f over row y - 2, and on demand ux, uy, p and tau.
+import * as H from '../header';
+import { entry, fieldRow, nx, row, stride } from './rows';
+import { add, get, largest, mad, max, mul, nmad, put, splat, sub, total } from './vector';
+import { FIELDS, STRESS } from './flow';
+
+export let bulkSumUx: f64 = 0;
+export let bulkTopU2: f64 = 0;
+
+export function bulkRow<T>(y: i32, flags: i32): void {
+  const size = sizeof<T>();
+  const south = row(y - 1);
+  const here = row(y);
+  const north = row(y + 1);
+  const f1 = here + stride - size;
+  const f2 = south + 2 * stride;
+  const f3 = here + 3 * stride + size;
+  const f4 = north + 4 * stride;
+  const f5 = south + 5 * stride - size;
+  const f6 = south + 6 * stride + size;
+  const f7 = north + 7 * stride + size;
+  const f8 = north + 8 * stride - size;
+  const out = row(y - 2);
+  const mask = fieldRow(H.AT_MASK, y);
+  const uxOut = fieldRow(H.AT_UX, y);
+  const uyOut = fieldRow(H.AT_UY, y);
+  const pOut = fieldRow(H.AT_P, y);
+  const tauOut = fieldRow(H.AT_TAU, y);
+
+  const density = entry(H.RHO_LIQUID);
+  const omegaNumber = 1 / (3 / (density * entry(H.FLUIDITY_LIQUID)) + 0.5);
+  const zero = splat<T>(0);
+  const half = splat<T>(0.5);
+  const quarter = splat<T>(0.25);
+  const third = splat<T>(1.0 / 3.0);
+  const twoThirds = splat<T>(2.0 / 3.0);
+  const rho = splat<T>(density);
+  const lighter = splat<T>(1 / density);
+  const keep = splat<T>(1 - omegaNumber);
+  const toStress = splat<T>(0.5 * omegaNumber - 1);
+  const halfFx = splat<T>(0.5 * (entry(H.FORCE_X) + entry(H.DRIVE_FORCE)));
+  const halfFy = splat<T>(0.5 * entry(H.FORCE_Y));
+  let sum = zero;
+  let top = zero;
+
+  const end = <usize>nx * size;
+  let i: usize = 0;
+  do {
+    const v1 = get(f1 + i);
+    const v2 = get(f2 + i);
+    const v3 = get(f3 + i);
+    const v4 = get(f4 + i);
+    const v5 = get(f5 + i);
+    const v6 = get(f6 + i);
+    const v7 = get(f7 + i);
+    const v8 = get(f8 + i);
+    const a57 = sub<T>(v5, v7);
+    const a86 = sub<T>(v8, v6);
+    const b57 = add<T>(v5, v7);
+    const b86 = add<T>(v8, v6);
+    const m10 = add<T>(sub<T>(v1, v3), add<T>(a57, a86));
+    const m01 = add<T>(sub<T>(v2, v4), sub<T>(a57, a86));
+    const m11 = sub<T>(b57, b86);
+    const x13 = add<T>(v1, v3);
+    const y24 = add<T>(v2, v4);
+
+    const live = mul<T>(lighter, get(mask + i));
+    const ux = mul<T>(add<T>(halfFx, m10), live);
+    const uy = mul<T>(add<T>(halfFy, m01), live);
+    const jx = mul<T>(rho, ux);
+    const jy = mul<T>(rho, uy);
+    const xx = mul<T>(jx, ux);
+    const yy = mul<T>(jy, uy);
+    const rhoU2 = add<T>(xx, yy);
+    const u2 = mad<T>(ux, ux, mul<T>(uy, uy));
+    sum = add<T>(sum, ux);
+    top = max<T>(top, u2);
+    const moving = add<T>(add<T>(x13, y24), add<T>(b57, b86));
+    const p = mul<T>(splat<T>(0.6), nmad<T>(twoThirds, rhoU2, moving));
+
+    const e11 = mul<T>(jx, uy);
+    const n11 = sub<T>(m11, e11);
+    const d11 = mul<T>(keep, n11);
+    const d20 = mul<T>(half, mul<T>(keep, sub<T>(sub<T>(x13, y24), sub<T>(xx, yy))));
+    const q10 = add<T>(halfFx, jx);
+    const q01 = add<T>(halfFy, jy);
+    const q20 = add<T>(add<T>(p, xx), d20);
+    const q02 = sub<T>(add<T>(p, yy), d20);
+    const q11 = add<T>(e11, d11);
+    const twice11 = add<T>(d11, d11);
+    const q21 = mad<T>(third, q01, mad<T>(ux, twice11, mul<T>(uy, d20)));
+    const q12 = mad<T>(third, q10, nmad<T>(ux, d20, mul<T>(uy, twice11)));
+    const q22 = mul<T>(third, add<T>(p, rhoU2));
+
+    const outF = out + i;
+    put(outF, sub<T>(q22, add<T>(q20, q02)));
+    const evenX = mul<T>(half, sub<T>(q20, q22));
+    const oddX = mul<T>(half, sub<T>(q10, q12));
+    put(outF + stride, add<T>(evenX, oddX));
+    put(outF + 3 * stride, sub<T>(evenX, oddX));
+    const evenY = mul<T>(half, sub<T>(q02, q22));
+    const oddY = mul<T>(half, sub<T>(q01, q21));
+    put(outF + 2 * stride, add<T>(evenY, oddY));
+    put(outF + 4 * stride, sub<T>(evenY, oddY));
+    const even57 = mul<T>(quarter, add<T>(q22, q11));
+    const odd57 = mul<T>(quarter, add<T>(q12, q21));
+    put(outF + 5 * stride, add<T>(even57, odd57));
+    put(outF + 7 * stride, sub<T>(even57, odd57));
+    const even68 = mul<T>(quarter, sub<T>(q22, q11));
+    const odd68 = mul<T>(quarter, sub<T>(q12, q21));
+    put(outF + 6 * stride, sub<T>(even68, odd68));
+    put(outF + 8 * stride, add<T>(even68, odd68));
+    if (flags & FIELDS) {
+      put(uxOut + i, ux);
+      put(uyOut + i, uy);
+      put(pOut + i, p);
+    }
+    if (flags & STRESS) put(tauOut + i, mul<T>(toStress, n11));
+    i += 16;
+  } while (i < end);
+  bulkSumUx = total<T>(sum);
+  bulkTopU2 = largest<T>(top);
+}

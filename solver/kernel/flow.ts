@@ -1,0 +1,243 @@
+// Both collisions of one row, f and g: the formulas of collide.ts, whose text explains them, in lanes along x.
+// Form of the flow equation: momentum-based (Liang et al. 2018, Phys. Rev. E 97, 033309; from memory). It lives here alone.
+// Reads f and g of rows y - 1, y, y + 1, phi and its ghosts, mask, skim; writes f and g over row y - 2, and on demand ux, uy, p
+// (flag FIELDS) and tau (flag STRESS). Leaves the sum of ux and the largest u^2 of the row in `sumUx`, `topU2`.
+import * as H from '../header';
+import { address, entry, fieldRow, nx, phiRow, row, stride } from './rows';
+import { add, div, get, largest, mad, max, mul, nmad, put, root, splat, sub, total } from './vector';
+
+export const FIELDS: i32 = 1;
+export const STRESS: i32 = 2;
+
+export let sumUx: f64 = 0;
+export let topU2: f64 = 0;
+
+export function collideRow<T>(y: i32, flags: i32): void {
+  const size = sizeof<T>();
+  const south = row(y - 1);
+  const here = row(y);
+  const north = row(y + 1);
+  const f1 = here + stride - size;
+  const f2 = south + 2 * stride;
+  const f3 = here + 3 * stride + size;
+  const f4 = north + 4 * stride;
+  const f5 = south + 5 * stride - size;
+  const f6 = south + 6 * stride + size;
+  const f7 = north + 7 * stride + size;
+  const f8 = north + 8 * stride - size;
+  const toG = 9 * stride;
+  const out = row(y - 2);
+  const phiS = phiRow(y - 1);
+  const phiC = phiRow(y);
+  const phiN = phiRow(y + 1);
+  const mask = fieldRow(H.AT_MASK, y);
+  const skim = address(H.AT_SKIM);
+  const uxOut = fieldRow(H.AT_UX, y);
+  const uyOut = fieldRow(H.AT_UY, y);
+  const pOut = fieldRow(H.AT_P, y);
+  const tauOut = fieldRow(H.AT_TAU, y);
+
+  const drho = entry(H.RHO_LIQUID) - entry(H.RHO_GAS);
+  const omegaPhi = entry(H.OMEGA_PHI);
+  const zero = splat<T>(0);
+  const half = splat<T>(0.5);
+  const quarter = splat<T>(0.25);
+  const one = splat<T>(1);
+  const third = splat<T>(1.0 / 3.0);
+  const twoThirds = splat<T>(2.0 / 3.0);
+  const twelfth = splat<T>(1.0 / 12.0);
+  const rhoGas = splat<T>(entry(H.RHO_GAS));
+  const dRho = splat<T>(drho);
+  const fluidityGas = splat<T>(entry(H.FLUIDITY_GAS));
+  const dFluidity = splat<T>(entry(H.FLUIDITY_LIQUID) - entry(H.FLUIDITY_GAS));
+  const beta4 = splat<T>(4 * entry(H.BETA));
+  const kappaSixth = splat<T>(entry(H.KAPPA) / 6);
+  const forceX = splat<T>(entry(H.FORCE_X) + entry(H.DRIVE_FORCE));
+  const forceY = splat<T>(entry(H.FORCE_Y));
+  const heavyX = splat<T>(drho * entry(H.GRAVITY_X));
+  const heavyY = splat<T>(drho * entry(H.GRAVITY_Y));
+  const keepPhi = splat<T>(1 - omegaPhi);
+  const sharp = splat<T>(((1 - 0.5 * omegaPhi) * 4) / (3 * entry(H.WIDTH)));
+  const three = splat<T>(3);
+  const tiny = splat<T>(1e-12);
+  let sum = zero;
+  let top = zero;
+
+  const end = <usize>nx * size;
+  let i: usize = 0;
+  do {
+    // phi and its derivatives
+    const phi = get(phiC + i);
+    const pE = get(phiC + i + size);
+    const pW = get(phiC + i - size);
+    const pN = get(phiN + i);
+    const pS = get(phiS + i);
+    const pNE = get(phiN + i + size);
+    const pNW = get(phiN + i - size);
+    const pSE = get(phiS + i + size);
+    const pSW = get(phiS + i - size);
+    const slopeA = sub<T>(pNE, pSW);
+    const slopeB = sub<T>(pSE, pNW);
+    const phiX = mad<T>(sub<T>(pE, pW), third, mul<T>(add<T>(slopeA, slopeB), twelfth));
+    const phiY = mad<T>(sub<T>(pN, pS), third, mul<T>(sub<T>(slopeA, slopeB), twelfth));
+    const axes = add<T>(add<T>(pE, pW), add<T>(pN, pS));
+    const corners = add<T>(add<T>(pNE, pSW), add<T>(pSE, pNW));
+    const lap6 = add<T>(mul<T>(splat<T>(4), axes), nmad<T>(splat<T>(20), phi, corners));
+    const gas = sub<T>(one, phi);
+    const well = mul<T>(phi, gas);
+
+    // density, forces
+    const rho = mad<T>(phi, dRho, rhoGas);
+    const rhoBefore = nmad<T>(mul<T>(dRho, gas), get(skim + i), rho);
+    const rhoX = mul<T>(dRho, phiX);
+    const rhoY = mul<T>(dRho, phiY);
+    const mu = sub<T>(mul<T>(mul<T>(beta4, well), sub<T>(half, phi)), mul<T>(kappaSixth, lap6));
+    const Fx = mad<T>(mu, phiX, nmad<T>(gas, heavyX, forceX));
+    const Fy = mad<T>(mu, phiY, nmad<T>(gas, heavyY, forceY));
+
+    // moments that arrive
+    const v1 = get(f1 + i);
+    const v2 = get(f2 + i);
+    const v3 = get(f3 + i);
+    const v4 = get(f4 + i);
+    const v5 = get(f5 + i);
+    const v6 = get(f6 + i);
+    const v7 = get(f7 + i);
+    const v8 = get(f8 + i);
+    const a57 = sub<T>(v5, v7);
+    const a86 = sub<T>(v8, v6);
+    const b57 = add<T>(v5, v7);
+    const b86 = add<T>(v8, v6);
+    const m10 = add<T>(sub<T>(v1, v3), add<T>(a57, a86));
+    const m01 = add<T>(sub<T>(v2, v4), sub<T>(a57, a86));
+    const m11 = sub<T>(b57, b86);
+    const x13 = add<T>(v1, v3);
+    const y24 = add<T>(v2, v4);
+    const diagonals = add<T>(b57, b86);
+
+    // one division for 1/rhoBefore, 1/(3 + fluid/2) and 1/|grad phi|; fluid = rho / eta
+    const fluid = mul<T>(rho, mad<T>(phi, dFluidity, fluidityGas));
+    const below = mad<T>(half, fluid, three);
+    const steep = root<T>(mad<T>(phiX, phiX, mad<T>(phiY, phiY, tiny)));
+    const steepBelow = mul<T>(steep, below);
+    const all = div<T>(one, mul<T>(rhoBefore, steepBelow));
+    const lighter = mul<T>(all, steepBelow);
+    const shared = mul<T>(all, rhoBefore);
+    const flat = mul<T>(shared, below);
+    const omega = mul<T>(fluid, mul<T>(shared, steep));
+
+    const live = mul<T>(lighter, get(mask + i));
+    const ux = mul<T>(mad<T>(half, Fx, m10), live);
+    const uy = mul<T>(mad<T>(half, Fy, m01), live);
+    const ux2 = mul<T>(ux, ux);
+    const uy2 = mul<T>(uy, uy);
+    const u2 = add<T>(ux2, uy2);
+    sum = add<T>(sum, ux);
+    top = max<T>(top, u2);
+
+    const uxRhoX = mul<T>(ux, rhoX);
+    const uyRhoY = mul<T>(uy, rhoY);
+    const halfGrad = mul<T>(half, add<T>(uxRhoX, uyRhoY));
+    const rhoU2 = mul<T>(rho, u2);
+    const moving = add<T>(add<T>(x13, y24), diagonals);
+    const p = mul<T>(splat<T>(0.6), nmad<T>(twoThirds, rhoU2, add<T>(moving, halfGrad)));
+
+    // shear moments
+    const keep = sub<T>(one, omega);
+    const half1 = nmad<T>(half, omega, one);
+    const jx = mul<T>(rho, ux);
+    const jy = mul<T>(rho, uy);
+    const xx = mul<T>(jx, ux);
+    const yy = mul<T>(jy, uy);
+    const e11 = mul<T>(jx, uy);
+    const n11 = sub<T>(m11, e11);
+    const s11 = mul<T>(third, mad<T>(ux, rhoY, mul<T>(uy, rhoX)));
+    const d11 = mad<T>(keep, n11, mul<T>(half1, s11));
+    const sDiff = mul<T>(twoThirds, sub<T>(uxRhoX, uyRhoY));
+    const dDiff = mad<T>(keep, sub<T>(sub<T>(x13, y24), sub<T>(xx, yy)), mul<T>(half1, sDiff));
+    const dTrace = mul<T>(splat<T>(4.0 / 3.0), halfGrad);
+    const d20 = mul<T>(half, add<T>(dTrace, dDiff));
+    const d02 = mul<T>(half, sub<T>(dTrace, dDiff));
+
+    // moments that leave
+    const q10 = mad<T>(half, Fx, jx);
+    const q01 = mad<T>(half, Fy, jy);
+    const q20 = add<T>(add<T>(p, xx), d20);
+    const q02 = add<T>(add<T>(p, yy), d02);
+    const q11 = add<T>(e11, d11);
+    const twice11 = add<T>(d11, d11);
+    const q21 = mad<T>(third, q01, mad<T>(ux, twice11, mul<T>(uy, d20)));
+    const q12 = mad<T>(third, q10, mad<T>(uy, twice11, mul<T>(ux, d02)));
+    const q22 = mul<T>(third, add<T>(p, rhoU2));
+
+    const outF = out + i;
+    put(outF, sub<T>(add<T>(halfGrad, q22), add<T>(q20, q02)));
+    const evenX = mul<T>(half, sub<T>(q20, q22));
+    const oddX = mul<T>(half, sub<T>(q10, q12));
+    put(outF + stride, add<T>(evenX, oddX));
+    put(outF + 3 * stride, sub<T>(evenX, oddX));
+    const evenY = mul<T>(half, sub<T>(q02, q22));
+    const oddY = mul<T>(half, sub<T>(q01, q21));
+    put(outF + 2 * stride, add<T>(evenY, oddY));
+    put(outF + 4 * stride, sub<T>(evenY, oddY));
+    const even57 = mul<T>(quarter, add<T>(q22, q11));
+    const odd57 = mul<T>(quarter, add<T>(q12, q21));
+    put(outF + 5 * stride, add<T>(even57, odd57));
+    put(outF + 7 * stride, sub<T>(even57, odd57));
+    const even68 = mul<T>(quarter, sub<T>(q22, q11));
+    const odd68 = mul<T>(quarter, sub<T>(q12, q21));
+    put(outF + 6 * stride, sub<T>(even68, odd68));
+    put(outF + 8 * stride, add<T>(even68, odd68));
+
+    if (flags != 0) {
+      if (flags & FIELDS) {
+        put(uxOut + i, ux);
+        put(uyOut + i, uy);
+        put(pOut + i, p);
+      }
+      if (flags & STRESS) put(tauOut + i, mul<T>(sub<T>(zero, half1), mad<T>(half, s11, n11)));
+    }
+
+    // the interface
+    const w5 = get(f5 + toG + i);
+    const w6 = get(f6 + toG + i);
+    const w7 = get(f7 + toG + i);
+    const w8 = get(f8 + toG + i);
+    const c57 = sub<T>(w5, w7);
+    const c86 = sub<T>(w8, w6);
+    const j10 = add<T>(sub<T>(get(f1 + toG + i), get(f3 + toG + i)), add<T>(c57, c86));
+    const j01 = add<T>(sub<T>(get(f2 + toG + i), get(f4 + toG + i)), sub<T>(c57, c86));
+    const sharpen = mul<T>(mul<T>(sharp, well), flat);
+    const phiUx = mul<T>(phi, ux);
+    const phiUy = mul<T>(phi, uy);
+    const h10 = mad<T>(sharpen, phiX, mad<T>(keepPhi, sub<T>(j10, phiUx), phiUx));
+    const h01 = mad<T>(sharpen, phiY, mad<T>(keepPhi, sub<T>(j01, phiUy), phiUy));
+    const less = sub<T>(phi, half);
+    const lessThird = mul<T>(third, less);
+    const h20 = mad<T>(phiUx, ux, lessThird);
+    const h02 = mad<T>(phiUy, uy, lessThird);
+    const h11 = mul<T>(phiUx, uy);
+    const h22 = mul<T>(third, mad<T>(phi, u2, lessThird));
+    const outG = outF + toG;
+    put(outG, sub<T>(add<T>(less, h22), add<T>(h20, h02)));
+    const gEvenX = mul<T>(half, sub<T>(h20, h22));
+    const gOddX = mul<T>(third, h10);
+    put(outG + stride, add<T>(gEvenX, gOddX));
+    put(outG + 3 * stride, sub<T>(gEvenX, gOddX));
+    const gEvenY = mul<T>(half, sub<T>(h02, h22));
+    const gOddY = mul<T>(third, h01);
+    put(outG + 2 * stride, add<T>(gEvenY, gOddY));
+    put(outG + 4 * stride, sub<T>(gEvenY, gOddY));
+    const gEven57 = mul<T>(quarter, add<T>(h22, h11));
+    const gOdd57 = mul<T>(twelfth, add<T>(h10, h01));
+    put(outG + 5 * stride, add<T>(gEven57, gOdd57));
+    put(outG + 7 * stride, sub<T>(gEven57, gOdd57));
+    const gEven68 = mul<T>(quarter, sub<T>(h22, h11));
+    const gOdd68 = mul<T>(twelfth, sub<T>(h10, h01));
+    put(outG + 6 * stride, sub<T>(gEven68, gOdd68));
+    put(outG + 8 * stride, add<T>(gEven68, gOdd68));
+    i += 16;
+  } while (i < end);
+  sumUx = total<T>(sum);
+  topU2 = largest<T>(top);
+}

@@ -1,0 +1,155 @@
+// Ghosts of the populations after collision, filled before a step so that every cell pulls in the same way.
+// Order: links of solids, the columns x = -1 and nx, the rows y = -1 and ny. Along a side, what comes in along k is
+//   periodic  the population k of the far side
+//   wall      what left against k from the cell it will reach (halfway bounce-back), plus 6 w rho e.u on a moving wall
+//   slip      what left along the mirrored direction
+// In a corner of two sides that are not periodic the diagonal goes straight back.
+import * as H from '../header';
+import { W1, W2 } from '../constants';
+import { address, entry, nx, ny, phiRow, row, stride } from './rows';
+
+const PERIODIC: i32 = 0;
+const SLIP: i32 = 2;
+
+/** Address of population n (0..8 f, 9..17 g) of cell (x, y). */
+// @ts-ignore: decorator
+@inline function at<T>(x: i32, y: i32, n: i32): usize { return row(y) + <usize>n * stride + <usize>(x * <i32>sizeof<T>()); }
+
+// @ts-ignore: decorator
+@inline function opposite(k: i32): i32 { return k == 0 ? 0 : k < 5 ? ((k + 1) & 3) + 1 : ((k - 3) & 3) + 5; }
+// @ts-ignore: decorator
+@inline function ex(k: i32): i32 { return k == 1 || k == 5 || k == 8 ? 1 : k == 3 || k == 6 || k == 7 ? -1 : 0; }
+// @ts-ignore: decorator
+@inline function ey(k: i32): i32 { return k == 2 || k == 5 || k == 6 ? 1 : k == 4 || k == 7 || k == 8 ? -1 : 0; }
+/** the direction with the sign of ex turned, of ey turned */
+// @ts-ignore: decorator
+@inline function mirrorX(k: i32): i32 { return k == 1 ? 3 : k == 3 ? 1 : k == 5 ? 6 : k == 6 ? 5 : k == 7 ? 8 : k == 8 ? 7 : k; }
+// @ts-ignore: decorator
+@inline function mirrorY(k: i32): i32 { return k == 2 ? 4 : k == 4 ? 2 : k == 5 ? 8 : k == 8 ? 5 : k == 6 ? 7 : k == 7 ? 6 : k; }
+
+export function fillGhosts<T>(sets: i32): void {
+  fillLinks<T>(sets);
+  const periodicX = <i32>entry(H.SIDE_BOTTOM) == PERIODIC;
+  const periodicY = <i32>entry(H.SIDE_LEFT) == PERIODIC;
+  for (let set = 0; set < sets; set++) {
+    if (periodicX) wrapColumns<T>(9 * set);
+    else {
+      reflectColumn<T>(9 * set, 0, 1, H.SIDE_BOTTOM, H.SPEED_BOTTOM, periodicY);
+      reflectColumn<T>(9 * set, nx - 1, -1, H.SIDE_TOP, H.SPEED_TOP, periodicY);
+    }
+    if (periodicY) wrapRows<T>(9 * set, periodicX);
+    else {
+      reflectRow<T>(9 * set, 0, 1, H.SIDE_LEFT, H.SPEED_LEFT, periodicX);
+      reflectRow<T>(9 * set, ny - 1, -1, H.SIDE_RIGHT, H.SPEED_RIGHT, periodicX);
+    }
+  }
+  clearPadding<T>(9 * sets);
+}
+
+/** Bounce-back of solids: each link's slot in the solid cell takes what left the fluid cell towards it. */
+function fillLinks<T>(sets: i32): void {
+  const count = <i32>entry(H.LINKS);
+  let link = address(H.AT_LINKS);
+  for (let n = 0; n < count; n++, link += 20) {
+    const k = load<i32>(link, 8);
+    const to = at<T>(load<i32>(link), load<i32>(link, 4), k);
+    const from = at<T>(load<i32>(link, 12), load<i32>(link, 16), opposite(k));
+    store<T>(to, load<T>(from));
+    if (sets == 2) store<T>(to + 9 * stride, load<T>(from + 9 * stride));
+  }
+}
+
+/** Solid cells hold zero after a step, whatever the row loop made of them. */
+export function clearSolids<T>(): void {
+  const count = <i32>entry(H.RUNS);
+  let run = address(H.AT_RUNS);
+  for (let n = 0; n < count; n++, run += 12) {
+    const y = load<i32>(run);
+    const x = load<i32>(run, 4);
+    const bytes = <usize>(load<i32>(run, 8) - x) * sizeof<T>();
+    for (let k = 0; k < 18; k++) memory.fill(at<T>(x, y, k), 0, bytes);
+  }
+}
+
+/** Lanes beyond the last cell: nothing flows in there. Column nx is a ghost as well; only its ex < 0 is ever pulled. */
+function clearPadding<T>(populations: i32): void {
+  const lanes = 16 / <i32>sizeof<T>();
+  const padded = (nx + lanes - 1) & -lanes;
+  if (padded == nx) return;
+  for (let y = 0; y < ny; y++) {
+    for (let n = 0; n < populations; n++) {
+      if (ex(n % 9) >= 0) store<T>(at<T>(nx, y, n), <T>0);
+      for (let x = nx + 1; x < padded; x++) store<T>(at<T>(x, y, n), <T>0);
+    }
+  }
+}
+
+function wrapColumns<T>(first: i32): void {
+  for (let y = 0; y < ny; y++) {
+    for (let k = 1; k < 9; k++) {
+      if (ex(k) > 0) store<T>(at<T>(-1, y, first + k), load<T>(at<T>(nx - 1, y, first + k)));
+      if (ex(k) < 0) store<T>(at<T>(nx, y, first + k), load<T>(at<T>(0, y, first + k)));
+    }
+  }
+}
+
+function wrapRows<T>(first: i32, periodicX: bool): void {
+  const from = periodicX ? -1 : 0;
+  const bytes = <usize>(periodicX ? nx + 2 : nx) * sizeof<T>();
+  for (let k = 1; k < 9; k++) {
+    if (ey(k) > 0) memory.copy(at<T>(from, -1, first + k), at<T>(from, ny - 1, first + k), bytes);
+    if (ey(k) < 0) memory.copy(at<T>(from, ny, first + k), at<T>(from, 0, first + k), bytes);
+  }
+}
+
+/** What a wall moving at `speed` along e adds to what it sends back. */
+// @ts-ignore: decorator
+@inline function push<T>(first: i32, k: i32, along: i32, speed: f64, x: i32, y: i32): f64 {
+  if (speed == 0 || first != 0) return 0;
+  const phi = <f64>load<T>(phiRow(y) + <usize>(x * <i32>sizeof<T>()));
+  const rho = entry(H.RHO_GAS) + phi * (entry(H.RHO_LIQUID) - entry(H.RHO_GAS));
+  return 6 * (k < 5 ? W1 : W2) * rho * <f64>along * speed;
+}
+
+function reflectColumn<T>(first: i32, edge: i32, inward: i32, sideAt: i32, speedAt: i32, periodicY: bool): void {
+  const slip = <i32>entry(sideAt) == SLIP;
+  const speed = entry(speedAt);
+  for (let k = 1; k < 9; k++) {
+    if (ex(k) != inward) continue;
+    for (let y = 0; y < ny; y++) {
+      const source = y - ey(k);
+      const ghost = at<T>(edge - inward, source, first + k);
+      if (slip && (periodicY || (source >= 0 && source < ny))) {
+        store<T>(ghost, load<T>(at<T>(edge, (source + ny) % ny, first + mirrorX(k))));
+      } else {
+        const back = <f64>load<T>(at<T>(edge, y, first + opposite(k)));
+        store<T>(ghost, <T>(back + push<T>(first, k, ey(k), speed, edge, y)));
+      }
+    }
+  }
+}
+
+function reflectRow<T>(first: i32, edge: i32, inward: i32, sideAt: i32, speedAt: i32, periodicX: bool): void {
+  const slip = <i32>entry(sideAt) == SLIP;
+  const speed = entry(speedAt);
+  for (let k = 1; k < 9; k++) {
+    if (ey(k) != inward) continue;
+    const bytes = <usize>nx * sizeof<T>();
+    if (slip) {
+      // cells 0 .. nx-1 shifted by ex: the ghost that feeds cell x lies at x - ex
+      for (let x = 0; x < nx; x++) {
+        const source = x - ex(k);
+        const corner = !periodicX && (source < 0 || source >= nx);
+        const from = corner ? at<T>(x, edge, first + opposite(k)) : at<T>((source + nx) % nx, edge, first + mirrorY(k));
+        store<T>(at<T>(source, edge - inward, first + k), load<T>(from));
+      }
+    } else if (speed == 0) {
+      memory.copy(at<T>(-ex(k), edge - inward, first + k), at<T>(0, edge, first + opposite(k)), bytes);
+    } else {
+      for (let x = 0; x < nx; x++) {
+        const back = <f64>load<T>(at<T>(x, edge, first + opposite(k)));
+        store<T>(at<T>(x - ex(k), edge - inward, first + k), <T>(back + push<T>(first, k, ex(k), speed, x, edge)));
+      }
+    }
+  }
+}

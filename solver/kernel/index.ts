@@ -1,0 +1,112 @@
+// Entry points of the kernel. One call does many steps; a failure is a status in the header, never a trap.
+// A step: fillGhosts, phiPass (two phases), one collision row after another, the drive, a sample.
+import * as H from '../header';
+import { bulkRow, bulkSumUx, bulkTopU2 } from './bulk';
+import { FIELDS, STRESS, collideRow, sumUx, topU2 } from './flow';
+import { clearSolids, fillGhosts } from './ghosts';
+import { phiPass } from './phi';
+import { address, bind, entry, fieldRow, nx, ny, phiRow, row, setEntry, turn } from './rows';
+
+export function version(): i32 { return H.VERSION; }
+/** Address of the populations of row y, for the host. */
+export function populations(y: i32): usize { bind(); return row(y); }
+export function advance32(steps: i32, sampleEvery: i32): i32 { return advance<f32>(steps, sampleEvery); }
+export function advance64(steps: i32, sampleEvery: i32): i32 { return advance<f64>(steps, sampleEvery); }
+
+/** Does up to `steps` steps and returns the number done; ux, uy and p are written in the last one. */
+function advance<T>(steps: i32, sampleEvery: i32): i32 {
+  bind();
+  const twoPhase = entry(H.TWO_PHASE) != 0;
+  setEntry(H.STATUS, 0);
+  let done = 0;
+  while (done < steps && entry(H.STATUS) == 0) {
+    done++;
+    const step = <i64>entry(H.STEP) + 1;
+    const sampling = sampleEvery > 0 && step % <i64>sampleEvery == 0;
+    const fields = done == steps ? FIELDS : 0;
+    fillGhosts<T>(twoPhase ? 2 : 1);
+    if (twoPhase) phiPass<T>();
+    let total: f64 = 0;
+    for (let y = 0; y < ny; y++) {
+      const flags = fields | (sampling && (y < 2 || y >= ny - 2) ? STRESS : 0);
+      total += collide<T>(y, flags, twoPhase);
+    }
+    turn();
+    clearSolids<T>();
+    setEntry(H.STEP, <f64>step);
+    drive(total / <f64>(nx * ny));
+    if (sampling) sample<T>();
+  }
+  return done;
+}
+
+/** One row; on a speed that is not below the limit, the row again with its velocities kept, to name the cell. */
+function collide<T>(y: i32, flags: i32, twoPhase: bool): f64 {
+  if (twoPhase) collideRow<T>(y, flags);
+  else bulkRow<T>(y, flags);
+  const limit = entry(H.SPEED_LIMIT);
+  const top = twoPhase ? topU2 : bulkTopU2;
+  const sum = twoPhase ? sumUx : bulkSumUx;
+  if (top < limit * limit || entry(H.STATUS) != 0) return sum;
+  if (twoPhase) collideRow<T>(y, flags | FIELDS);
+  else bulkRow<T>(y, flags | FIELDS);
+  for (let x = 0; x < nx; x++) {
+    const ux = <f64>load<T>(fieldRow(H.AT_UX, y) + <usize>x * sizeof<T>());
+    const uy = <f64>load<T>(fieldRow(H.AT_UY, y) + <usize>x * sizeof<T>());
+    const speed = Math.sqrt(ux * ux + uy * uy);
+    if (speed < limit) continue;
+    setEntry(H.STATUS, isFinite(speed) ? 2 : 1);
+    setEntry(H.BAD_X, <f64>x);
+    setEntry(H.BAD_Y, <f64>y);
+    setEntry(H.BAD_SPEED, speed);
+    break;
+  }
+  return sum;
+}
+
+function drive(upflow: f64): void {
+  const before = entry(H.UPFLOW);
+  const kind = <i32>entry(H.DRIVE_KIND);
+  const value = entry(H.DRIVE_VALUE);
+  if (kind == 1) setEntry(H.DRIVE_FORCE, -value * upflow * Math.abs(upflow));
+  if (kind == 2) setEntry(H.DRIVE_FORCE, entry(H.DRIVE_FORCE) + 0.05 * entry(H.RHO_LIQUID) * (value - 2 * upflow + before));
+  setEntry(H.UPFLOW, upflow);
+  setEntry(H.UPFLOW_BEFORE, before);
+}
+
+function sample<T>(): void {
+  const n = <i32>entry(H.SAMPLES);
+  setEntry(H.SAMPLES, <f64>(n + 1));
+  const at = address(H.AT_SAMPLES) + <usize>n * (32 + 16 * <usize>nx);
+  store<f64>(at, entry(H.STEP));
+  store<f64>(at, entry(H.UPFLOW), 8);
+  store<f64>(at, entry(H.GAS_AREA), 16);
+  store<f64>(at, entry(H.SKIMMED), 24);
+  const bytes = 4 * <usize>nx;
+  wall<T>(at + 32, 0, 0, 1, 1);
+  wall<T>(at + 32 + bytes, 2, ny - 1, ny - 2, -1);
+  wallPhi<T>(at + 32 + 2 * bytes, 0, -1);
+  wallPhi<T>(at + 32 + 3 * bytes, ny - 1, ny);
+}
+
+/** Shear on a wall: the two nearest rows of tau with the weights of geometry.ts, `weights` and the next row of them. */
+function wall<T>(to: usize, weights: i32, first: i32, second: i32, sign: f64): void {
+  const a = fieldRow(H.AT_TAU, first);
+  const b = fieldRow(H.AT_TAU, max<i32>(min<i32>(second, ny - 1), 0));
+  const wa = fieldRow(H.AT_WEIGHTS, weights);
+  const wb = fieldRow(H.AT_WEIGHTS, weights + 1);
+  for (let x = 0; x < nx; x++) {
+    const i = <usize>x * sizeof<T>();
+    const value = <f64>load<T>(wa + i) * <f64>load<T>(a + i) + <f64>load<T>(wb + i) * <f64>load<T>(b + i);
+    store<f32>(to + 4 * <usize>x, <f32>(sign * value));
+  }
+}
+
+function wallPhi<T>(to: usize, inside: i32, ghost: i32): void {
+  const a = phiRow(inside);
+  const b = phiRow(ghost);
+  for (let x = 0; x < nx; x++) {
+    const i = <usize>x * sizeof<T>();
+    store<f32>(to + 4 * <usize>x, <f32>(0.5 * (<f64>load<T>(a + i) + <f64>load<T>(b + i))));
+  }
+}

@@ -1,0 +1,57 @@
+// Where things lie in memory. The populations are a ring of ny + 3 rows; a row holds its 9 f and its 9 g (less w/2), each
+// `stride` bytes long with x contiguous:
+//
+//   ring slot:   row -1 | row 0 | row 1 | ... | row ny | spare
+//   in a slot:   f0 [. ghost | cells ... | ghost, padding .] f1 [...] ... f8, g0 ... g8
+//
+// A step writes its new row y over the old row y - 2, which no later row pulls from, and then turns the ring by two slots.
+import * as H from '../header';
+
+/** Entry of the header. */
+// @ts-ignore: decorator
+@inline export function entry(n: i32): f64 { return load<f64>(<usize>n << 3); }
+// @ts-ignore: decorator
+@inline export function address(n: i32): usize { return <usize>load<f64>(<usize>n << 3); }
+// @ts-ignore: decorator
+@inline export function setEntry(n: i32, value: f64): void { store<f64>(<usize>n << 3, value); }
+
+export let nx: i32 = 0;
+export let ny: i32 = 0;
+export let stride: usize = 0;
+let ring: i32 = 0;
+let base: i32 = 0;
+let populations: usize = 0;
+let phi: usize = 0;
+
+/** Takes over the sizes; to be called at the start of every call from the host. */
+export function bind(): void {
+  nx = <i32>entry(H.NX);
+  ny = <i32>entry(H.NY);
+  stride = address(H.STRIDE);
+  ring = <i32>entry(H.RING);
+  base = <i32>entry(H.BASE);
+  populations = address(H.AT_POPULATIONS);
+  phi = address(H.AT_PHI);
+}
+
+/** f0 at (0, y), y from -2 (where row 0 of the next step goes) to ny. */
+export function row(y: i32): usize {
+  let slot = y + 1 + base;
+  if (slot < 0) slot += ring;
+  if (slot >= ring) slot -= ring;
+  return populations + <usize>slot * 18 * stride;
+}
+
+/** Turns the ring after a step. */
+export function turn(): void {
+  base = base >= 2 ? base - 2 : base - 2 + ring;
+  setEntry(H.BASE, <f64>base);
+}
+
+/** phi at (0, y), y from -1 to ny. */
+// @ts-ignore: decorator
+@inline export function phiRow(y: i32): usize { return phi + <usize>((y + 1) * <i32>stride) - stride; }
+
+/** A field without ghost rows, at (0, y). */
+// @ts-ignore: decorator
+@inline export function fieldRow(at: i32, y: i32): usize { return address(at) + <usize>y * stride; }

@@ -1,0 +1,126 @@
+import { type Box, wallSpeed } from './box.ts';
+import * as H from './header.ts';
+import type { Side } from './setup.ts';
+
+/** First byte the host gives out: the header lies at 0, the kernel's own statics at 65536. */
+const FIRST = 131072;
+/** room for samples between two hand-overs */
+const SAMPLE_BYTES = 4 << 20;
+
+/** What the host knows of the kernel's memory beside the header. */
+export interface MemoryMap {
+  memory: WebAssembly.Memory;
+  header: Float64Array;
+  bytesPerNumber: 4 | 8;
+  /** numbers in a row of a field, ghosts and padding included */
+  stride: number;
+  /** most samples between two hand-overs */
+  sampleCapacity: number;
+}
+
+/**
+ * The one memory map: sizes the memory for a box (shared, never grown), writes the header and the fixed lists. A row of a field
+ * starts 16 bytes before its cell 0, so that cell 0 lies on a group of lanes and the ghost -1 before it:
+ *
+ *     | 16 bytes, the last number is ghost -1 | cells, padded to whole groups | 16 bytes |
+ */
+export function layMemory(box: Box): MemoryMap {
+  const { nx, ny, geometry, setup } = box;
+  const bytesPerNumber = setup.precision === 'f64' ? 8 : 4;
+  const lanes = 16 / bytesPerNumber;
+  const strideBytes = 32 + Math.ceil(nx / lanes) * 16;
+  const sampleBytes = 32 + 16 * nx;
+  const sampleCapacity = Math.max(1, Math.floor(SAMPLE_BYTES / sampleBytes));
+  let end = FIRST;
+  const take = (bytes: number): number => {
+    const at = end;
+    end += Math.ceil(bytes / 16) * 16;
+    return at;
+  };
+  const ring = ny + 3;
+  const neighbours = geometry.ghosts.reduce((n, ghost) => n + ghost.neighbours.length, 0);
+  const entries: [number, number][] = [
+    [H.AT_POPULATIONS, take(ring * 18 * strideBytes) + 16],
+    [H.AT_PHI, take((ny + 2) * strideBytes) + 16 + strideBytes],
+    ...[H.AT_UX, H.AT_UY, H.AT_P, H.AT_TAU, H.AT_MASK].map((at): [number, number] => [at, take(ny * strideBytes) + 16]),
+    [H.AT_SKIM, take(strideBytes)],
+    [H.AT_WEIGHTS, take(4 * strideBytes)],
+    [H.AT_LINKS, take(20 * geometry.links.length)],
+    [H.AT_RUNS, take(12 * geometry.runs.length)],
+    [H.AT_GHOSTS, take(24 * (geometry.ghosts.length + neighbours))],
+    [H.AT_SAMPLES, take(sampleCapacity * sampleBytes)],
+  ];
+  const pages = Math.ceil(end / 65536);
+  if (pages > 32768) throw new RangeError(`setup: ${nx} x ${ny} cells need ${Math.round(end / 2 ** 20)} MiB; the limit is 2048 MiB`);
+  const memory = new WebAssembly.Memory({ initial: pages, maximum: pages, shared: true });
+  const header = new Float64Array(memory.buffer, 0, H.HEADER_BYTES / 8);
+  for (const [at, value] of entries) header[at] = value;
+  header[H.NX] = nx;
+  header[H.NY] = ny;
+  header[H.STRIDE] = strideBytes;
+  header[H.RING] = ring;
+  const map: MemoryMap = { memory, header, bytesPerNumber, stride: strideBytes / bytesPerNumber, sampleCapacity };
+  writeNumbers(box, header);
+  writeLists(box, map);
+  return map;
+}
+
+const sideCode = (side: Side): number => (side === 'periodic' ? 0 : side === 'slip' ? 2 : 1);
+
+function writeNumbers(box: Box, header: Float64Array): void {
+  const { sides } = box.setup;
+  const names = ['left', 'right', 'bottom', 'top'] as const;
+  names.forEach((name, n) => {
+    header[H.SIDE_LEFT + n] = sideCode(sides[name]);
+    header[H.SPEED_LEFT + n] = wallSpeed(sides[name]);
+  });
+  header[H.TWO_PHASE] = box.twoPhase ? 1 : 0;
+  header[H.RHO_LIQUID] = box.rhoLiquid;
+  header[H.RHO_GAS] = box.rhoGas;
+  header[H.FLUIDITY_LIQUID] = box.fluidityLiquid;
+  header[H.FLUIDITY_GAS] = box.fluidityGas;
+  header[H.BETA] = box.beta;
+  header[H.KAPPA] = box.kappa;
+  header[H.WIDTH] = box.W;
+  header[H.OMEGA_PHI] = box.omegaPhi;
+  header[H.WETTING] = box.wetting;
+  header[H.FORCE_X] = box.forceX;
+  header[H.FORCE_Y] = box.forceY;
+  header[H.GRAVITY_X] = box.gravityX;
+  header[H.GRAVITY_Y] = box.gravityY;
+  header[H.SPEED_LIMIT] = box.speedLimit;
+  header[H.DRIVE_KIND] = box.drive === undefined ? 0 : box.drive.kind === 'loss' ? 1 : 2;
+  header[H.DRIVE_VALUE] = box.drive === undefined ? 0 : box.drive.kind === 'loss' ? box.drive.coefficient : box.drive.target;
+}
+
+function writeLists(box: Box, map: MemoryMap): void {
+  const { nx, ny, geometry } = box;
+  const { header, memory } = map;
+  header[H.LINKS] = geometry.links.length;
+  header[H.RUNS] = geometry.runs.length;
+  header[H.GHOSTS] = geometry.ghosts.length;
+  const links = new Int32Array(memory.buffer, header[H.AT_LINKS], 5 * geometry.links.length);
+  geometry.links.forEach(({ x, y, k, fluidX, fluidY }, n) => {
+    links.set([x, y, k, fluidX, fluidY], 5 * n);
+  });
+  new Int32Array(memory.buffer, header[H.AT_RUNS], 3 * geometry.runs.length).set(geometry.runs.flat());
+  const ghosts = geometry.ghosts.flatMap(({ x, y, neighbours }) => [
+    ...[x, y, neighbours.length],
+    ...neighbours.flatMap((n) => [n.x, n.y, n.weight]),
+  ]);
+  new Float64Array(memory.buffer, header[H.AT_GHOSTS], ghosts.length).set(ghosts);
+  const rows = [...geometry.wallWeights.left, ...geometry.wallWeights.right];
+  rows.forEach((row, n) => {
+    numbers(map, header[H.AT_WEIGHTS] + n * header[H.STRIDE], nx).set(row);
+  });
+  numbers(map, header[H.AT_SKIM], nx).set(box.skim);
+  for (let y = 0; y < ny; y++) {
+    numbers(map, header[H.AT_MASK] + y * header[H.STRIDE], nx).set(geometry.fluid.subarray(y * nx, (y + 1) * nx));
+  }
+}
+
+/** A view of `length` numbers of the run's precision at a byte address. */
+export function numbers(map: MemoryMap, at: number, length: number): Float32Array | Float64Array {
+  const buffer = map.memory.buffer;
+  return map.bytesPerNumber === 8 ? new Float64Array(buffer, at, length) : new Float32Array(buffer, at, length);
+}
