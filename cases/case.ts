@@ -22,7 +22,7 @@ export interface Case {
     supply_m_s: number;
     /** membrane height this air serves */
     serves_m: number;
-    bubble: { diameter_m: number; /** relative standard deviation */ spread: number };
+    bubble: { diameter_m: number /** relative standard deviation */; spread: number };
     /** centre of release across the gap, or drawn evenly */
     across: { at_m: number } | 'even';
     /** bubbles that are there at the start, [across, along] */

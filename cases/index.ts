@@ -1,3 +1,8 @@
 export type { Case, Outline, WallSide } from './case.ts';
+export { galleryNames, galleryText } from './gallery.ts';
+export { readCase } from './read.ts';
 export type { BubbleRow, Checkpoint, History, Hooks, Progress, Recording, Snapshot, WallRows } from './recording.ts';
-export type { Derived } from './scale.ts';
+export { type Derived, layOut } from './scale.ts';
+export { caseSchema } from './schema.ts';
+export { simulate } from './simulate.ts';
+export { caseText } from './text.ts';

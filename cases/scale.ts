@@ -1,5 +1,8 @@
-import type { Setup } from '../solver/setup.ts';
+/** From SI to the lattice: the one place where units are converted. Lattice density 1 is the liquid's, length 1 a cell, time 1 a step. */
+import type { Setup } from '../solver/index.ts';
+import { bandsOf, gridOf, skimRates, stepsOf } from './bands.ts';
 import type { Case } from './case.ts';
+import { solidCells } from './fins.ts';
 
 /** Sizes and numbers that follow from a case; all the conversion factors there are. */
 export interface Derived {
@@ -27,5 +30,102 @@ export interface Derived {
   skim: { from_m: number; to_m: number };
 }
 
-/** The lattice box of a case and the numbers that go with it. */
-export declare function layOut(panel: Case): { setup: Setup; derived: Derived };
+/** Standard gravity, m/s2. */
+const GRAVITY_m_s2 = 9.80665;
+
+/** Interface width W, cells, and mobility M: what held in trials of air and water (METHOD section 3). */
+const INTERFACE_WIDTH = 5;
+const MOBILITY = 0.1;
+
+/**
+ * The lattice box of a case and the numbers that go with it. The computed height is `nx * dx_m`: the asked one rounded to whole cells.
+ * Buoyancy acts with the density difference of liquid and real air, whatever density the gas is computed with.
+ */
+export function layOut(panel: Case): { setup: Setup; derived: Derived } {
+  const derived = derive(panel);
+  const { nx, ny, dx_m, dt_s } = derived;
+  const rhoLiquid = panel.liquid.density_kg_m3;
+  const viscosity = (eta_Pa_s: number): number => (eta_Pa_s * dt_s) / (rhoLiquid * dx_m ** 2);
+  const surfaceTension = (panel.surfaceTension_N_m * dt_s ** 2) / (rhoLiquid * dx_m ** 3);
+  const g = (GRAVITY_m_s2 * dt_s ** 2) / dx_m;
+  const gasDensity = panel.gas.density_kg_m3 / rhoLiquid;
+  const setup: Setup = {
+    nx,
+    ny,
+    sides: { left: 'wall', right: 'wall', bottom: 'periodic', top: 'periodic' },
+    liquid: { density: 1, viscosity: viscosity(panel.liquid.viscosity_Pa_s) },
+    gas: { density: gasDensity, viscosity: viscosity(panel.gas.viscosity_Pa_s) },
+    surfaceTension,
+    interfaceWidth: INTERFACE_WIDTH,
+    mobility: MOBILITY,
+    contactAngle: panel.contactAngle_rad,
+    ...(panel.fins.length === 0 ? {} : { solid: solidCells(panel.fins, nx, ny, dx_m) }),
+    gravity: { x: -g * Math.cos(panel.channel.tilt_rad), y: 0 - g * Math.sin(panel.channel.tilt_rad) },
+    buoyancy: (rhoLiquid - panel.gas.airDensity_kg_m3) / (rhoLiquid - panel.gas.density_kg_m3),
+    drive: driveOf(panel, derived),
+    skim: skimRates(panel),
+    ...startOf(panel, dx_m, surfaceTension),
+  };
+  return { setup, derived };
+}
+
+function driveOf({ channel }: Case, { nx, unit }: Derived): NonNullable<Setup['drive']> {
+  if ('upflow_m_s' in channel.return) return { kind: 'upflow', target: channel.return.upflow_m_s / unit.velocity_m_s };
+  return { kind: 'loss', coefficient: channel.return.loss / (2 * nx) };
+}
+
+/** Bubbles at the start: the equilibrium profile of each, and the Laplace pressure in it. */
+function startOf({ gas }: Case, dx_m: number, surfaceTension: number): Pick<Setup, 'initial'> {
+  if (gas.start.length === 0) return {};
+  const circles = gas.start.map(({ across_m, along_m, diameter_m }) => ({
+    x: along_m / dx_m - 0.5,
+    y: across_m / dx_m - 0.5,
+    radius: diameter_m / 2 / dx_m,
+  }));
+  const liquid = (x: number, y: number, circle: { x: number; y: number; radius: number }): number =>
+    0.5 + 0.5 * Math.tanh((2 * (Math.hypot(x - circle.x, y - circle.y) - circle.radius)) / INTERFACE_WIDTH);
+  return {
+    initial: {
+      phi: (x, y) => circles.reduce((least, circle) => Math.min(least, liquid(x, y, circle)), 1),
+      pressure: (x, y) => circles.reduce((sum, circle) => sum + (surfaceTension / circle.radius) * (1 - liquid(x, y, circle)), 0),
+    },
+  };
+}
+
+function derive(panel: Case): Derived {
+  const { channel, liquid, gas, surfaceTension_N_m } = panel;
+  const { nx, ny, dx_m, dt_s } = gridOf(panel);
+  const { sampleEvery, settle, span } = stepsOf(panel);
+  const tau = (eta_Pa_s: number, density_kg_m3: number): number => 0.5 + (3 * (eta_Pa_s / density_kg_m3) * dt_s) / dx_m ** 2;
+  const diameter_m = gas.bubble.diameter_m;
+  const difference_kg_m3 = liquid.density_kg_m3 - gas.airDensity_kg_m3;
+  const gasVelocity_m_s = (gas.supply_m_s * channel.membranes.length * gas.serves_m) / channel.gap_m;
+  return {
+    nx,
+    ny,
+    dx_m,
+    dt_s,
+    steps: settle + span,
+    sampleEvery,
+    tauLiquid: tau(liquid.viscosity_Pa_s, liquid.density_kg_m3),
+    tauGas: tau(gas.viscosity_Pa_s, gas.density_kg_m3),
+    densityRatio: liquid.density_kg_m3 / gas.density_kg_m3,
+    Re: (liquid.density_kg_m3 * riseSpeed_m_s(panel) * diameter_m) / liquid.viscosity_Pa_s,
+    Eo: (difference_kg_m3 * GRAVITY_m_s2 * diameter_m ** 2) / surfaceTension_N_m,
+    Mo: (GRAVITY_m_s2 * liquid.viscosity_Pa_s ** 4 * difference_kg_m3) / (liquid.density_kg_m3 ** 2 * surfaceTension_N_m ** 3),
+    bubblesPerSecond: (gasVelocity_m_s * channel.gap_m) / ((Math.PI * diameter_m ** 2) / 4),
+    gasVelocity_m_s,
+    cellsPerBubble: diameter_m / dx_m,
+    unit: { velocity_m_s: dx_m / dt_s, stress_Pa: liquid.density_kg_m3 * (dx_m / dt_s) ** 2, area_m2: dx_m ** 2 },
+    ...bandsOf(panel),
+  };
+}
+
+/**
+ * What a plane bubble is expected to rise with: the slower of a cap, 0.5 sqrt(g R) (Collins 1965, from memory), and a long bubble
+ * that fills the gap, 0.23 sqrt(g gap) (Vanden-Broeck 1984, Phys. Fluids 27, 2604), g along the channel.
+ */
+function riseSpeed_m_s({ channel, gas }: Case): number {
+  const g = GRAVITY_m_s2 * Math.cos(channel.tilt_rad);
+  return Math.min(0.5 * Math.sqrt((g * gas.bubble.diameter_m) / 2), 0.23 * Math.sqrt(g * channel.gap_m));
+}

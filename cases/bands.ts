@@ -1,0 +1,70 @@
+/** How long a step is, how long a run, and which ends of the channel serve to let gas in and take it out. */
+import type { Case } from './case.ts';
+
+/** Lattice velocity at which `grid.speed` stands (METHOD section 3: held at 0.02 and below). */
+const LATTICE_SPEED = 0.02;
+
+/** Bubbles are drawn within this many standard deviations of the mean diameter. */
+export const WIDEST_DRAW = 2;
+
+/** Speed a bubble is taken to enter the skim band with, and e-foldings of its gas on the way through. */
+const SKIM_SPEED_m_s = 0.5;
+const SKIM_FOLDS = 6;
+
+/** Largest share of the gas one step takes: more is a shock to the pressure. */
+const SKIM_MOST = 0.02;
+
+type Sized = Pick<Case, 'channel' | 'gas' | 'grid'>;
+
+/** Cell size, cells along (the height rounded to whole cells) and time step. */
+export function gridOf({ channel, grid }: Pick<Case, 'channel' | 'grid'>): { nx: number; ny: number; dx_m: number; dt_s: number } {
+  const dx_m = channel.gap_m / grid.across;
+  return { nx: Math.round(channel.height_m / dx_m), ny: grid.across, dx_m, dt_s: (LATTICE_SPEED / grid.speed_m_s) * dx_m };
+}
+
+/** Steps of settling and recording, both whole numbers of samples. */
+export function stepsOf({ record, ...sized }: Pick<Case, 'channel' | 'grid' | 'record'>): {
+  sampleEvery: number;
+  settle: number;
+  span: number;
+} {
+  const { dt_s } = gridOf(sized);
+  const sampleEvery = Math.max(1, Math.round(record.every_s / dt_s));
+  const whole = (time_s: number): number => sampleEvery * Math.ceil(time_s / (sampleEvery * dt_s) - 1e-9);
+  return { sampleEvery, settle: whole(record.settle_s), span: Math.max(sampleEvery, whole(record.span_s)) };
+}
+
+/** Diameter of the largest bubble that is let in: two standard deviations above the mean, two cells clear of either wall. */
+export function largestBubble_m({ channel, gas, grid }: Sized): number {
+  const fits = channel.gap_m - (4 * channel.gap_m) / grid.across;
+  return Math.min(gas.bubble.diameter_m * (1 + WIDEST_DRAW * gas.bubble.spread), fits);
+}
+
+/**
+ * Release band at the bottom: a tenth of the height, and one and a half of the largest bubble at least; empty without supply.
+ * Skim band at the top: the gap or a tenth of the height, whichever is longer, and long enough for {@link skimRates}.
+ */
+export function bandsOf(sized: Sized): { release: { from_m: number; to_m: number }; skim: { from_m: number; to_m: number } } {
+  const { channel, gas } = sized;
+  const { nx, dx_m, dt_s } = gridOf(sized);
+  const height_m = nx * dx_m;
+  const shortest_m = (2 * SKIM_FOLDS * SKIM_SPEED_m_s * dt_s) / SKIM_MOST;
+  const skim_m = Math.max(channel.gap_m, 0.1 * height_m, shortest_m);
+  const release_m = gas.supply_m_s === 0 ? 0 : Math.max(0.1 * height_m, 1.5 * largestBubble_m(sized));
+  return { release: { from_m: 0, to_m: release_m }, skim: { from_m: height_m - skim_m, to_m: height_m } };
+}
+
+/**
+ * Share of the gas taken out in one step, per x: most sin^2(pi s), s from 0 to 1 through the band, so that the rate has no
+ * edge; a bubble passing at {@link SKIM_SPEED_m_s} keeps exp(-{@link SKIM_FOLDS}) of its gas.
+ */
+export function skimRates(sized: Sized): Float64Array {
+  const { nx, dx_m, dt_s } = gridOf(sized);
+  const { skim } = bandsOf(sized);
+  const length_m = skim.to_m - skim.from_m;
+  const most = (2 * SKIM_FOLDS * SKIM_SPEED_m_s * dt_s) / length_m;
+  return Float64Array.from({ length: nx }, (_, x) => {
+    const s = ((x + 0.5) * dx_m - skim.from_m) / length_m;
+    return s <= 0 ? 0 : most * Math.sin(Math.PI * s) ** 2;
+  });
+}

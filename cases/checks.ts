@@ -1,0 +1,162 @@
+/** What the table of keys cannot see: one part of a case against another. Runs only on a case whose single values are sound. */
+import { bandsOf, gridOf, stepsOf } from './bands.ts';
+import type { Case } from './case.ts';
+import type { PlacedFinding } from './faults.ts';
+import { finFindings } from './fincheck.ts';
+import type { PlacedFin } from './fins.ts';
+import { distanceTo } from './polygon.ts';
+import type { CaseEntries } from './schema.ts';
+import { mm } from './units.ts';
+
+/** Most cells of a grid, and most wall values of a recording (5 bytes each). */
+const MOST_CELLS = 2e7;
+const MOST_WALL_VALUES = 4e8;
+
+/** Longest relaxation time: beyond it the halfway walls slip visibly. */
+const LONGEST_TAU = 2;
+
+/** Every contradiction within a case. */
+export function contradictions(entries: CaseEntries, panel: Case, fins: readonly PlacedFin[]): PlacedFinding[] {
+  const single = [...channelFindings(entries), ...recordFindings(panel), ...gasFindings(entries, panel), ...sizeFindings(panel)];
+  if (single.length > 0) return single;
+  return [...bandFindings(panel), ...finFindings(entries, panel, fins), ...startFindings(panel)];
+}
+
+function channelFindings({ channel }: CaseEntries): PlacedFinding[] {
+  const found: PlacedFinding[] = [];
+  const path = ['channel', 'membranes'];
+  if (channel.membranes.length === 0) found.push({ path, problem: 'is empty', allowed: 'left, right or both' });
+  if (new Set(channel.membranes).size < channel.membranes.length)
+    found.push({ path, problem: 'names a wall twice', allowed: 'left, right or both' });
+  const { loss, upflow } = channel.return;
+  if ((loss === undefined) === (upflow === undefined)) {
+    const problem = loss === undefined ? 'says neither loss nor upflow' : 'says both loss and upflow';
+    found.push({
+      path: ['channel', 'return'],
+      problem,
+      allowed: 'one of loss, upflow',
+      remedy: 'Write {loss: 1.5} for a tank or {upflow: 0.1 m/s} for a pump',
+    });
+  }
+  return found;
+}
+
+function recordFindings({ record, swept }: Case): PlacedFinding[] {
+  const found: PlacedFinding[] = [];
+  const most = `at most the span, ${Number(record.span_s.toPrecision(4))} s`;
+  if (record.every_s > record.span_s) found.push({ path: ['record', 'every'], problem: 'is longer than the time recorded', allowed: most });
+  if (swept.within_s > record.span_s * (1 + 1e-9)) {
+    found.push({
+      path: ['swept', 'within'],
+      problem: 'is longer than the time recorded',
+      allowed: most,
+      remedy: 'Shorten it, or record a longer span',
+    });
+  }
+  return found;
+}
+
+function gasFindings(entries: CaseEntries, panel: Case): PlacedFinding[] {
+  const { gas, channel, liquid } = panel;
+  const found: PlacedFinding[] = [];
+  if (gas.softened && (gas.density_kg_m3 < gas.airDensity_kg_m3 || gas.density_kg_m3 >= liquid.density_kg_m3)) {
+    const air = Number(gas.airDensity_kg_m3.toPrecision(4));
+    found.push({ path: ['gas', 'softened', 'density'], problem: 'is lighter than air', allowed: `${air} kg/m3 to 200 kg/m3` });
+  }
+  if (gas.supply_m_s === 0) return found;
+  const clear_m = 2 * gridOf(panel).dx_m;
+  const fits_m = channel.gap_m - 2 * clear_m;
+  if (gas.bubble.diameter_m > fits_m) {
+    const remedy =
+      'A bubble is let in as a circle and needs two cells of liquid beside it; larger ones form in the channel where bubbles merge';
+    found.push({ path: ['gas', 'bubble', 'diameter'], problem: 'does not fit into the gap', allowed: `at most ${mm(fits_m)}`, remedy });
+  } else if (gas.across !== 'even' && typeof entries.gas.across === 'number') {
+    const nearest_m = gas.bubble.diameter_m / 2 + clear_m;
+    if (gas.across.at_m < nearest_m - 1e-12 || gas.across.at_m > channel.gap_m - nearest_m + 1e-12) {
+      const allowed = `${mm(nearest_m)} to ${mm(channel.gap_m - nearest_m)}`;
+      found.push({ path: ['gas', 'across'], problem: 'puts a bubble of the mean diameter into a wall', allowed });
+    }
+  }
+  return found;
+}
+
+function sizeFindings(panel: Case): PlacedFinding[] {
+  const { nx, ny, dx_m, dt_s } = gridOf(panel);
+  const { span, sampleEvery } = stepsOf(panel);
+  const found: PlacedFinding[] = [];
+  if (nx * ny > MOST_CELLS) {
+    const most = Math.floor(Math.sqrt((MOST_CELLS * panel.channel.gap_m) / panel.channel.height_m));
+    found.push({ path: ['grid', 'across'], problem: `makes a grid of ${nx * ny} cells`, allowed: `at most ${most} for this channel` });
+  }
+  if ((span / sampleEvery) * nx > MOST_WALL_VALUES) {
+    const least_ms = (1000 * span * dt_s * nx) / MOST_WALL_VALUES;
+    const allowed = `at least ${Number(least_ms.toPrecision(3))} ms for this span and grid`;
+    found.push({
+      path: ['record', 'every'],
+      problem: 'makes a recording too large to hold',
+      allowed,
+      remedy: 'Sample less often or record a shorter span',
+    });
+  }
+  const tau = (nu: number): number => 0.5 + (3 * nu * dt_s) / dx_m ** 2;
+  const tauLiquid = tau(panel.liquid.viscosity_Pa_s / panel.liquid.density_kg_m3);
+  const tauGas = tau(panel.gas.viscosity_Pa_s / panel.gas.density_kg_m3);
+  if (Math.max(tauLiquid, tauGas) > LONGEST_TAU) {
+    const factor = (Math.max(tauLiquid, tauGas) - 0.5) / (LONGEST_TAU - 0.5);
+    const allowed = `at least ${Number((factor * panel.grid.speed_m_s).toPrecision(3))} m/s for these fluids and cells`;
+    found.push({
+      path: ['grid', 'speed'],
+      problem: 'makes the time step too long for the viscosity',
+      allowed,
+      remedy: 'Raise it, or take fewer cells across',
+    });
+  }
+  return found;
+}
+
+function bandFindings(panel: Case): PlacedFinding[] {
+  const { release, skim } = bandsOf(panel);
+  const bands_m = release.to_m + skim.to_m - skim.from_m;
+  if (bands_m <= 0.6 * skim.to_m) return [];
+  const problem = `leaves too little between the band where gas is let in (${mm(release.to_m)}) and the one where it is taken out (${mm(skim.to_m - skim.from_m)})`;
+  return [
+    {
+      path: ['channel', 'height'],
+      problem,
+      allowed: `at least ${mm(bands_m / 0.6)}`,
+      remedy: 'Make the channel higher or the bubbles smaller',
+    },
+  ];
+}
+
+function startFindings(panel: Case): PlacedFinding[] {
+  const { gas, channel, fins } = panel;
+  const { skim } = bandsOf(panel);
+  const clear_m = 2 * gridOf(panel).dx_m;
+  return gas.start.flatMap((bubble, i): PlacedFinding[] => {
+    const path = ['gas', 'start', i];
+    const reach_m = bubble.diameter_m / 2 + clear_m;
+    if (2 * reach_m > channel.gap_m + 1e-12) {
+      return [{ path: [...path, 'diameter'], problem: 'does not fit into the gap', allowed: `at most ${mm(channel.gap_m - 2 * clear_m)}` }];
+    }
+    if (bubble.across_m < reach_m - 1e-12 || bubble.across_m > channel.gap_m - reach_m + 1e-12) {
+      return [
+        { path: [...path, 'across'], problem: 'puts the bubble into a wall', allowed: `${mm(reach_m)} to ${mm(channel.gap_m - reach_m)}` },
+      ];
+    }
+    if (bubble.along_m < reach_m || bubble.along_m > skim.from_m - reach_m) {
+      const allowed = `${mm(reach_m)} to ${mm(skim.from_m - reach_m)}`;
+      return [
+        { path: [...path, 'along'], problem: 'puts the bubble outside the channel or into the band where gas is taken out', allowed },
+      ];
+    }
+    const fin = fins.findIndex((outline) => distanceTo(outline, bubble.across_m, bubble.along_m) < bubble.diameter_m / 2);
+    if (fin >= 0) return [{ path, problem: `lies on fin ${fin + 1}`, remedy: 'Move the bubble or make it smaller' }];
+    const other = gas.start.findIndex((b, j) => j < i && apart(b, bubble) < (b.diameter_m + bubble.diameter_m) / 2);
+    return other < 0 ? [] : [{ path, problem: `overlaps the bubble of entry ${other + 1}`, remedy: 'Move one of them' }];
+  });
+}
+
+function apart(a: { across_m: number; along_m: number }, b: { across_m: number; along_m: number }): number {
+  return Math.hypot(a.across_m - b.across_m, a.along_m - b.along_m);
+}

@@ -1,0 +1,78 @@
+/** Fins: groups resolved to outlines, and outlines to the cells they fill. */
+import type { Outline } from './case.ts';
+import { extent, inside } from './polygon.ts';
+import type { FinGroup } from './schema.ts';
+
+/** A fin and the entry of the case file it comes from. */
+export interface PlacedFin {
+  outline: Outline;
+  entry: number;
+}
+
+/**
+ * The straight fins of a group, lowest first: rectangles `length` by `thickness` whose long side leans from the channel
+ * axis by `angle` (positive: upper end to the right). With `alternate`, the second, fourth, ... are mirrored across the middle of the gap.
+ */
+export function groupOutlines(group: FinGroup, gap_m: number): Outline[] {
+  return Array.from({ length: group.count }, (_, i) => {
+    const along = group.from + i * (group.pitch ?? 0);
+    const mirrored = group.alternate && i % 2 === 1;
+    return bar(mirrored ? gap_m - group.across : group.across, along, group.length, group.thickness, mirrored ? -group.angle : group.angle);
+  });
+}
+
+function bar(across: number, along: number, length: number, thickness: number, angle: number): Outline {
+  const sine = Math.sin(angle);
+  const cosine = Math.cos(angle);
+  const ends: [number, number][] = [
+    [-1, -1],
+    [1, -1],
+    [1, 1],
+    [-1, 1],
+  ];
+  return ends.map(([side, end]) => {
+    const a = (side * thickness) / 2;
+    const b = (end * length) / 2;
+    return [across + a * cosine + b * sine, along - a * sine + b * cosine];
+  });
+}
+
+/**
+ * Cells whose centre lies in a fin; shape (ny, nx), index y * nx + x. Cell (x, y) is centred at along (x + 1/2) dx,
+ * across (y + 1/2) dx. What reaches past the walls is cut off.
+ */
+export function solidCells(fins: readonly Outline[], nx: number, ny: number, dx_m: number): Uint8Array {
+  const solid = new Uint8Array(nx * ny);
+  for (const fin of fins) {
+    const { across, along } = extent(fin);
+    const xEnd = Math.min(nx - 1, Math.ceil(along[1] / dx_m));
+    const yEnd = Math.min(ny - 1, Math.ceil(across[1] / dx_m));
+    for (let y = Math.max(0, Math.floor(across[0] / dx_m) - 1); y <= yEnd; y++) {
+      for (let x = Math.max(0, Math.floor(along[0] / dx_m) - 1); x <= xEnd; x++) {
+        if (inside(fin, (y + 0.5) * dx_m, (x + 0.5) * dx_m)) solid[y * nx + x] = 1;
+      }
+    }
+  }
+  return solid;
+}
+
+/** Whether open cells join the bottom with the top. */
+export function passable(solid: Uint8Array, nx: number, ny: number): boolean {
+  const seen = Uint8Array.from(solid);
+  const open: number[] = [];
+  const visit = (i: number): void => {
+    if (seen[i] === 1) return;
+    seen[i] = 1;
+    open.push(i);
+  };
+  for (let y = 0; y < ny; y++) visit(y * nx);
+  for (let i = open.pop(); i !== undefined; i = open.pop()) {
+    const x = i % nx;
+    if (x === nx - 1) return true;
+    visit(i + 1);
+    if (x > 0) visit(i - 1);
+    if (i >= nx) visit(i - nx);
+    if (i < nx * (ny - 1)) visit(i + nx);
+  }
+  return false;
+}

@@ -1,0 +1,79 @@
+/** Case text to Case: parse, hold against the table of keys, fill in what follows from fluids, check part against part. */
+import { CaseError } from '../solver/index.ts';
+import type { Case, Outline } from './case.ts';
+import { contradictions } from './checks.ts';
+import { findings, placed } from './faults.ts';
+import { groupOutlines, type PlacedFin } from './fins.ts';
+import { airDensity_kg_m3, airViscosity_Pa_s, waterDensity_kg_m3, waterSurfaceTension_N_m, waterViscosity_Pa_s } from './fluids.ts';
+import { type CaseEntries, caseTable } from './schema.ts';
+import { parseTree, plain } from './text.ts';
+
+/**
+ * Reads the text of a case file.
+ * @param file name shown in messages
+ * @param sets overrides, each `path=value`
+ * @throws CaseError that carries every fault found
+ */
+export function readCase(text: string, file: string, sets: readonly string[] = []): Case {
+  const tree = parseTree(text, file, sets);
+  const entries = plain(tree.document.contents);
+  const read = caseTable.safeParse(entries);
+  if (!read.success) throw new CaseError(findings(read.error.issues, entries).map((found) => placed(tree, entries, found)));
+  const fins = finsOf(read.data);
+  const panel = resolve(read.data, fins);
+  const wrong = contradictions(read.data, panel, fins);
+  if (wrong.length > 0) throw new CaseError(wrong.map((found) => placed(tree, entries, found)));
+  return panel;
+}
+
+function finsOf({ fins, channel }: CaseEntries): PlacedFin[] {
+  return fins.flatMap((fin, entry) => {
+    const outlines = 'outline' in fin ? [fin.outline as Outline] : groupOutlines(fin, channel.gap);
+    return outlines.map((outline) => ({ outline, entry }));
+  });
+}
+
+function resolve(entries: CaseEntries, fins: readonly PlacedFin[]): Case {
+  const { title, channel, gas, grid, record, swept } = entries;
+  const { loss, upflow } = channel.return;
+  const { temperature: temperature_K } = entries.liquid;
+  return {
+    title,
+    channel: {
+      gap_m: channel.gap,
+      height_m: channel.height,
+      tilt_rad: channel.tilt,
+      membranes: channel.membranes,
+      return: upflow === undefined ? { loss: loss ?? 0 } : { upflow_m_s: upflow },
+    },
+    fins: fins.map(({ outline }) => outline),
+    ...liquidOf(entries),
+    contactAngle_rad: channel.wetting,
+    gas: {
+      supply_m_s: gas.supply,
+      serves_m: gas.serves ?? channel.height,
+      bubble: { diameter_m: gas.bubble.diameter, spread: gas.bubble.spread },
+      across: gas.across === 'even' ? 'even' : { at_m: gas.across === 'middle' ? channel.gap / 2 : gas.across },
+      start: gas.start.map(({ across, along, diameter }) => ({ across_m: across, along_m: along, diameter_m: diameter })),
+      seed: gas.seed,
+      density_kg_m3: gas.softened?.density ?? airDensity_kg_m3(temperature_K),
+      viscosity_Pa_s: gas.softened?.viscosity ?? airViscosity_Pa_s(temperature_K),
+      airDensity_kg_m3: airDensity_kg_m3(temperature_K),
+      softened: gas.softened !== undefined,
+    },
+    grid: { across: grid.across, speed_m_s: grid.speed },
+    record: { settle_s: record.settle, span_s: record.span, every_s: record.every },
+    swept: { above_Pa: swept.above, within_s: swept.within ?? Math.min(1, record.span) },
+  };
+}
+
+function liquidOf({ liquid }: CaseEntries): Pick<Case, 'liquid' | 'surfaceTension_N_m'> {
+  const { kind, temperature: temperature_K } = liquid;
+  if (kind === 'custom') {
+    const { density: density_kg_m3, viscosity: viscosity_Pa_s } = liquid;
+    return { liquid: { kind, temperature_K, density_kg_m3, viscosity_Pa_s }, surfaceTension_N_m: liquid['surface tension'] };
+  }
+  const density_kg_m3 = waterDensity_kg_m3(temperature_K);
+  const viscosity_Pa_s = waterViscosity_Pa_s(temperature_K, density_kg_m3);
+  return { liquid: { kind, temperature_K, density_kg_m3, viscosity_Pa_s }, surfaceTension_N_m: waterSurfaceTension_N_m(temperature_K) };
+}

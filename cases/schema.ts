@@ -1,0 +1,185 @@
+/**
+ * The one table of everything a case file may say: keys, units, ranges, defaults and what they mean.
+ * The reader, the messages and the editors' JSON Schema are all made from it. Limits are those of what the method can carry,
+ * not of what is sensible to build.
+ */
+import { z } from 'zod';
+import { choice, flag, line, plainNumber, quantity, wordOrLength } from './leaves.ts';
+
+/** A part of the table that may be left out: `written` is read in its place. The cast: zod counts keys with a default as required here. */
+function leftOut<T extends z.ZodType>(part: T, written: unknown = {}) {
+  return part.prefault(written as z.input<T> & z.core.util.NoUndefined<z.input<T>>);
+}
+
+const membranes = z
+  .array(choice(['left', 'right'], 'a wall that carries a membrane'))
+  .prefault(['left', 'right'])
+  .meta({ description: 'walls that carry a membrane: left, right or both', minItems: 1, maxItems: 2, uniqueItems: true });
+
+const channel = z.strictObject({
+  gap: quantity('length', { unit: 'mm', least: 1, most: 100, says: 'free distance between the two walls' }),
+  height: quantity('length', { unit: 'mm', least: 10, most: 3000, says: 'length of the computed section along the channel' }),
+  tilt: quantity('angle', {
+    unit: 'deg',
+    least: -60,
+    most: 60,
+    default: '0 deg',
+    says: 'lean from the vertical; positive: the right wall faces down and gas rides along it',
+  }),
+  wetting: quantity('angle', {
+    unit: 'deg',
+    least: 20,
+    most: 160,
+    default: '60 deg',
+    says: 'contact angle on walls and fins, in the liquid',
+  }),
+  membranes,
+  return: z
+    .strictObject({
+      loss: plainNumber({ least: 0, most: 1e6, says: 'loss coefficient of the way back through the tank, on the mean upflow' }).optional(),
+      upflow: quantity('speed', { unit: 'm/s', least: -2, most: 2, says: 'mean liquid upflow held by a pump' }).optional(),
+    })
+    .prefault({ loss: '1.5' })
+    .meta({ description: 'how the liquid comes back to the bottom: a loss coefficient or a given upflow' }),
+});
+
+const finGroup = z.strictObject({
+  from: quantity('length', { unit: 'mm', least: 0, most: 3000, says: 'height of the centre of the lowest fin' }),
+  pitch: quantity('length', { unit: 'mm', least: 0.1, most: 3000, says: 'distance from one fin to the next along the channel' }).optional(),
+  count: plainNumber({ least: 1, most: 500, whole: true, default: '1', says: 'number of fins in the group' }),
+  across: quantity('length', { unit: 'mm', least: -50, most: 150, says: "distance of the fin's centre from the left wall" }),
+  length: quantity('length', { unit: 'mm', least: 0.1, most: 500, says: 'long side of the fin' }),
+  thickness: quantity('length', { unit: 'mm', least: 0.1, most: 100, says: 'short side of the fin' }),
+  angle: quantity('angle', {
+    unit: 'deg',
+    least: -90,
+    most: 90,
+    default: '0 deg',
+    says: 'lean of the long side from the channel axis; positive turns the upper end to the right',
+  }),
+  alternate: flag('mirrors every other fin across the middle of the gap', 'false'),
+});
+
+const finOutline = z.strictObject({
+  outline: z
+    .array(
+      z.tuple([
+        quantity('length', { unit: 'mm', least: -50, most: 150, says: 'across, from the left wall' }),
+        quantity('length', { unit: 'mm', least: 0, most: 3000, says: 'along, from the bottom' }),
+      ]),
+    )
+    .meta({ description: 'corners [across, along] of a closed polygon, at least three', minItems: 3 }),
+});
+
+const water = z.strictObject({
+  kind: z.literal('water'),
+  temperature: quantity('temperature', { unit: 'degC', least: 1, most: 60, default: '20 degC', says: 'of water and air' }),
+});
+
+const custom = z.strictObject({
+  kind: z.literal('custom'),
+  density: quantity('density', { unit: 'kg/m3', least: 500, most: 2000, says: 'of the liquid' }),
+  viscosity: quantity('viscosity', { unit: 'mPa s', least: 0.2, most: 200, says: 'dynamic viscosity of the liquid' }),
+  'surface tension': quantity('tension', { unit: 'mN/m', least: 10, most: 200, says: 'of the liquid against air' }),
+  temperature: quantity('temperature', { unit: 'degC', least: 1, most: 60, default: '20 degC', says: 'of the air' }),
+});
+
+const gas = z.strictObject({
+  supply: quantity('supply', { unit: 'm3/(m2 h)', least: 0, most: 20, says: 'air per membrane area and time; 0 for none' }),
+  serves: quantity('length', {
+    unit: 'mm',
+    least: 10,
+    most: 10000,
+    says: "membrane height this air serves; the channel's by default",
+  }).optional(),
+  bubble: leftOut(
+    z.strictObject({
+      diameter: quantity('length', { unit: 'mm', least: 0.5, most: 90, default: '5 mm', says: 'mean diameter of the bubbles let in' }),
+      spread: quantity('share', {
+        unit: '%',
+        least: 0,
+        most: 40,
+        default: '15 %',
+        says: 'standard deviation of the diameter over its mean',
+      }),
+    }),
+  ),
+  across: wordOrLength(['middle', 'even'], {
+    unit: 'mm',
+    least: 0,
+    most: 100,
+    default: 'middle',
+    says: 'where in the gap bubbles are let in',
+  }),
+  start: z
+    .array(
+      z.strictObject({
+        across: quantity('length', { unit: 'mm', least: 0, most: 100, says: 'centre, from the left wall' }),
+        along: quantity('length', { unit: 'mm', least: 0, most: 3000, says: 'centre, from the bottom' }),
+        diameter: quantity('length', { unit: 'mm', least: 0.5, most: 90, says: 'of the bubble' }),
+      }),
+    )
+    .prefault([])
+    .meta({ description: 'bubbles that are there at the start' }),
+  seed: plainNumber({ least: 0, most: 4294967295, whole: true, default: '1', says: 'of the random releases' }),
+  softened: z
+    .strictObject({
+      density: quantity('density', { unit: 'kg/m3', least: 1, most: 200, says: 'of the gas as computed; buoyancy keeps that of air' }),
+      viscosity: quantity('viscosity', { unit: 'mPa s', least: 0.01, most: 10, says: 'dynamic viscosity of the gas as computed' }),
+    })
+    .optional()
+    .meta({ description: 'a gas heavier and thicker than air, where true air is more than the method carries' }),
+});
+
+const grid = z.strictObject({
+  across: plainNumber({ least: 12, most: 400, whole: true, default: '40', says: 'cells across the gap' }),
+  speed: quantity('speed', {
+    unit: 'm/s',
+    least: 0.05,
+    most: 5,
+    default: '0.3 m/s',
+    says: 'speed that one time step carries 0.02 cells far; a larger one makes the steps finer',
+  }),
+});
+
+const record = z.strictObject({
+  settle: quantity('time', { unit: 's', least: 0, most: 600, default: '1 s', says: 'time computed before the recording starts' }),
+  span: quantity('time', { unit: 's', least: 0.001, most: 3600, default: '3 s', says: 'time recorded' }),
+  every: quantity('time', { unit: 'ms', least: 0.01, most: 1000, default: '2 ms', says: 'time between wall samples' }),
+});
+
+const swept = z.strictObject({
+  above: quantity('stress', { unit: 'Pa', least: 0.001, most: 1000, default: '0.5 Pa', says: 'wall shear that counts as sweeping' }),
+  within: quantity('time', {
+    unit: 's',
+    least: 0.001,
+    most: 3600,
+    says: 'window to be swept in; 1 s or the span, if shorter, by default',
+  }).optional(),
+});
+
+/** A case file, as text leaves turned into SI values. */
+export const caseTable = z
+  .strictObject({
+    title: line(200, 'one line for people', 'Untitled panel'),
+    channel,
+    fins: z
+      .array(z.union([finGroup, finOutline]))
+      .prefault([])
+      .meta({ description: 'groups of straight fins, and free outlines' }),
+    liquid: leftOut(z.discriminatedUnion('kind', [water, custom]), { kind: 'water' }),
+    gas,
+    grid: leftOut(grid),
+    record: leftOut(record),
+    swept: leftOut(swept),
+  })
+  .meta({ title: 'Swathe case' });
+
+/** What the table hands over: SI values, not yet checked against one another. */
+export type CaseEntries = z.output<typeof caseTable>;
+export type FinGroup = z.output<typeof finGroup>;
+
+/** JSON Schema (2020-12) of a case file, for completion and checks in editors. */
+export function caseSchema(): object {
+  return z.toJSONSchema(caseTable, { io: 'input' });
+}
