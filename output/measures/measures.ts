@@ -1,6 +1,7 @@
 import type { Recording, WallSide } from '../../cases/index.ts';
 import { type ElementRow, elementRows } from './elements.ts';
 import { type Histogram, shearHistogram } from './histogram.ts';
+import { type LoopMeasures, loopMeasures } from './loop.ts';
 import { type ShearStatistics, shearStatistics } from './shear.ts';
 import { layWall } from './surface.ts';
 import { type Swept, sweptFraction, sweptTogether, windowSamples } from './swept.ts';
@@ -15,6 +16,8 @@ export interface Measures {
   walls: Record<WallSide, WallMeasures>;
   /** the walls that carry a membrane, as one surface */
   together: Swept;
+  /** gas and liquid going round */
+  loop: LoopMeasures;
   /** one row per element, left wall first; bands included */
   elements: ElementRow[];
   /** what a reader must know about these numbers */
@@ -48,6 +51,7 @@ export function measure(recording: Recording): Measures {
     swept: { above_Pa: asked.above_Pa, within_s: asked.within_s },
     walls,
     together: sweptTogether(membranes.map((side) => walls[side].swept)),
+    loop: loopMeasures(recording),
     elements: [...elementRows(recording, 'left'), ...elementRows(recording, 'right')],
     notes: notes(recording, walls),
   };

@@ -3,7 +3,7 @@ import type { Bin } from '../measures/histogram.ts';
 import type { Measures } from '../measures/measures.ts';
 import { drawAxes, drawTitle, type Plot, ROOM } from './axes.ts';
 import { Canvas, type Colour, INK, PALE_INK } from './canvas.ts';
-import { roundAbove, ticks, tickText } from './ticks.ts';
+import { ticks, tickText } from './ticks.ts';
 
 const WIDTH = 760;
 const PANEL_HEIGHT = 250;

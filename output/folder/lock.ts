@@ -1,0 +1,68 @@
+import { hostname } from 'node:os';
+import { join } from 'node:path';
+import { setTimeout as pause } from 'node:timers/promises';
+import { lock } from 'proper-lockfile';
+import { OutputError } from '../../solver/index.ts';
+import { codeOf, outputError } from './files.ts';
+
+export const LOCK_NAME = 'run.lock';
+/** A lock that its holder has not renewed for so long is free: the holder was killed. */
+const STALE_MS = 5000;
+/** Renewed so often. */
+const RENEW_MS = 1000;
+/** Between looks at the lock of a process that is gone. */
+const LOOK_MS = 200;
+
+/** A held run folder. */
+export interface Hold {
+  /** set when another process has taken the folder, which it can only where this one stood still for long */
+  lost: boolean;
+  release(): Promise<void>;
+}
+
+/**
+ * Takes a folder for this process. The lock of a process that was killed is waited for (it runs out within {@link STALE_MS}); that of a
+ * living one is refused at once.
+ * @param last who wrote there last, as run.json says
+ * @throws OutputError held by another process
+ */
+export async function takeFolder(folder: string, last: { pid: number; host: string } | undefined): Promise<Hold> {
+  const hold: Hold = { lost: false, release: async () => {} };
+  const patience = Date.now() + STALE_MS + 5 * LOOK_MS;
+  for (;;) {
+    try {
+      const release = await lock(folder, {
+        lockfilePath: join(folder, LOCK_NAME),
+        stale: STALE_MS,
+        update: RENEW_MS,
+        onCompromised: () => {
+          hold.lost = true;
+        },
+      });
+      hold.release = async () => {
+        if (!hold.lost) await release();
+      };
+      return hold;
+    } catch (error) {
+      if (codeOf(error) !== 'ELOCKED') throw outputError(folder, 'locking the folder', error);
+      if ((last !== undefined && mayLive(last)) || Date.now() > patience) throw heldError(folder, last, error);
+      await pause(LOOK_MS);
+    }
+  }
+}
+
+function heldError(folder: string, last: { pid: number; host: string } | undefined, cause: unknown): OutputError {
+  const who = last === undefined ? 'another process' : `another process (${last.pid} on ${last.host})`;
+  return new OutputError(folder, `${folder}: ${who} is writing there; wait for it to end, or choose another folder.`, { cause });
+}
+
+/** False only where it is certain that the process is gone. */
+function mayLive({ pid, host }: { pid: number; host: string }): boolean {
+  if (host !== hostname()) return true;
+  try {
+    process.kill(pid, 0);
+    return true;
+  } catch (error) {
+    return codeOf(error) !== 'ESRCH';
+  }
+}
