@@ -6,8 +6,11 @@ import { OutputError } from '../../solver/index.ts';
 import { codeOf, outputError } from './files.ts';
 
 export const LOCK_NAME = 'run.lock';
-/** A lock that its holder has not renewed for so long is free: the holder was killed. */
-const STALE_MS = 5000;
+/**
+ * A lock that its holder has not renewed for so long is free. Short where the holder is known to be gone; long where it may only stand
+ * still, busy with one long computation; between the two where nobody has signed yet.
+ */
+const STALE_MS = { gone: 2000, unknown: 5000, mayLive: 30_000 };
 /** Renewed so often. */
 const RENEW_MS = 1000;
 /** Between looks at the lock of a process that is gone. */
@@ -21,19 +24,21 @@ export interface Hold {
 }
 
 /**
- * Takes a folder for this process. The lock of a process that was killed is waited for (it runs out within {@link STALE_MS}); that of a
+ * Takes a folder for this process. The lock of a process that was killed is waited for (it runs out within two seconds); that of a
  * living one is refused at once.
  * @param last who wrote there last, as run.json says
  * @throws OutputError held by another process
  */
 export async function takeFolder(folder: string, last: { pid: number; host: string } | undefined): Promise<Hold> {
   const hold: Hold = { lost: false, release: async () => {} };
-  const patience = Date.now() + STALE_MS + 5 * LOOK_MS;
+  const holder = last === undefined ? 'unknown' : mayLive(last) ? 'mayLive' : 'gone';
+  const stale = STALE_MS[holder];
+  const patience = Date.now() + stale + 5 * LOOK_MS;
   for (;;) {
     try {
       const release = await lock(folder, {
         lockfilePath: join(folder, LOCK_NAME),
-        stale: STALE_MS,
+        stale,
         update: RENEW_MS,
         onCompromised: () => {
           hold.lost = true;
@@ -45,7 +50,7 @@ export async function takeFolder(folder: string, last: { pid: number; host: stri
       return hold;
     } catch (error) {
       if (codeOf(error) !== 'ELOCKED') throw outputError(folder, 'locking the folder', error);
-      if ((last !== undefined && mayLive(last)) || Date.now() > patience) throw heldError(folder, last, error);
+      if (holder === 'mayLive' || Date.now() > patience) throw heldError(folder, last, error);
       await pause(LOOK_MS);
     }
   }
