@@ -29,8 +29,11 @@ export interface Box {
   gravityX: number;
   gravityY: number;
   drive: Drive | undefined;
-  /** s / (1 - s) of the skimmed share s, per x; shape (nx) */
+  /** skimmed share per step and x; shape (nx) */
   skim: Float64Array;
+  /** 1 / (gas speed limit)^2 */
+  gasLimit: number;
+  damping: number;
   speedLimit: number;
   geometry: Geometry;
 }
@@ -41,6 +44,9 @@ const fail = (what: string): never => {
 
 const positive = (name: string, value: number): number =>
   value > 0 && Number.isFinite(value) ? value : fail(`${name} is ${value}; it must be positive and finite`);
+
+const positiveOrInfinite = (name: string, value: number): number =>
+  value > 0 ? value : fail(`${name} is ${value}; it must be positive (Infinity for none)`);
 
 const finite = (name: string, value: number): number => (Number.isFinite(value) ? value : fail(`${name} is ${value}; it must be finite`));
 
@@ -85,14 +91,16 @@ export function resolve(setup: Setup): Box {
     gravityX: buoyancy * finite('gravity.x', setup.gravity?.x ?? 0),
     gravityY: buoyancy * finite('gravity.y', setup.gravity?.y ?? 0),
     drive: setup.drive,
-    skim: Float64Array.from({ length: nx }, (_, x) => skimRatio(setup.skim?.[x] ?? 0)),
+    skim: Float64Array.from({ length: nx }, (_, x) => share(setup.skim?.[x] ?? 0)),
+    gasLimit: 1 / positiveOrInfinite('gasSpeedLimit', setup.gasSpeedLimit ?? 0.15) ** 2,
+    damping: finite('damping', setup.damping ?? 0.005),
     speedLimit: positive('speedLimit', setup.speedLimit ?? 0.4),
     geometry: geometry(setup),
   };
 }
 
-function skimRatio(share: number): number {
-  return share >= 0 && share < 1 ? share / (1 - share) : fail(`skim holds ${share}; a share lies in 0 to 1`);
+function share(value: number): number {
+  return value >= 0 && value < 1 ? value : fail(`skim holds ${value}; a share lies in 0 to 1`);
 }
 
 function checkPair(nameA: string, a: Side, nameB: string, b: Side): void {

@@ -90,10 +90,16 @@ export class Compiled implements Simulation {
       row[k * this.map.stride + x] = f[k];
       row[(Q + k) * this.map.stride + x] = g[k];
     }
-    this.phi.set(x, y, phi);
-    this.ux.set(x, y, ux);
-    this.uy.set(x, y, uy);
-    this.pressure.set(x, y, p);
+    const { header } = this.map;
+    const at = y * header[H.STRIDE] + x * this.map.bytesPerNumber;
+    const set = (entry: number, value: number): void => {
+      numbers(this.map, header[entry] + at, 1)[0] = value;
+    };
+    set(H.AT_PHI, phi);
+    set(H.AT_Z, phi - 1);
+    for (const entry of [H.AT_UX, H.AT_UX_BEFORE]) set(entry, ux);
+    for (const entry of [H.AT_UY, H.AT_UY_BEFORE]) set(entry, uy);
+    set(H.AT_P, p);
   }
 
   advance(steps: number, sampleEvery = 0): Status {

@@ -1,7 +1,7 @@
 // The header of the kernel's memory: one f64 per entry, at byte 8 * entry. Literals only, compiled by both compilers.
 
 /** checked by the host against the kernel's own copy when it is loaded */
-export const VERSION = 1;
+export const VERSION = 2;
 /** bytes kept for the header */
 export const HEADER_BYTES = 1024;
 
@@ -16,15 +16,16 @@ export const TWO_PHASE = 4;
 
 // ---- addresses of cell (0, 0); of the first entry of a list
 export const AT_POPULATIONS = 5;
-export const AT_PHI = 6;
+/** z = phi - 1, with ghosts */
+export const AT_Z = 6;
 export const AT_UX = 7;
 export const AT_UY = 8;
 export const AT_P = 9;
-/** viscous shear stress of the rows next to the walls, at sample steps */
+/** viscous shear stress of the rows next to the walls: two fields, of odd and of even steps */
 export const AT_TAU = 10;
 /** 1 fluid, 0 solid or padding */
 export const AT_MASK = 11;
-/** s / (1 - s) per x */
+/** skimmed share per x */
 export const AT_SKIM = 12;
 /** four rows: first and second cell of the left wall, first and second of the right */
 export const AT_WEIGHTS = 13;
@@ -41,6 +42,10 @@ export const GHOSTS = 19;
 export const AT_SAMPLES = 20;
 /** samples in the buffer */
 export const SAMPLES = 21;
+/** phi, ux and uy of the last step and ux, uy one step before; phi and p are written in the last step of a call */
+export const AT_PHI = 22;
+export const AT_UX_BEFORE = 23;
+export const AT_UY_BEFORE = 48;
 
 // ---- sides: 0 periodic, 1 wall, 2 slip; speed of a moving wall
 export const SIDE_LEFT = 24;
@@ -70,6 +75,11 @@ export const SPEED_LIMIT = 45;
 /** 0 none, 1 loss, 2 upflow; the coefficient or the target */
 export const DRIVE_KIND = 46;
 export const DRIVE_VALUE = 47;
+/** 1 / (gas speed limit)^2 */
+export const GAS_LIMIT = 49;
+export const DAMPING = 50;
+/** mobility M */
+export const MOBILITY = 51;
 
 // ---- state
 export const STEP = 64;

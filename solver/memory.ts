@@ -7,6 +7,8 @@ const FIRST = 131072;
 /** room for samples between two hand-overs */
 const SAMPLE_BYTES = 4 << 20;
 
+const FIELDS = [H.AT_PHI, H.AT_UX, H.AT_UY, H.AT_UX_BEFORE, H.AT_UY_BEFORE, H.AT_P, H.AT_MASK];
+
 /** What the host knows of the kernel's memory beside the header. */
 export interface MemoryMap {
   memory: WebAssembly.Memory;
@@ -41,8 +43,9 @@ export function layMemory(box: Box): MemoryMap {
   const neighbours = geometry.ghosts.reduce((n, ghost) => n + ghost.neighbours.length, 0);
   const entries: [number, number][] = [
     [H.AT_POPULATIONS, take(ring * 18 * strideBytes) + 16],
-    [H.AT_PHI, take((ny + 2) * strideBytes) + 16 + strideBytes],
-    ...[H.AT_UX, H.AT_UY, H.AT_P, H.AT_TAU, H.AT_MASK].map((at): [number, number] => [at, take(ny * strideBytes) + 16]),
+    [H.AT_Z, take((ny + 2) * strideBytes) + 16 + strideBytes],
+    ...FIELDS.map((at): [number, number] => [at, take(ny * strideBytes) + 16]),
+    [H.AT_TAU, take(2 * ny * strideBytes) + 16],
     [H.AT_SKIM, take(strideBytes)],
     [H.AT_WEIGHTS, take(4 * strideBytes)],
     [H.AT_LINKS, take(20 * geometry.links.length)],
@@ -89,6 +92,9 @@ function writeNumbers(box: Box, header: Float64Array): void {
   header[H.GRAVITY_X] = box.gravityX;
   header[H.GRAVITY_Y] = box.gravityY;
   header[H.SPEED_LIMIT] = box.speedLimit;
+  header[H.GAS_LIMIT] = box.gasLimit;
+  header[H.DAMPING] = box.damping;
+  header[H.MOBILITY] = box.mobility;
   header[H.DRIVE_KIND] = box.drive === undefined ? 0 : box.drive.kind === 'loss' ? 1 : 2;
   header[H.DRIVE_VALUE] = box.drive === undefined ? 0 : box.drive.kind === 'loss' ? box.drive.coefficient : box.drive.target;
 }

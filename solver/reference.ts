@@ -6,7 +6,7 @@
  * 3. `cell`: gradients of phi, forces, velocity, pressure, wall stress; then both collisions (collide.ts).
  *
  * Layout: fields of shape (ny + 2, nx + 2), row-major, a ghost ring of one; populations one such field per direction,
- * after collision, f as it is (it sums to about 0), g less w/2.
+ * after collision, f as it is (it sums to about 0), g less w: both are deviations, which f32 keeps to more digits.
  */
 import ndarray from 'ndarray';
 import { type Box, driveForce, resolve, wallSpeed } from './box.ts';
@@ -32,9 +32,9 @@ export class Reference implements Simulation {
   private g: Float64Array[];
   private fNext: Float64Array[];
   private gNext: Float64Array[];
-  private readonly fields: Record<'phi' | 'ux' | 'uy' | 'p', Float64Array>;
-  /** wall stress of the first and second row at either wall; shape (4, nx) */
-  private readonly stress: Float64Array[];
+  private readonly fields: Record<'phi' | 'ux' | 'uy' | 'p' | 'ux2' | 'uy2', Float64Array>;
+  /** stress of the first and second row at either wall, of this step and the one before; shape (8, nx) */
+  private stress: Float64Array[];
   private readonly recorder: Recorder;
   private readonly cell: Cell = newCell();
   /** drive force now, mean ux now and one step ago, gas area, gas skimmed */
@@ -52,8 +52,8 @@ export class Reference implements Simulation {
     this.g = populations();
     this.fNext = populations();
     this.gNext = populations();
-    this.fields = { phi: field(), ux: field(), uy: field(), p: field() };
-    this.stress = Array.from({ length: 4 }, () => new Float64Array(nx));
+    this.fields = { phi: field(), ux: field(), uy: field(), p: field(), ux2: field(), uy2: field() };
+    this.stress = Array.from({ length: 8 }, () => new Float64Array(nx));
     this.recorder = new Recorder(nx);
     const view = (data: Float64Array): Field => ndarray(data, [nx, ny], [1, this.S], this.S + 1);
     this.phi = view(this.fields.phi);
@@ -89,8 +89,8 @@ export class Reference implements Simulation {
       this.g[k][i] = state.g[k];
     }
     this.fields.phi[i] = phi;
-    this.fields.ux[i] = ux;
-    this.fields.uy[i] = uy;
+    this.fields.ux[i] = this.fields.ux2[i] = ux;
+    this.fields.uy[i] = this.fields.uy2[i] = uy;
     this.fields.p[i] = p;
   }
 
@@ -179,13 +179,12 @@ export class Reference implements Simulation {
     for (let y = 0; y < ny; y++) {
       for (let x = 0; x < nx; x++) {
         const i = this.at(x, y);
-        let sum = 0.5;
-        for (let k = 0; k < Q; k++) sum += this.g[k][i - ey[k] * this.S - ex[k]];
-        const left = (1 - sum) / (1 + skim[x]);
-        phi[i] = 1 - left;
+        let z = 0;
+        for (let k = 0; k < Q; k++) z += this.g[k][i - ey[k] * this.S - ex[k]];
+        phi[i] = 1 + z;
         if (geometry.fluid[y * nx + x] === 0) continue;
-        gas += left;
-        skimmed += left * skim[x];
+        gas -= z;
+        skimmed -= z * skim[x];
       }
     }
     this.totalsNow[3] = gas;
@@ -196,8 +195,9 @@ export class Reference implements Simulation {
   /** phi at a wall whose first cell holds `phi`, from d(phi)/dn = -(4/W) cos(theta) phi (1 - phi), and the ghost beyond it. */
   private wettedGhost(phi: number): number {
     const c = this.box.wetting;
-    const wall = (4 * phi) / (2 - c + Math.sqrt(Math.max((2 - c) * (2 - c) + 8 * c * phi, 0)));
-    return 2 * wall - phi;
+    const inside = Math.min(Math.max(phi, 0), 1);
+    const wall = (4 * inside) / (2 - c + Math.sqrt((2 - c) * (2 - c) + 8 * c * inside));
+    return phi + 2 * (wall - inside);
   }
 
   private fillPhiGhosts(): void {
@@ -227,6 +227,7 @@ export class Reference implements Simulation {
     const { nx, ny, geometry, speedLimit } = this.box;
     const { f, g, S, cell, fields } = this;
     let sumUx = 0;
+    this.stress = [...this.stress.slice(4), ...this.stress.slice(0, 4)];
     let bad: Status | undefined;
     for (let y = 0; y < ny; y++) {
       for (let x = 0; x < nx; x++) {
@@ -242,6 +243,10 @@ export class Reference implements Simulation {
         }
         if (this.box.twoPhase) this.gradients(i);
         cell.driveX = this.totalsNow[0];
+        cell.ux1 = fields.ux[i];
+        cell.uy1 = fields.uy[i];
+        cell.ux2 = fields.ux2[i];
+        cell.uy2 = fields.uy2[i];
         cell.skim = this.box.skim[x];
         collideFlow(this.box, cell);
         if (this.box.twoPhase) collideInterface(this.box, cell);
@@ -249,6 +254,8 @@ export class Reference implements Simulation {
           this.fNext[k][i] = cell.f[k];
           this.gNext[k][i] = cell.g[k];
         }
+        fields.ux2[i] = cell.ux1;
+        fields.uy2[i] = cell.uy1;
         fields.ux[i] = cell.ux;
         fields.uy[i] = cell.uy;
         fields.p[i] = cell.p;
@@ -288,10 +295,13 @@ export class Reference implements Simulation {
     const { phi } = this.fields;
     const [a0, a1] = geometry.wallWeights.left;
     const [b0, b1] = geometry.wallWeights.right;
+    // of two steps: what changes sign from one to the next is of the lattice, not of the flow
+    const mean = (row: number, x: number) =>
+      this.step === 1 ? this.stress[row][x] : 0.5 * (this.stress[row][x] + this.stress[row + 4][x]);
     const row = this.recorder.next(this.step, this.totalsNow[1], this.totalsNow[3], this.totalsNow[4]);
     for (let x = 0; x < nx; x++) {
-      row.shearLeft[x] = a0[x] * this.stress[0][x] + a1[x] * this.stress[1][x];
-      row.shearRight[x] = -(b0[x] * this.stress[2][x] + b1[x] * this.stress[3][x]);
+      row.shearLeft[x] = a0[x] * mean(0, x) + a1[x] * mean(1, x);
+      row.shearRight[x] = -(b0[x] * mean(2, x) + b1[x] * mean(3, x));
       row.phiLeft[x] = (phi[this.at(x, 0)] + phi[this.at(x, -1)]) / 2;
       row.phiRight[x] = (phi[this.at(x, ny - 1)] + phi[this.at(x, ny)]) / 2;
     }
@@ -317,7 +327,7 @@ export class Reference implements Simulation {
 
   /** Everything a step reads, in one order. */
   private arrays(): Float64Array[] {
-    return [this.totalsNow, ...this.f, ...this.g, ...Object.values(this.fields)];
+    return [this.totalsNow, ...this.f, ...this.g, ...Object.values(this.fields), ...this.stress];
   }
 
   save(): Uint8Array {

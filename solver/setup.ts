@@ -52,7 +52,7 @@ export interface Setup {
   /** force per volume on all cells */
   force?: Vector;
   drive?: Drive;
-  /** share of the gas taken out in one step, per x; shape (nx) */
+  /** share of the gas taken out in each step, per x; shape (nx) */
   skim?: Float64Array;
   /** state at the start as functions of the cell's centre; phi 1, at rest, p 0 by default */
   initial?: {
@@ -60,6 +60,10 @@ export interface Setup {
     velocity?: (x: number, y: number) => Vector;
     pressure?: (x: number, y: number) => number;
   };
+  /** speed above which gas, and gas alone, is held back smoothly; 0.15 by default, Infinity for none */
+  gasSpeedLimit?: number;
+  /** damping of velocities that change sign from step to step; 0.005 by default, in boxes with gas */
+  damping?: number;
   /** speed at which a run is stopped as too fast; 0.4 by default */
   speedLimit?: number;
   /** f32 by default; f64 serves validation */

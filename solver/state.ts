@@ -2,7 +2,7 @@ import type { Box } from './box.ts';
 import { fromMoments } from './collide.ts';
 import { CS2 } from './constants.ts';
 
-/** Equilibrium populations of a cell: f, and g less w/2. */
+/** Equilibrium populations of a cell: f, and g less w. */
 export function equilibriumState(box: Box, phi: number, ux: number, uy: number, p: number): { f: Float64Array; g: Float64Array } {
   const rho = box.rhoGas + phi * (box.rhoLiquid - box.rhoGas);
   const u2 = ux * ux + uy * uy;
@@ -10,9 +10,9 @@ export function equilibriumState(box: Box, phi: number, ux: number, uy: number, 
   const g = new Float64Array(9);
   const [jx, jy] = [rho * ux, rho * uy];
   fromMoments(f, 0, jx, jy, p + jx * ux, p + jy * uy, jx * uy, CS2 * jy, CS2 * jx, CS2 * (p + rho * u2));
-  const less = phi - 0.5;
+  const z = phi - 1;
   const [kx, ky] = [phi * ux, phi * uy];
-  fromMoments(g, less, kx, ky, CS2 * less + kx * ux, CS2 * less + ky * uy, kx * uy, CS2 * ky, CS2 * kx, CS2 * (CS2 * less + phi * u2));
+  fromMoments(g, z, kx, ky, CS2 * z + kx * ux, CS2 * z + ky * uy, kx * uy, CS2 * ky, CS2 * kx, CS2 * (CS2 * z + phi * u2));
   return { f, g };
 }
 

@@ -1,7 +1,7 @@
 // The flow collision of one row of a box that holds liquid alone: flow.ts with phi = 1 and no gradients.
-// Reads f of rows y - 1, y, y + 1 and mask; writes f over row y - 2, and on demand ux, uy, p and tau.
+// Reads f of rows y - 1, y, y + 1 and mask; writes f over row y - 2, ux and uy, and on demand p and tau.
 import * as H from '../header';
-import { entry, fieldRow, nx, row, stride } from './rows';
+import { entry, fieldRow, nx, row, stride, tauRow } from './rows';
 import { add, get, largest, mad, max, mul, nmad, put, splat, sub, total } from './vector';
 import { FIELDS, STRESS } from './flow';
 
@@ -26,7 +26,7 @@ export function bulkRow<T>(y: i32, flags: i32): void {
   const uxOut = fieldRow(H.AT_UX, y);
   const uyOut = fieldRow(H.AT_UY, y);
   const pOut = fieldRow(H.AT_P, y);
-  const tauOut = fieldRow(H.AT_TAU, y);
+  const tauOut = tauRow(y);
 
   const density = entry(H.RHO_LIQUID);
   const omegaNumber = 1 / (3 / (density * entry(H.FLUIDITY_LIQUID)) + 0.5);
@@ -111,11 +111,9 @@ export function bulkRow<T>(y: i32, flags: i32): void {
     const odd68 = mul<T>(quarter, sub<T>(q12, q21));
     put(outF + 6 * stride, sub<T>(even68, odd68));
     put(outF + 8 * stride, add<T>(even68, odd68));
-    if (flags & FIELDS) {
-      put(uxOut + i, ux);
-      put(uyOut + i, uy);
-      put(pOut + i, p);
-    }
+    put(uxOut + i, ux);
+    put(uyOut + i, uy);
+    if (flags & FIELDS) put(pOut + i, p);
     if (flags & STRESS) put(tauOut + i, mul<T>(toStress, n11));
     i += 16;
   } while (i < end);

@@ -1,10 +1,11 @@
 // Both collisions of one row, f and g: the formulas of collide.ts, whose text explains them, in lanes along x.
 // Form of the flow equation: momentum-based (Liang et al. 2018, Phys. Rev. E 97, 033309; from memory). It lives here alone.
-// Reads f and g of rows y - 1, y, y + 1, phi and its ghosts, mask, skim; writes f and g over row y - 2, and on demand ux, uy, p
-// (flag FIELDS) and tau (flag STRESS). Leaves the sum of ux and the largest u^2 of the row in `sumUx`, `topU2`.
+// Reads f and g of rows y - 1, y, y + 1, z and its ghosts, mask, skim, the velocities of the last two steps; writes f and g over
+// row y - 2, ux and uy, on demand phi and p (flag FIELDS) and tau (flag STRESS). Leaves the sum of ux and the largest u^2 of the
+// row in `sumUx`, `topU2`.
 import * as H from '../header';
-import { address, entry, fieldRow, nx, phiRow, row, stride } from './rows';
-import { add, div, get, largest, mad, max, mul, nmad, put, root, splat, sub, total } from './vector';
+import { address, entry, fieldRow, nx, row, stride, tauRow, zRow } from './rows';
+import { add, div, get, largest, mad, max, min, mul, nmad, put, root, splat, sub, total } from './vector';
 
 export const FIELDS: i32 = 1;
 export const STRESS: i32 = 2;
@@ -27,15 +28,18 @@ export function collideRow<T>(y: i32, flags: i32): void {
   const f8 = north + 8 * stride - size;
   const toG = 9 * stride;
   const out = row(y - 2);
-  const phiS = phiRow(y - 1);
-  const phiC = phiRow(y);
-  const phiN = phiRow(y + 1);
+  const zS = zRow(y - 1);
+  const zC = zRow(y);
+  const zN = zRow(y + 1);
   const mask = fieldRow(H.AT_MASK, y);
   const skim = address(H.AT_SKIM);
-  const uxOut = fieldRow(H.AT_UX, y);
-  const uyOut = fieldRow(H.AT_UY, y);
+  const uxAt = fieldRow(H.AT_UX, y);
+  const uyAt = fieldRow(H.AT_UY, y);
+  const uxBefore = fieldRow(H.AT_UX_BEFORE, y);
+  const uyBefore = fieldRow(H.AT_UY_BEFORE, y);
+  const phiOut = fieldRow(H.AT_PHI, y);
   const pOut = fieldRow(H.AT_P, y);
-  const tauOut = fieldRow(H.AT_TAU, y);
+  const tauOut = tauRow(y);
 
   const drho = entry(H.RHO_LIQUID) - entry(H.RHO_GAS);
   const omegaPhi = entry(H.OMEGA_PHI);
@@ -57,7 +61,11 @@ export function collideRow<T>(y: i32, flags: i32): void {
   const heavyX = splat<T>(drho * entry(H.GRAVITY_X));
   const heavyY = splat<T>(drho * entry(H.GRAVITY_Y));
   const keepPhi = splat<T>(1 - omegaPhi);
-  const sharp = splat<T>(((1 - 0.5 * omegaPhi) * 4) / (3 * entry(H.WIDTH)));
+  const slope = splat<T>(4 / entry(H.WIDTH));
+  const sharp = splat<T>((1 - 0.5 * omegaPhi) / 3);
+  const diffusion = splat<T>(drho * entry(H.MOBILITY));
+  const damping = splat<T>(entry(H.DAMPING));
+  const gasLimit = splat<T>(entry(H.GAS_LIMIT));
   const three = splat<T>(3);
   const tiny = splat<T>(1e-12);
   let sum = zero;
@@ -67,31 +75,32 @@ export function collideRow<T>(y: i32, flags: i32): void {
   let i: usize = 0;
   do {
     // phi and its derivatives
-    const phi = get(phiC + i);
-    const pE = get(phiC + i + size);
-    const pW = get(phiC + i - size);
-    const pN = get(phiN + i);
-    const pS = get(phiS + i);
-    const pNE = get(phiN + i + size);
-    const pNW = get(phiN + i - size);
-    const pSE = get(phiS + i + size);
-    const pSW = get(phiS + i - size);
-    const slopeA = sub<T>(pNE, pSW);
-    const slopeB = sub<T>(pSE, pNW);
-    const phiX = mad<T>(sub<T>(pE, pW), third, mul<T>(add<T>(slopeA, slopeB), twelfth));
-    const phiY = mad<T>(sub<T>(pN, pS), third, mul<T>(sub<T>(slopeA, slopeB), twelfth));
-    const axes = add<T>(add<T>(pE, pW), add<T>(pN, pS));
-    const corners = add<T>(add<T>(pNE, pSW), add<T>(pSE, pNW));
-    const lap6 = add<T>(mul<T>(splat<T>(4), axes), nmad<T>(splat<T>(20), phi, corners));
-    const gas = sub<T>(one, phi);
-    const well = mul<T>(phi, gas);
+    const z = get(zC + i);
+    const zE = get(zC + i + size);
+    const zW = get(zC + i - size);
+    const zNorth = get(zN + i);
+    const zSouth = get(zS + i);
+    const zNE = get(zN + i + size);
+    const zNW = get(zN + i - size);
+    const zSE = get(zS + i + size);
+    const zSW = get(zS + i - size);
+    const slopeA = sub<T>(zNE, zSW);
+    const slopeB = sub<T>(zSE, zNW);
+    const phiX = mad<T>(sub<T>(zE, zW), third, mul<T>(add<T>(slopeA, slopeB), twelfth));
+    const phiY = mad<T>(sub<T>(zNorth, zSouth), third, mul<T>(sub<T>(slopeA, slopeB), twelfth));
+    const axes = add<T>(add<T>(zE, zW), add<T>(zNorth, zSouth));
+    const corners = add<T>(add<T>(zNE, zSW), add<T>(zSE, zNW));
+    const lap6 = add<T>(mul<T>(splat<T>(4), axes), nmad<T>(splat<T>(20), z, corners));
+    const phi = add<T>(one, z);
+    const inside = min<T>(max<T>(phi, zero), one);
+    const gas = sub<T>(one, inside);
+    const well = mul<T>(inside, gas);
 
     // density, forces
-    const rho = mad<T>(phi, dRho, rhoGas);
-    const rhoBefore = nmad<T>(mul<T>(dRho, gas), get(skim + i), rho);
+    const rho = mad<T>(inside, dRho, rhoGas);
     const rhoX = mul<T>(dRho, phiX);
     const rhoY = mul<T>(dRho, phiY);
-    const mu = sub<T>(mul<T>(mul<T>(beta4, well), sub<T>(half, phi)), mul<T>(kappaSixth, lap6));
+    const mu = sub<T>(mul<T>(mul<T>(beta4, mul<T>(phi, z)), sub<T>(phi, half)), mul<T>(kappaSixth, lap6));
     const Fx = mad<T>(mu, phiX, nmad<T>(gas, heavyX, forceX));
     const Fy = mad<T>(mu, phiY, nmad<T>(gas, heavyY, forceY));
 
@@ -115,63 +124,84 @@ export function collideRow<T>(y: i32, flags: i32): void {
     const y24 = add<T>(v2, v4);
     const diagonals = add<T>(b57, b86);
 
-    // one division for 1/rhoBefore, 1/(3 + fluid/2) and 1/|grad phi|; fluid = rho / eta
-    const fluid = mul<T>(rho, mad<T>(phi, dFluidity, fluidityGas));
+    // one division for 1/rho, 1/(3 + fluid/2) and 1/|grad phi|; fluid = rho / eta
+    const fluid = mul<T>(rho, mad<T>(inside, dFluidity, fluidityGas));
     const below = mad<T>(half, fluid, three);
     const steep = root<T>(mad<T>(phiX, phiX, mad<T>(phiY, phiY, tiny)));
     const steepBelow = mul<T>(steep, below);
-    const all = div<T>(one, mul<T>(rhoBefore, steepBelow));
+    const all = div<T>(one, mul<T>(rho, steepBelow));
     const lighter = mul<T>(all, steepBelow);
-    const shared = mul<T>(all, rhoBefore);
-    const flat = mul<T>(shared, below);
+    const shared = mul<T>(all, rho);
+    const sharpness = mul<T>(mul<T>(slope, well), mul<T>(shared, below));
     const omega = mul<T>(fluid, mul<T>(shared, steep));
 
+    // velocity: what arrives, damped, gas held back
     const live = mul<T>(lighter, get(mask + i));
-    const ux = mul<T>(mad<T>(half, Fx, m10), live);
-    const uy = mul<T>(mad<T>(half, Fy, m01), live);
-    const ux2 = mul<T>(ux, ux);
-    const uy2 = mul<T>(uy, uy);
-    const u2 = add<T>(ux2, uy2);
+    const ux1 = get(uxAt + i);
+    const uy1 = get(uyAt + i);
+    const uxRaw = mul<T>(mad<T>(half, Fx, m10), live);
+    const uyRaw = mul<T>(mad<T>(half, Fy, m01), live);
+    const bendX = add<T>(sub<T>(uxRaw, add<T>(ux1, ux1)), get(uxBefore + i));
+    const bendY = add<T>(sub<T>(uyRaw, add<T>(uy1, uy1)), get(uyBefore + i));
+    const uxDamped = nmad<T>(damping, bendX, uxRaw);
+    const uyDamped = nmad<T>(damping, bendY, uyRaw);
+    const excess = max<T>(sub<T>(mul<T>(mad<T>(uxDamped, uxDamped, mul<T>(uyDamped, uyDamped)), gasLimit), one), zero);
+    const held = div<T>(one, root<T>(mad<T>(gas, excess, one)));
+    const ux = mul<T>(uxDamped, held);
+    const uy = mul<T>(uyDamped, held);
+    put(uxBefore + i, ux1);
+    put(uyBefore + i, uy1);
+    put(uxAt + i, ux);
+    put(uyAt + i, uy);
+    const u2 = mad<T>(ux, ux, mul<T>(uy, uy));
     sum = add<T>(sum, ux);
     top = max<T>(top, u2);
 
     const uxRhoX = mul<T>(ux, rhoX);
     const uyRhoY = mul<T>(uy, rhoY);
-    const halfGrad = mul<T>(half, add<T>(uxRhoX, uyRhoY));
-    const rhoU2 = mul<T>(rho, u2);
+    const half00 = mul<T>(half, add<T>(uxRhoX, uyRhoY));
     const moving = add<T>(add<T>(x13, y24), diagonals);
-    const p = mul<T>(splat<T>(0.6), nmad<T>(twoThirds, rhoU2, add<T>(moving, halfGrad)));
+    const p = mul<T>(splat<T>(0.6), nmad<T>(mul<T>(twoThirds, rho), u2, add<T>(moving, half00)));
+
+    // mass flux; skimming makes liquid of gas
+    const skimmed = get(skim + i);
+    const rhoAfter = mad<T>(mul<T>(dRho, skimmed), gas, rho);
+    const jx = mul<T>(rhoAfter, ux);
+    const jy = mul<T>(rhoAfter, uy);
+    const diffusing = mul<T>(diffusion, sub<T>(one, sharpness));
+    const Jx = nmad<T>(diffusing, phiX, jx);
+    const Jy = nmad<T>(diffusing, phiY, jy);
 
     // shear moments
     const keep = sub<T>(one, omega);
     const half1 = nmad<T>(half, omega, one);
-    const jx = mul<T>(rho, ux);
-    const jy = mul<T>(rho, uy);
-    const xx = mul<T>(jx, ux);
-    const yy = mul<T>(jy, uy);
-    const e11 = mul<T>(jx, uy);
+    const xx = mul<T>(Jx, ux);
+    const yy = mul<T>(Jy, uy);
+    const eDiff = sub<T>(xx, yy);
+    const e11 = mul<T>(half, mad<T>(Jx, uy, mul<T>(Jy, ux)));
     const n11 = sub<T>(m11, e11);
     const s11 = mul<T>(third, mad<T>(ux, rhoY, mul<T>(uy, rhoX)));
     const d11 = mad<T>(keep, n11, mul<T>(half1, s11));
     const sDiff = mul<T>(twoThirds, sub<T>(uxRhoX, uyRhoY));
-    const dDiff = mad<T>(keep, sub<T>(sub<T>(x13, y24), sub<T>(xx, yy)), mul<T>(half1, sDiff));
-    const dTrace = mul<T>(splat<T>(4.0 / 3.0), halfGrad);
-    const d20 = mul<T>(half, add<T>(dTrace, dDiff));
-    const d02 = mul<T>(half, sub<T>(dTrace, dDiff));
+    const dDiff = mad<T>(keep, sub<T>(sub<T>(x13, y24), eDiff), mul<T>(half1, sDiff));
 
     // moments that leave
+    const trace = add<T>(add<T>(add<T>(p, p), add<T>(xx, yy)), mul<T>(splat<T>(4.0 / 3.0), half00));
+    const difference = add<T>(eDiff, dDiff);
     const q10 = mad<T>(half, Fx, jx);
     const q01 = mad<T>(half, Fy, jy);
-    const q20 = add<T>(add<T>(p, xx), d20);
-    const q02 = add<T>(add<T>(p, yy), d02);
+    const q20 = mul<T>(half, add<T>(trace, difference));
+    const q02 = mul<T>(half, sub<T>(trace, difference));
     const q11 = add<T>(e11, d11);
-    const twice11 = add<T>(d11, d11);
-    const q21 = mad<T>(third, q01, mad<T>(ux, twice11, mul<T>(uy, d20)));
-    const q12 = mad<T>(third, q10, mad<T>(uy, twice11, mul<T>(ux, d02)));
-    const q22 = mul<T>(third, add<T>(p, rhoU2));
+    const k11 = nmad<T>(half, s11, d11);
+    const twice11 = add<T>(k11, k11);
+    const k20 = mul<T>(half, nmad<T>(half, sDiff, dDiff));
+    const q21 = mad<T>(third, q01, mad<T>(ux, twice11, mul<T>(uy, k20)));
+    const q12 = mad<T>(third, q10, nmad<T>(ux, k20, mul<T>(uy, twice11)));
+    const q22 = mul<T>(third, add<T>(mad<T>(rhoAfter, u2, p), half00));
 
     const outF = out + i;
-    put(outF, sub<T>(add<T>(halfGrad, q22), add<T>(q20, q02)));
+    put(outF, sub<T>(add<T>(half00, q22), add<T>(q20, q02)));
     const evenX = mul<T>(half, sub<T>(q20, q22));
     const oddX = mul<T>(half, sub<T>(q10, q12));
     put(outF + stride, add<T>(evenX, oddX));
@@ -191,8 +221,7 @@ export function collideRow<T>(y: i32, flags: i32): void {
 
     if (flags != 0) {
       if (flags & FIELDS) {
-        put(uxOut + i, ux);
-        put(uyOut + i, uy);
+        put(phiOut + i, phi);
         put(pOut + i, p);
       }
       if (flags & STRESS) put(tauOut + i, mul<T>(sub<T>(zero, half1), mad<T>(half, s11, n11)));
@@ -207,33 +236,38 @@ export function collideRow<T>(y: i32, flags: i32): void {
     const c86 = sub<T>(w8, w6);
     const j10 = add<T>(sub<T>(get(f1 + toG + i), get(f3 + toG + i)), add<T>(c57, c86));
     const j01 = add<T>(sub<T>(get(f2 + toG + i), get(f4 + toG + i)), sub<T>(c57, c86));
-    const sharpen = mul<T>(mul<T>(sharp, well), flat);
-    const phiUx = mul<T>(phi, ux);
-    const phiUy = mul<T>(phi, uy);
-    const h10 = mad<T>(sharpen, phiX, mad<T>(keepPhi, sub<T>(j10, phiUx), phiUx));
-    const h01 = mad<T>(sharpen, phiY, mad<T>(keepPhi, sub<T>(j01, phiUy), phiUy));
-    const less = sub<T>(phi, half);
-    const lessThird = mul<T>(third, less);
-    const h20 = mad<T>(phiUx, ux, lessThird);
-    const h02 = mad<T>(phiUy, uy, lessThird);
-    const h11 = mul<T>(phiUx, uy);
-    const h22 = mul<T>(third, mad<T>(phi, u2, lessThird));
+    const zAfter = nmad<T>(z, skimmed, z);
+    const phiAfter = add<T>(one, zAfter);
+    const sharpen = mul<T>(sharp, sharpness);
+    const vx = mul<T>(phiAfter, ux);
+    const vy = mul<T>(phiAfter, uy);
+    const h10 = mad<T>(sharpen, phiX, mad<T>(keepPhi, sub<T>(j10, vx), vx));
+    const h01 = mad<T>(sharpen, phiY, mad<T>(keepPhi, sub<T>(j01, vy), vy));
+    const zThird = mul<T>(third, zAfter);
+    const vxx = mul<T>(vx, ux);
+    const vyy = mul<T>(vy, uy);
+    const h20 = add<T>(zThird, vxx);
+    const h02 = add<T>(zThird, vyy);
+    const h11 = mul<T>(vx, uy);
+    const h21 = mul<T>(third, vy);
+    const h12 = mul<T>(third, vx);
+    const h22 = mul<T>(third, add<T>(zThird, add<T>(vxx, vyy)));
     const outG = outF + toG;
-    put(outG, sub<T>(add<T>(less, h22), add<T>(h20, h02)));
+    put(outG, sub<T>(add<T>(zAfter, h22), add<T>(h20, h02)));
     const gEvenX = mul<T>(half, sub<T>(h20, h22));
-    const gOddX = mul<T>(third, h10);
+    const gOddX = mul<T>(half, sub<T>(h10, h12));
     put(outG + stride, add<T>(gEvenX, gOddX));
     put(outG + 3 * stride, sub<T>(gEvenX, gOddX));
     const gEvenY = mul<T>(half, sub<T>(h02, h22));
-    const gOddY = mul<T>(third, h01);
+    const gOddY = mul<T>(half, sub<T>(h01, h21));
     put(outG + 2 * stride, add<T>(gEvenY, gOddY));
     put(outG + 4 * stride, sub<T>(gEvenY, gOddY));
     const gEven57 = mul<T>(quarter, add<T>(h22, h11));
-    const gOdd57 = mul<T>(twelfth, add<T>(h10, h01));
+    const gOdd57 = mul<T>(quarter, add<T>(h12, h21));
     put(outG + 5 * stride, add<T>(gEven57, gOdd57));
     put(outG + 7 * stride, sub<T>(gEven57, gOdd57));
     const gEven68 = mul<T>(quarter, sub<T>(h22, h11));
-    const gOdd68 = mul<T>(twelfth, sub<T>(h10, h01));
+    const gOdd68 = mul<T>(quarter, sub<T>(h12, h21));
     put(outG + 6 * stride, sub<T>(gEven68, gOdd68));
     put(outG + 8 * stride, add<T>(gEven68, gOdd68));
     i += 16;

@@ -6,7 +6,7 @@
 // In a corner of two sides that are not periodic the diagonal goes straight back.
 import * as H from '../header';
 import { W1, W2 } from '../constants';
-import { address, entry, nx, ny, phiRow, row, stride } from './rows';
+import { address, entry, nx, ny, zRow, row, stride } from './rows';
 
 const PERIODIC: i32 = 0;
 const SLIP: i32 = 2;
@@ -106,7 +106,7 @@ function wrapRows<T>(first: i32, periodicX: bool): void {
 // @ts-ignore: decorator
 @inline function push<T>(first: i32, k: i32, along: i32, speed: f64, x: i32, y: i32): f64 {
   if (speed == 0 || first != 0) return 0;
-  const phi = <f64>load<T>(phiRow(y) + <usize>(x * <i32>sizeof<T>()));
+  const phi = 1 + <f64>load<T>(zRow(y) + <usize>(x * <i32>sizeof<T>()));
   const rho = entry(H.RHO_GAS) + phi * (entry(H.RHO_LIQUID) - entry(H.RHO_GAS));
   return 6 * (k < 5 ? W1 : W2) * rho * <f64>along * speed;
 }

@@ -5,7 +5,7 @@ import { bulkRow, bulkSumUx, bulkTopU2 } from './bulk';
 import { FIELDS, STRESS, collideRow, sumUx, topU2 } from './flow';
 import { clearSolids, fillGhosts } from './ghosts';
 import { phiPass } from './phi';
-import { address, bind, entry, fieldRow, nx, ny, phiRow, row, setEntry, turn } from './rows';
+import { address, bind, entry, fieldRow, nx, ny, row, setEntry, stride, turn, zRow } from './rows';
 
 export function version(): i32 { return H.VERSION; }
 /** Address of the populations of row y, for the host. */
@@ -13,7 +13,7 @@ export function populations(y: i32): usize { bind(); return row(y); }
 export function advance32(steps: i32, sampleEvery: i32): i32 { return advance<f32>(steps, sampleEvery); }
 export function advance64(steps: i32, sampleEvery: i32): i32 { return advance<f64>(steps, sampleEvery); }
 
-/** Does up to `steps` steps and returns the number done; ux, uy and p are written in the last one. */
+/** Does up to `steps` steps and returns the number done; phi and p are written in the last one. */
 function advance<T>(steps: i32, sampleEvery: i32): i32 {
   bind();
   const twoPhase = entry(H.TWO_PHASE) != 0;
@@ -28,7 +28,7 @@ function advance<T>(steps: i32, sampleEvery: i32): i32 {
     if (twoPhase) phiPass<T>();
     let total: f64 = 0;
     for (let y = 0; y < ny; y++) {
-      const flags = fields | (sampling && (y < 2 || y >= ny - 2) ? STRESS : 0);
+      const flags = fields | (y < 2 || y >= ny - 2 ? STRESS : 0);
       total += collide<T>(y, flags, twoPhase);
     }
     turn();
@@ -40,7 +40,7 @@ function advance<T>(steps: i32, sampleEvery: i32): i32 {
   return done;
 }
 
-/** One row; on a speed that is not below the limit, the row again with its velocities kept, to name the cell. */
+/** One row; a speed that is not below the limit names its cell. */
 function collide<T>(y: i32, flags: i32, twoPhase: bool): f64 {
   if (twoPhase) collideRow<T>(y, flags);
   else bulkRow<T>(y, flags);
@@ -48,8 +48,6 @@ function collide<T>(y: i32, flags: i32, twoPhase: bool): f64 {
   const top = twoPhase ? topU2 : bulkTopU2;
   const sum = twoPhase ? sumUx : bulkSumUx;
   if (top < limit * limit || entry(H.STATUS) != 0) return sum;
-  if (twoPhase) collideRow<T>(y, flags | FIELDS);
-  else bulkRow<T>(y, flags | FIELDS);
   for (let x = 0; x < nx; x++) {
     const ux = <f64>load<T>(fieldRow(H.AT_UX, y) + <usize>x * sizeof<T>());
     const uy = <f64>load<T>(fieldRow(H.AT_UY, y) + <usize>x * sizeof<T>());
@@ -89,24 +87,30 @@ function sample<T>(): void {
   wallPhi<T>(at + 32 + 3 * bytes, ny - 1, ny);
 }
 
-/** Shear on a wall: the two nearest rows of tau with the weights of geometry.ts, `weights` and the next row of them. */
+/**
+ * Shear on a wall: the two nearest rows of tau with the weights of geometry.ts, `weights` and the next row of them. Of this step
+ * and the one before, since what changes sign from one to the next is of the lattice, not of the flow.
+ */
 function wall<T>(to: usize, weights: i32, first: i32, second: i32, sign: f64): void {
   const a = fieldRow(H.AT_TAU, first);
   const b = fieldRow(H.AT_TAU, max<i32>(min<i32>(second, ny - 1), 0));
   const wa = fieldRow(H.AT_WEIGHTS, weights);
   const wb = fieldRow(H.AT_WEIGHTS, weights + 1);
+  const scale = entry(H.STEP) == 1 ? sign : 0.5 * sign;
   for (let x = 0; x < nx; x++) {
     const i = <usize>x * sizeof<T>();
-    const value = <f64>load<T>(wa + i) * <f64>load<T>(a + i) + <f64>load<T>(wb + i) * <f64>load<T>(b + i);
-    store<f32>(to + 4 * <usize>x, <f32>(sign * value));
+    store<f32>(to + 4 * <usize>x, <f32>(scale * (<f64>load<T>(wa + i) * both<T>(a + i) + <f64>load<T>(wb + i) * both<T>(b + i))));
   }
 }
 
+// @ts-ignore: decorator
+@inline function both<T>(at: usize): f64 { return <f64>load<T>(at) + <f64>load<T>(at + <usize>ny * stride); }
+
 function wallPhi<T>(to: usize, inside: i32, ghost: i32): void {
-  const a = phiRow(inside);
-  const b = phiRow(ghost);
+  const a = zRow(inside);
+  const b = zRow(ghost);
   for (let x = 0; x < nx; x++) {
     const i = <usize>x * sizeof<T>();
-    store<f32>(to + 4 * <usize>x, <f32>(0.5 * (<f64>load<T>(a + i) + <f64>load<T>(b + i))));
+    store<f32>(to + 4 * <usize>x, <f32>(1 + 0.5 * (<f64>load<T>(a + i) + <f64>load<T>(b + i))));
   }
 }

@@ -1,14 +1,13 @@
-// The interface variable of every cell, phi = 1/2 + sum of the g that arrive, the skimming of gas, and the ghosts of phi:
-//   skim:    1 - phi  ->  (1 - phi) / (1 + q),  q = s/(1 - s)
+// The interface variable of every cell as z = phi - 1, the sum of the g that arrive (each less its w), and its ghosts:
 //   wall:    d(phi)/dn = -(4/W) cos(theta) phi (1 - phi), n into the fluid, solved for the value on the wall
 //   solid:   the same from the weighted mean of its fluid neighbours
-// Reads g, writes phi and its ghost ring; adds to the gas area and the gas skimmed.
+// Reads g, mask, skim; writes z and its ghost ring; adds up the gas area and the gas that the collision will skim.
 import * as H from '../header';
-import { address, entry, fieldRow, nx, ny, phiRow, row, setEntry, stride } from './rows';
-import { add, div, get, mad, mul, put, splat, sub, total } from './vector';
+import { address, entry, fieldRow, nx, ny, row, setEntry, stride, zRow } from './rows';
+import { add, get, mad, mul, put, splat, total } from './vector';
 
 export function phiPass<T>(): void {
-  let gas: f64 = 0;
+  let less: f64 = 0;
   let skimmed: f64 = 0;
   for (let y = 0; y < ny; y++) {
     const size = sizeof<T>();
@@ -23,11 +22,9 @@ export function phiPass<T>(): void {
     const g6 = south + 6 * stride + size;
     const g7 = north + 7 * stride + size;
     const g8 = north + 8 * stride - size;
-    const phi = phiRow(y);
+    const out = zRow(y);
     const mask = fieldRow(H.AT_MASK, y);
     const skim = address(H.AT_SKIM);
-    const half = splat<T>(0.5);
-    const one = splat<T>(1);
     let gasLanes = splat<T>(0);
     let skimLanes = splat<T>(0);
     const end = <usize>nx * size;
@@ -35,27 +32,27 @@ export function phiPass<T>(): void {
     do {
       const axes = add<T>(add<T>(get(g1 + i), get(g3 + i)), add<T>(get(g2 + i), get(g4 + i)));
       const diagonals = add<T>(add<T>(get(g5 + i), get(g7 + i)), add<T>(get(g6 + i), get(g8 + i)));
-      const less = add<T>(add<T>(get(here + i), axes), diagonals);
-      const q = get(skim + i);
-      const left = div<T>(sub<T>(half, less), add<T>(one, q));
-      put(phi + i, sub<T>(one, left));
-      const counted = mul<T>(left, get(mask + i));
+      const z = add<T>(add<T>(get(here + i), axes), diagonals);
+      put(out + i, z);
+      const counted = mul<T>(z, get(mask + i));
       gasLanes = add<T>(gasLanes, counted);
-      skimLanes = mad<T>(counted, q, skimLanes);
+      skimLanes = mad<T>(counted, get(skim + i), skimLanes);
       i += 16;
     } while (i < end);
-    gas += total<T>(gasLanes);
+    less += total<T>(gasLanes);
     skimmed += total<T>(skimLanes);
   }
-  setEntry(H.GAS_AREA, gas);
-  setEntry(H.SKIMMED, entry(H.SKIMMED) + skimmed);
+  setEntry(H.GAS_AREA, -less);
+  setEntry(H.SKIMMED, entry(H.SKIMMED) - skimmed);
   fillPhiGhosts<T>();
 }
 
+/** z beyond a wall whose first cell holds `z`. */
 // @ts-ignore: decorator
-@inline function wettedGhost(phi: f64, c: f64): f64 {
-  const wall = (4 * phi) / (2 - c + Math.sqrt(Math.max((2 - c) * (2 - c) + 8 * c * phi, 0)));
-  return 2 * wall - phi;
+@inline function wettedGhost(z: f64, c: f64): f64 {
+  const inside = Math.min(Math.max(1 + z, 0), 1);
+  const wall = (4 * inside) / (2 - c + Math.sqrt((2 - c) * (2 - c) + 8 * c * inside));
+  return z + 2 * (wall - inside);
 }
 
 function fillPhiGhosts<T>(): void {
@@ -69,17 +66,17 @@ function fillPhiGhosts<T>(): void {
     ghost += 24;
     let mean: f64 = 0;
     for (let m = 0; m < neighbours; m++, ghost += 24) {
-      const at = phiRow(<i32>load<f64>(ghost, 8)) + <usize>(<i32>load<f64>(ghost) * size);
+      const at = zRow(<i32>load<f64>(ghost, 8)) + <usize>(<i32>load<f64>(ghost) * size);
       mean += load<f64>(ghost, 16) * <f64>load<T>(at);
     }
-    store<T>(phiRow(y) + <usize>(x * size), <T>wettedGhost(mean, c));
+    store<T>(zRow(y) + <usize>(x * size), <T>wettedGhost(mean, c));
   }
   ghostRow<T>(0, -1, ny - 1, <i32>entry(H.SIDE_LEFT), c);
   ghostRow<T>(ny - 1, ny, 0, <i32>entry(H.SIDE_RIGHT), c);
   const bottom = <i32>entry(H.SIDE_BOTTOM);
   const top = <i32>entry(H.SIDE_TOP);
   for (let y = -1; y <= ny; y++) {
-    const first = phiRow(y);
+    const first = zRow(y);
     const last = first + <usize>((nx - 1) * size);
     store<T>(first - size, beyond<T>(bottom, first, last, c));
     store<T>(last + size, beyond<T>(top, last, first, c));
@@ -94,9 +91,9 @@ function fillPhiGhosts<T>(): void {
 }
 
 function ghostRow<T>(inside: i32, ghost: i32, across: i32, side: i32, c: f64): void {
-  const from = phiRow(inside);
-  const far = phiRow(across);
-  const to = phiRow(ghost);
+  const from = zRow(inside);
+  const far = zRow(across);
+  const to = zRow(ghost);
   const end = <usize>nx * sizeof<T>();
   for (let i: usize = 0; i < end; i += sizeof<T>()) store<T>(to + i, beyond<T>(side, from + i, far + i, c));
 }

@@ -1,4 +1,4 @@
-// Where things lie in memory. The populations are a ring of ny + 3 rows; a row holds its 9 f and its 9 g (less w/2), each
+// Where things lie in memory. The populations are a ring of ny + 3 rows; a row holds its 9 f and its 9 g (less w), each
 // `stride` bytes long with x contiguous:
 //
 //   ring slot:   row -1 | row 0 | row 1 | ... | row ny | spare
@@ -21,7 +21,7 @@ export let stride: usize = 0;
 let ring: i32 = 0;
 let base: i32 = 0;
 let populations: usize = 0;
-let phi: usize = 0;
+let z: usize = 0;
 
 /** Takes over the sizes; to be called at the start of every call from the host. */
 export function bind(): void {
@@ -31,7 +31,7 @@ export function bind(): void {
   ring = <i32>entry(H.RING);
   base = <i32>entry(H.BASE);
   populations = address(H.AT_POPULATIONS);
-  phi = address(H.AT_PHI);
+  z = address(H.AT_Z);
 }
 
 /** f0 at (0, y), y from -2 (where row 0 of the next step goes) to ny. */
@@ -48,10 +48,13 @@ export function turn(): void {
   setEntry(H.BASE, <f64>base);
 }
 
-/** phi at (0, y), y from -1 to ny. */
+/** z = phi - 1 at (0, y), y from -1 to ny. */
 // @ts-ignore: decorator
-@inline export function phiRow(y: i32): usize { return phi + <usize>((y + 1) * <i32>stride) - stride; }
+@inline export function zRow(y: i32): usize { return z + <usize>((y + 1) * <i32>stride) - stride; }
 
 /** A field without ghost rows, at (0, y). */
 // @ts-ignore: decorator
 @inline export function fieldRow(at: i32, y: i32): usize { return address(at) + <usize>y * stride; }
+
+/** Stress at (0, y) of the running step; that of the step before lies in the other of the two fields. */
+export function tauRow(y: i32): usize { return fieldRow(H.AT_TAU, y) + (<i32>entry(H.STEP) & 1 ? <usize>ny * stride : 0); }
