@@ -88,7 +88,7 @@ function sizeFindings(panel: Case): PlacedFinding[] {
     const most = Math.floor(Math.sqrt((MOST_CELLS * panel.channel.gap_m) / panel.channel.height_m));
     found.push({ path: ['grid', 'across'], problem: `makes a grid of ${nx * ny} cells`, allowed: `at most ${most} for this channel` });
   }
-  if ((span / sampleEvery) * nx > MOST_WALL_VALUES) {
+  if (found.length === 0 && (span / sampleEvery) * nx > MOST_WALL_VALUES) {
     const least_ms = (1000 * span * dt_s * nx) / MOST_WALL_VALUES;
     const allowed = `at least ${Number(least_ms.toPrecision(3))} ms for this span and grid`;
     found.push({

@@ -31,7 +31,7 @@ function valueAt(entries: unknown, path: Path): unknown {
 /** A value as short text. */
 function shown(value: unknown): string {
   if (value === undefined) return '';
-  const text = typeof value === 'string' ? value : JSON.stringify(value);
+  const text = typeof value === 'string' ? value : JSON.stringify(value).replaceAll('"', '').replaceAll(',', ', ').replaceAll(':', ': ');
   const flat = text.replace(/\s+/g, ' ');
   return flat.length > 60 ? `${flat.slice(0, 57)}...` : flat;
 }

@@ -1,7 +1,7 @@
 /**
  * Which fins can be computed. A fin may reach past a wall: it is then attached to it, and what lies beyond is cut off.
  * Refused are fins outside the gap, in the bands at the ends, thinner than two cells, crossing themselves or one another,
- * and any arrangement that closes the channel.
+ * and any arrangement that leaves no way through of three cells.
  */
 import { bandsOf, gridOf } from './bands.ts';
 import type { Case } from './case.ts';
@@ -10,6 +10,9 @@ import { type PlacedFin, passable, solidCells } from './fins.ts';
 import { crossesItself, extent, overlap, signedArea } from './polygon.ts';
 import type { CaseEntries } from './schema.ts';
 import { mm } from './units.ts';
+
+/** Slack on places, m. */
+const ROUND_OFF_m = 1e-9;
 
 /** Thinnest fin the grid carries, cells. */
 const THINNEST = 2;
@@ -23,7 +26,7 @@ export function finFindings(entries: CaseEntries, panel: Case, fins: readonly Pl
   if (crossed.length > 0) return firstPerEntry(crossed);
   const { nx, ny, dx_m } = gridOf(panel);
   if (passable(solidCells(panel.fins, nx, ny, dx_m), nx, ny)) return [];
-  return [{ path: ['fins'], problem: 'close the channel from wall to wall', remedy: 'Leave a way past every fin' }];
+  return [{ path: ['fins'], problem: 'leave no way through the channel that is three cells wide', remedy: 'Move or shorten fins' }];
 }
 
 /** A group of twenty fins with one mistake in it is one fault. */
@@ -38,10 +41,10 @@ function entryFindings(entries: CaseEntries, panel: Case, entry: number): Placed
     const corners = fin.outline as [number, number][];
     const at = [...path, 'outline'];
     if (corners.length < 3) return [{ path: at, problem: `has ${corners.length} corners`, allowed: 'at least 3 corners' }];
-    if (Math.abs(signedArea(corners)) < 1e-12)
-      return [{ path: at, problem: 'encloses no area', remedy: 'Take corners that do not lie on one line' }];
     if (crossesItself(corners))
       return [{ path: at, problem: 'crosses itself', remedy: 'List the corners in the order in which they are joined' }];
+    if (Math.abs(signedArea(corners)) < 1e-12)
+      return [{ path: at, problem: 'encloses no area', remedy: 'Take corners that do not lie on one line' }];
     return [];
   }
   if (fin.count > 1 && fin.pitch === undefined)
@@ -75,15 +78,23 @@ function shapeFindings(panel: Case, { outline, entry }: PlacedFin, index: number
   }
   if (across[0] <= 0 && across[1] >= gap_m)
     return [{ path, problem: `${which} reaches from wall to wall`, remedy: 'Leave a way past the fin' }];
-  if (along[0] < release.to_m || along[1] > skim.from_m) {
-    const band = along[0] < release.to_m ? 'the band at the bottom where gas is let in' : 'the band at the top where gas is taken out';
+  const low = along[0] < release.to_m - ROUND_OFF_m;
+  if (low || along[1] > skim.from_m + ROUND_OFF_m) {
+    const band = low ? 'the band at the bottom where gas is let in' : 'the band at the top where gas is taken out';
     const allowed = `${mm(release.to_m)} to ${mm(skim.from_m)} along`;
     return [{ path, problem: `${which} reaches into ${band}, ${span} along`, allowed, remedy: 'Move the fin or make the channel higher' }];
   }
   const { nx, ny, dx_m } = gridOf(panel);
   const cells = solidCells([outline], nx, ny, dx_m).reduce((sum, cell) => sum + cell, 0);
   if (cells < THINNEST * THINNEST)
-    return [{ path, problem: `${which} covers ${cells} cells of the grid`, allowed: 'at least 4 cells', remedy: 'Take more cells across' }];
+    return [
+      {
+        path,
+        problem: `${which} fills too little of the grid (cells: ${cells})`,
+        allowed: 'at least 4 cells',
+        remedy: 'Take more cells across',
+      },
+    ];
   return [];
 }
 

@@ -56,9 +56,9 @@ export function solidCells(fins: readonly Outline[], nx: number, ny: number, dx_
   return solid;
 }
 
-/** Whether open cells join the bottom with the top. */
+/** Whether a way three cells wide leads from the bottom to the top: one whose middle cell has no solid and no wall beside it. */
 export function passable(solid: Uint8Array, nx: number, ny: number): boolean {
-  const seen = Uint8Array.from(solid);
+  const seen = crowded(solid, nx, ny);
   const open: number[] = [];
   const visit = (i: number): void => {
     if (seen[i] === 1) return;
@@ -75,4 +75,14 @@ export function passable(solid: Uint8Array, nx: number, ny: number): boolean {
     if (i < nx * (ny - 1)) visit(i + nx);
   }
   return false;
+}
+
+/** 1 in solids, in the rows along the walls, and in cells with a solid beside them. */
+function crowded(solid: Uint8Array, nx: number, ny: number): Uint8Array {
+  const crowd = new Uint8Array(nx * ny).fill(1, 0, nx).fill(1, nx * (ny - 1));
+  for (let i = nx; i < nx * (ny - 1); i++) {
+    const sides = [i, i - nx, i + nx, i % nx === 0 ? i : i - 1, i % nx === nx - 1 ? i : i + 1];
+    if (sides.some((side) => solid[side] === 1)) crowd[i] = 1;
+  }
+  return crowd;
 }

@@ -76,7 +76,7 @@ function register(node: Node | null, origin: Origin, origins: Map<Node, Origin>,
   origins.set(node, origin);
   if (node instanceof Alias)
     refuseAt(node, origin, path, `*${node.source}`, 'is an alias, which case files do not use', 'Write the value out');
-  if (depth > 20) refuseAt(node, origin, path, '', 'is nested too deeply', 'A case needs no more than four levels');
+  if (depth > 20) refuseAt(node, origin, path.slice(0, 1), '', 'is nested too deeply', 'A case needs no more than four levels');
   if (node.tag?.startsWith('!') === true)
     refuseAt(node, origin, path, node.tag, 'has a tag, which case files do not use', 'Leave the tag out');
   if (isSeq(node)) node.items.forEach((item, i) => void register(item as Node | null, origin, origins, [...path, i], depth + 1));
@@ -172,7 +172,7 @@ export function locate(tree: CaseTree, path: Path, atKey: boolean): { file: stri
  */
 export function caseText(text: string, sets: readonly string[] = []): string {
   if (sets.length === 0) return text;
-  return parseTree(text, 'case', sets).document.toString({ lineWidth: 0, flowCollectionPadding: false });
+  return parseTree(text, 'case', sets).document.toString({ lineWidth: 0 });
 }
 
 function refuse(file: string, line: number, column: number, path: string, value: string, problem: string, remedy: string): never {
