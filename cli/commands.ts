@@ -1,0 +1,95 @@
+import yargs from 'yargs';
+import { OPTIONS } from './options.ts';
+import { version } from './version.ts';
+import { numberWithin, required, rewordComplaint, single } from './words.ts';
+
+const CASE = { type: 'string', describe: 'a case file (YAML), or the name of a ready-made case' } as const;
+const NAME = { type: 'string', describe: 'a ready-made case' } as const;
+
+/** Pictures a run may ask for: more fill a disk and help nobody. */
+const FRAMES = { least: 2, most: 10_000, whole: true };
+/** Seconds between checkpoints: writing them more often takes longer than the run, more seldom loses hours. */
+const CHECKPOINT = { least: 0.01, most: 3600, whole: false };
+
+const CAUTION =
+  'Results are for screening, not for design. Compressed air, chemicals and lifting modules can hurt people: ' +
+  'bench trials, local codes and licensed practice come first.';
+
+/** Reads the words after `swathe`, does what they say and returns the exit code. A command's work is loaded when it is asked for. */
+export async function commandLine(words: string[]): Promise<number> {
+  let exit = 0;
+  const parser = yargs(words)
+    .scriptName('swathe')
+    .locale('en')
+    .parserConfiguration({
+      'boolean-negation': false,
+      'camel-case-expansion': false,
+      'dot-notation': false,
+      'greedy-arrays': false,
+      'parse-numbers': false,
+      'parse-positional-numbers': false,
+      'short-option-groups': false,
+    })
+    .exitProcess(false)
+    .usage('Simulates air bubbles scouring flat-sheet membranes and says how much of the surface they sweep.\n\n$0 <command>')
+    .command(
+      'run [case]',
+      'run a case into a run folder; goes on where an unfinished run stopped',
+      (builder) =>
+        builder
+          .positional('case', CASE)
+          .options(OPTIONS.run)
+          .example('$0 run tilted-panel', 'a ready-made case')
+          .example('$0 run my.yaml --set channel.tilt="10 deg" --out runs/ten', 'a case file with one value changed'),
+      async (args) => {
+        const word = required('run', args.case);
+        const frames = args['no-frames'] ? 0 : numberWithin('frames', single('frames', args.frames) ?? '', FRAMES);
+        const checkpoint_s = numberWithin('checkpoint', single('checkpoint', args.checkpoint) ?? '', CHECKPOINT);
+        const out = single('out', args.out);
+        const { run } = await import('./run.ts');
+        exit = await run({ word, sets: args.set ?? [], out, again: args.again, frames, checkpoint_s, quiet: args.quiet, words });
+      },
+    )
+    .command(
+      'check [case]',
+      'read and check a case: what will be computed, how long it takes, where its limits lie',
+      (builder) => builder.positional('case', CASE).options(OPTIONS.check),
+      async (args) => {
+        const word = required('check', args.case);
+        const { check } = await import('./check.ts');
+        await check({ word, sets: args.set ?? [], json: args.json });
+      },
+    )
+    .command(
+      'gallery [name]',
+      'list the ready-made cases, print one, or copy one or all into a folder',
+      (builder) => builder.positional('name', NAME).options(OPTIONS.gallery),
+      async (args) => {
+        const copy = single('copy', args.copy);
+        const { gallery } = await import('./gallery.ts');
+        gallery({ name: args.name, copy });
+      },
+    )
+    .command(
+      'schema',
+      'print the JSON Schema of case files, for completion in editors',
+      (builder) => builder.options(OPTIONS.schema),
+      async (args) => {
+        const out = single('out', args.out);
+        const { schema } = await import('./schema.ts');
+        schema({ out });
+      },
+    )
+    .demandCommand(1, 'no command given')
+    .strict()
+    .wrap(100)
+    .version(version())
+    .epilogue(CAUTION)
+    .fail((message, error) => {
+      // the parser's own complaints come as errors here and as messages there
+      const complaint = message ?? (error.name === 'YError' ? error.message : undefined);
+      throw complaint === undefined ? error : rewordComplaint(complaint, words);
+    });
+  await parser.parseAsync();
+  return exit;
+}

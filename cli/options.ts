@@ -1,0 +1,38 @@
+import type { Options } from 'yargs';
+
+const SET = {
+  type: 'string',
+  array: true,
+  requiresArg: true,
+  describe: 'change one value of the case, as in --set gas.supply="0.3 m3/(m2 h)"; may be repeated',
+} as const satisfies Options;
+
+/** The options of each command: the parser, the help and the near misses are made from this table. */
+export const OPTIONS = {
+  run: {
+    set: SET,
+    out: { type: 'string', requiresArg: true, describe: 'run folder; runs/<name of the case> without it' },
+    again: { type: 'boolean', default: false, describe: 'start anew in a folder that holds a run; its results are lost' },
+    frames: { type: 'string', requiresArg: true, default: '25', describe: 'about so many pictures, from the start to the end of the run' },
+    'no-frames': { type: 'boolean', default: false, describe: 'no pictures of the channel' },
+    checkpoint: { type: 'string', requiresArg: true, default: '10', describe: 'seconds of wall time between checkpoints' },
+    quiet: { type: 'boolean', default: false, describe: 'say nothing but errors' },
+  },
+  check: {
+    set: SET,
+    json: { type: 'boolean', default: false, describe: 'as JSON' },
+  },
+  gallery: {
+    copy: { type: 'string', requiresArg: true, describe: 'folder to copy to; files that are there are kept' },
+  },
+  schema: {
+    out: { type: 'string', requiresArg: true, describe: 'file to write to' },
+  },
+} as const satisfies Record<string, Record<string, Options>>;
+
+/** Names of the commands, and of the options of one. */
+export const commandNames = Object.keys(OPTIONS);
+export function optionNames(command: string | undefined): string[] {
+  const own = command !== undefined && command in OPTIONS ? Object.keys(OPTIONS[command as keyof typeof OPTIONS]) : [];
+  return [...own, 'help', 'version'];
+}

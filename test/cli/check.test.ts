@@ -1,0 +1,95 @@
+import { afterAll, beforeAll, describe, expect, it } from 'vitest';
+import { layOut, readCase } from '../../cases/index.ts';
+import { warnings } from '../../cli/warnings.ts';
+import { Bench, TINY } from './swathe.ts';
+
+/** Warnings of the tiny case with some values changed. */
+function warningsOf(...sets: string[]): string[] {
+  const panel = readCase(TINY, 'tiny.yaml', sets);
+  return warnings(panel, layOut(panel).derived);
+}
+
+/** Settings that take all warnings away: true air, many bubbles, fine cells. */
+const SOUND = ['record.span=10 s', 'grid.across=40'];
+
+describe('warnings', () => {
+  it('name the softened gas of a sound case and nothing else', () => {
+    expect(warningsOf(...SOUND)).toEqual([expect.stringContaining('the gas is softened: 200 kg/m3')]);
+  });
+
+  it('name a gap below 1.694 capillary lengths, 4.62 mm in water at 20 C, and none above', () => {
+    // REFERENCES section 2: derived there from Bretherton 1961, plane form
+    expect(warningsOf(...SOUND, 'channel.gap=4.5 mm', 'gas.bubble.diameter=3 mm', 'gas.start=[]').join('\n')).toContain(
+      'gap 4.5 mm is below 4.62 mm',
+    );
+    expect(warningsOf(...SOUND, 'channel.gap=4.8 mm', 'gas.bubble.diameter=3 mm', 'gas.start=[]').join('\n')).not.toContain('is below');
+  });
+
+  it('name a bubble of fewer than 16 cells, with the grid that has them', () => {
+    const coarse = warningsOf('record.span=10 s').find((text) => text.includes('cells, fewer than 16'));
+    expect(coarse).toContain('8 cells');
+    expect(coarse).toContain('grid.across to 32');
+    expect(warningsOf('record.span=10 s', 'grid.across=32').join('\n')).not.toContain('fewer than 16');
+  });
+
+  it('name a recording of fewer than two swept windows', () => {
+    expect(warningsOf(...SOUND, 'swept.within=6 s').join('\n')).toContain('record.span 10 s holds fewer than two separate windows');
+  });
+
+  it('name a recording of few bubbles, with the time that has enough', () => {
+    const few = warningsOf('grid.across=40', 'record.span=100 ms').find((text) => text.includes('bubbles are let in'));
+    const needed_s = /record\.span to (\d+) s/.exec(few ?? '')?.[1];
+    expect(warningsOf('grid.across=40', `record.span=${needed_s} s`).join('\n')).not.toContain('bubbles are let in');
+  });
+});
+
+describe('swathe check', () => {
+  const bench = new Bench();
+  beforeAll(() => {
+    bench.file('tiny.yaml', TINY);
+  });
+  afterAll(() => bench.remove());
+
+  it('prints the numbers that follow from a case', async () => {
+    const { exit, out } = await bench.swathe('check', 'tiny.yaml');
+    expect(exit).toBe(0);
+    for (const text of [
+      'Short piece for tests',
+      '8 mm x 36 mm',
+      'tilted 10 deg',
+      'Re ',
+      'Eo ',
+      'Mo ',
+      'tau ',
+      '16 across x 72 along = 1 152 cells of 0.5 mm',
+    ]) {
+      expect(out).toContain(text);
+    }
+    expect(out).toMatch(/memory +[\d.]+ [kM]B/);
+    expect(out).toMatch(/wall time +about /);
+    expect(out).toContain('warning: a bubble of 4 mm has 8 cells');
+  });
+
+  it('prints the same as JSON', async () => {
+    const { exit, out } = await bench.swathe('check', 'tiny.yaml', '--json', '--set', 'channel.tilt=0 deg');
+    expect(exit).toBe(0);
+    const read = JSON.parse(out);
+    expect(read.case.channel).toMatchObject({ gap_m: 0.008, tilt_rad: 0 });
+    expect(read.derived).toMatchObject({ nx: 72, ny: 16 });
+    expect(read.forecast.cells).toBe(1152);
+    expect(read.forecast.updates).toBe(1152 * read.forecast.steps);
+    expect(read.forecast.wallTime_s).toBeCloseTo(read.forecast.updates / read.forecast.updatesPerSecond, 9);
+    expect(read.warnings.length).toBeGreaterThan(0);
+  });
+
+  it('foretells the time a run takes within a factor of three', async () => {
+    const forecast = JSON.parse((await bench.swathe('check', 'tiny.yaml', '--json', '--set', 'record.span=1 s')).out).forecast;
+    const start = performance.now();
+    const { exit } = await bench.swathe('run', 'tiny.yaml', '--no-frames', '--quiet', '--set', 'record.span=1 s');
+    const took_s = (performance.now() - start) / 1000;
+    expect(exit).toBe(0);
+    // start and end of a process included; the machine may be shared
+    expect(took_s).toBeGreaterThan(forecast.wallTime_s / 3);
+    expect(took_s).toBeLessThan(3 * forecast.wallTime_s + 3);
+  });
+});
