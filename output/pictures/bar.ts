@@ -41,7 +41,8 @@ export function drawBar(canvas: Canvas, bar: Bar): void {
   }
   for (const value of ticks(from, to, 5)) {
     const row = top + Math.round((1 - (value - from) / (to - from)) * (height - 1));
-    canvas.fill(x + width + scale, row, 2 * scale, Math.ceil(scale / 2), INK);
-    canvas.text(x + width + 5 * scale, row - Math.round((CAPITAL_ROWS * scale) / 2), tickText(value), { scale });
+    canvas.fill(x + width, row, 2 * scale, Math.ceil(scale / 2), INK);
+    // apart from the tick, which would read as a minus
+    canvas.text(x + width + 6 * scale, row - Math.round((CAPITAL_ROWS * scale) / 2), tickText(value), { scale });
   }
 }

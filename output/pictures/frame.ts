@@ -14,7 +14,7 @@ export interface FrameStyle {
   asTilted?: boolean;
   /** whole pixels to the cell; by default so many that the channel is some 2400 pixels long, 6 at most */
   scale?: number;
-  /** speed at the end of the colour bar; faster cells get its colour. The case's `grid.speed` by default */
+  /** speed at the end of the colour bar; faster cells get its colour. Twice the case's `grid.speed` by default: jets between bubbles pass it */
   speedTop_m_s?: number;
 }
 
@@ -49,7 +49,7 @@ export function drawFrame(snapshot: Snapshot, style: FrameStyle): Buffer {
   const layout = arrange(nx, ny, scale, lean_rad, legendHeight, text);
   const canvas = new Canvas(layout.width, layout.height);
   const bands = [derived.release.to_m / derived.dx_m, derived.skim.from_m / derived.dx_m];
-  const speedTop_m_s = style.speedTop_m_s ?? style.case.grid.speed_m_s;
+  const speedTop_m_s = style.speedTop_m_s ?? 2 * style.case.grid.speed_m_s;
   drawStrip(canvas, snapshot, layout.placing, { membranes, speedTop_m_s, lines: bands });
 
   // band names hang on the side of the channel that has no legend
