@@ -38,12 +38,18 @@ export interface Box {
   geometry: Geometry;
 }
 
+/** 18 populations of four bytes: less than any cell takes, so that a box far too big is refused before anything is made for it */
+const LEAST_BYTES = 72;
+
 const fail = (what: string): never => {
   throw new RangeError(`setup: ${what}`);
 };
 
 const positive = (name: string, value: number): number =>
   value > 0 && Number.isFinite(value) ? value : fail(`${name} is ${value}; it must be positive and finite`);
+
+const within = (name: string, value: number, low: number, high: number, range: string): number =>
+  value >= low && value <= high ? value : fail(`${name} is ${value}; it must lie in ${range}`);
 
 const positiveOrInfinite = (name: string, value: number): number =>
   value > 0 ? value : fail(`${name} is ${value}; it must be positive (Infinity for none)`);
@@ -58,6 +64,8 @@ export function resolve(setup: Setup): Box {
   const { nx, ny, sides } = setup;
   if (!Number.isInteger(nx) || nx < 1) fail(`nx is ${nx}; it must be a whole number of at least 1`);
   if (!Number.isInteger(ny) || ny < 1) fail(`ny is ${ny}; it must be a whole number of at least 1`);
+  const leastMiB = (nx * ny * LEAST_BYTES) / 2 ** 20;
+  if (leastMiB > 2048) fail(`${nx} x ${ny} cells need ${Math.round(leastMiB)} MiB; the limit is 2048 MiB`);
   checkPair('left', sides.left, 'right', sides.right);
   checkPair('bottom', sides.bottom, 'top', sides.top);
   if (setup.solid && setup.solid.length !== nx * ny) fail(`solid has ${setup.solid.length} entries; nx * ny = ${nx * ny} are needed`);
@@ -68,6 +76,7 @@ export function resolve(setup: Setup): Box {
   if (sigma < 0) fail(`surfaceTension is ${sigma}; it must not be negative`);
   const gas = setup.gas ?? setup.liquid;
   const W = positive('interfaceWidth', setup.interfaceWidth ?? 5);
+  if (W <= 2) fail(`interfaceWidth is ${W}; it must be more than 2 cells`);
   const mobility = positive('mobility', setup.mobility ?? 0.1);
   const buoyancy = finite('buoyancy', setup.buoyancy ?? 1);
   return {
@@ -84,16 +93,16 @@ export function resolve(setup: Setup): Box {
     W,
     mobility,
     omegaPhi: 1 / (mobility / CS2 + 0.5),
-    wetting: (4 / W) * Math.cos(finite('contactAngle', setup.contactAngle ?? Math.PI / 2)),
+    wetting: (4 / W) * Math.cos(within('contactAngle', setup.contactAngle ?? Math.PI / 2, 0, Math.PI, '0 to pi')),
     sigma,
     forceX: finite('force.x', setup.force?.x ?? 0),
     forceY: finite('force.y', setup.force?.y ?? 0),
     gravityX: buoyancy * finite('gravity.x', setup.gravity?.x ?? 0),
     gravityY: buoyancy * finite('gravity.y', setup.gravity?.y ?? 0),
-    drive: setup.drive,
+    drive: checkedDrive(setup.drive),
     skim: Float64Array.from({ length: nx }, (_, x) => share(setup.skim?.[x] ?? 0)),
     gasLimit: 1 / positiveOrInfinite('gasSpeedLimit', setup.gasSpeedLimit ?? 0.15) ** 2,
-    damping: finite('damping', setup.damping ?? 0.005),
+    damping: within('damping', setup.damping ?? 0.005, 0, 0.25, '0 to 0.25'),
     speedLimit: positive('speedLimit', setup.speedLimit ?? 0.4),
     geometry: geometry(setup),
   };
@@ -101,6 +110,14 @@ export function resolve(setup: Setup): Box {
 
 function share(value: number): number {
   return value >= 0 && value < 1 ? value : fail(`skim holds ${value}; a share lies in 0 to 1`);
+}
+
+function checkedDrive(drive: Drive | undefined): Drive | undefined {
+  if (drive?.kind === 'upflow') finite('drive.target', drive.target);
+  if (drive?.kind === 'loss' && finite('drive.coefficient', drive.coefficient) < 0) {
+    fail(`drive.coefficient is ${drive.coefficient}; it must not be negative`);
+  }
+  return drive;
 }
 
 function checkPair(nameA: string, a: Side, nameB: string, b: Side): void {

@@ -68,6 +68,7 @@ export class Compiled implements Simulation {
   private start(): void {
     const { nx, ny, geometry, setup, twoPhase } = this.box;
     let sum = 0;
+    let gas = 0;
     for (let y = 0; y < ny; y++) {
       for (let x = 0; x < nx; x++) {
         if (geometry.fluid[y * nx + x] === 0) {
@@ -78,9 +79,11 @@ export class Compiled implements Simulation {
         const phi = twoPhase ? (setup.initial?.phi?.(x, y) ?? 1) : 1;
         this.setCell(x, y, phi, velocity.x, velocity.y, setup.initial?.pressure?.(x, y) ?? 0);
         sum += velocity.x;
+        gas += 1 - phi;
       }
     }
     this.map.header[H.UPFLOW] = this.map.header[H.UPFLOW_BEFORE] = sum / (nx * ny);
+    this.map.header[H.GAS_AREA] = gas;
   }
 
   private setCell(x: number, y: number, phi: number, ux: number, uy: number, p: number): void {
@@ -141,13 +144,15 @@ export class Compiled implements Simulation {
   }
 
   placeGas(circle: { x: number; y: number; radius: number }): number {
-    return placeCircle(this.box, circle, {
+    const added = placeCircle(this.box, circle, {
       phi: (x, y) => this.phi.get(x, y),
       ux: (x, y) => this.ux.get(x, y),
       uy: (x, y) => this.uy.get(x, y),
       pressure: (x, y) => this.pressure.get(x, y),
       set: (...cell) => this.setCell(...cell),
     });
+    this.map.header[H.GAS_AREA] += added;
+    return added;
   }
 
   totals(): { gasArea: number; skimmed: number; upflow: number } {

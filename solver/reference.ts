@@ -53,6 +53,7 @@ export class Reference implements Simulation {
     this.fNext = populations();
     this.gNext = populations();
     this.fields = { phi: field(), ux: field(), uy: field(), p: field(), ux2: field(), uy2: field() };
+    this.fields.phi.fill(1);
     this.stress = Array.from({ length: 8 }, () => new Float64Array(nx));
     this.recorder = new Recorder(nx);
     const view = (data: Float64Array): Field => ndarray(data, [nx, ny], [1, this.S], this.S + 1);
@@ -79,6 +80,7 @@ export class Reference implements Simulation {
     this.setCell(x, y, phi, velocity.x, velocity.y, initial?.pressure?.(x, y) ?? 0);
     this.totalsNow[1] += velocity.x / (this.box.nx * this.box.ny);
     this.totalsNow[2] = this.totalsNow[1];
+    this.totalsNow[3] += 1 - phi;
   }
 
   private setCell(x: number, y: number, phi: number, ux: number, uy: number, p: number): void {
@@ -145,12 +147,14 @@ export class Reference implements Simulation {
    * Fills the ghosts beyond one side from its first row of cells. `axis` is the one across the side, `edge` the row's
    * coordinate on it, `inward` the sign of the directions that come back. A wall sends each population back where it came
    * from, adding 2 w rho e.u/CS2 when it moves; a slip side mirrors it. In a corner of two sides that are not periodic the
-   * diagonal goes straight back.
+   * diagonal goes straight back, with what both walls add.
    */
   private reflect(set: Float64Array[], side: Side, axis: 'x' | 'y', edge: number, inward: 1 | -1): void {
     const { nx, ny } = this.box;
     const [eN, eT, length] = axis === 'y' ? [ey, ex, nx] : [ex, ey, ny];
-    const periodicT = (axis === 'y' ? this.setup.sides.bottom : this.setup.sides.left) === 'periodic';
+    const { sides } = this.setup;
+    const ends = axis === 'y' ? [sides.bottom, sides.top] : [sides.left, sides.right];
+    const periodicT = ends[0] === 'periodic';
     const mirrored = axis === 'y' ? mirrorY : mirrorX;
     const speed = set === this.f ? wallSpeed(side) : 0;
     const place = (t: number, n: number): number => (axis === 'y' ? this.at(t, n) : this.at(n, t));
@@ -163,7 +167,8 @@ export class Reference implements Simulation {
           set[k][ghost] = set[mirrored[k]][place((t - eT[k] + length) % length, edge)];
         } else {
           const rho = this.box.rhoGas + this.fields.phi[place(t, edge)] * (this.box.rhoLiquid - this.box.rhoGas);
-          set[k][ghost] = set[opposite[k]][place(t, edge)] + 6 * w[k] * rho * eT[k] * speed;
+          const end = corner && set === this.f ? eN[k] * wallSpeed(eT[k] > 0 ? ends[0] : ends[1]) : 0;
+          set[k][ghost] = set[opposite[k]][place(t, edge)] + 6 * w[k] * rho * (eT[k] * speed + end);
         }
       }
     }
@@ -183,7 +188,7 @@ export class Reference implements Simulation {
         for (let k = 0; k < Q; k++) z += this.g[k][i - ey[k] * this.S - ex[k]];
         phi[i] = 1 + z;
         if (geometry.fluid[y * nx + x] === 0) continue;
-        gas -= z;
+        gas -= z * (1 - skim[x]);
         skimmed -= z * skim[x];
       }
     }
@@ -316,13 +321,15 @@ export class Reference implements Simulation {
   }
 
   placeGas(circle: { x: number; y: number; radius: number }): number {
-    return placeCircle(this.box, circle, {
+    const added = placeCircle(this.box, circle, {
       phi: (x, y) => this.phi.get(x, y),
       ux: (x, y) => this.ux.get(x, y),
       uy: (x, y) => this.uy.get(x, y),
       pressure: (x, y) => this.pressure.get(x, y),
       set: (...cell) => this.setCell(...cell),
     });
+    this.totalsNow[3] += added;
+    return added;
   }
 
   /** Everything a step reads, in one order. */

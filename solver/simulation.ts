@@ -20,7 +20,7 @@ export interface Samples {
   phi: { left: Rows; right: Rows };
   /** mean of ux over all cells: the volume flux of the section over the gap; shape (samples) */
   upflow: Float64Array;
-  /** sum of (1 - phi) over fluid cells; shape (samples) */
+  /** sum of (1 - phi) over fluid cells, less what this step skims; shape (samples) */
   gasArea: Float64Array;
   /** gas area skimmed since the start; shape (samples) */
   skimmed: Float64Array;

@@ -3,7 +3,7 @@
 //   periodic  the population k of the far side
 //   wall      what left against k from the cell it will reach (halfway bounce-back), plus 6 w rho e.u on a moving wall
 //   slip      what left along the mirrored direction
-// In a corner of two sides that are not periodic the diagonal goes straight back.
+// In a corner of two sides that are not periodic the diagonal goes straight back, with what both walls add.
 import * as H from '../header';
 import { W1, W2 } from '../constants';
 import { address, entry, nx, ny, zRow, row, stride } from './rows';
@@ -151,5 +151,10 @@ function reflectRow<T>(first: i32, edge: i32, inward: i32, sideAt: i32, speedAt:
         store<T>(at<T>(x - ex(k), edge - inward, first + k), <T>(back + push<T>(first, k, ex(k), speed, x, edge)));
       }
     }
+    if (periodicX || ex(k) == 0) continue;
+    const x = ex(k) > 0 ? 0 : nx - 1;
+    const corner = at<T>(x - ex(k), edge - inward, first + k);
+    const end = entry(ex(k) > 0 ? H.SPEED_BOTTOM : H.SPEED_TOP);
+    store<T>(corner, <T>(<f64>load<T>(corner) + push<T>(first, k, ey(k), end, x, edge)));
   }
 }

@@ -42,7 +42,7 @@ export function phiPass<T>(): void {
     less += total<T>(gasLanes);
     skimmed += total<T>(skimLanes);
   }
-  setEntry(H.GAS_AREA, -less);
+  setEntry(H.GAS_AREA, skimmed - less);
   setEntry(H.SKIMMED, entry(H.SKIMMED) - skimmed);
   fillPhiGhosts<T>();
 }
