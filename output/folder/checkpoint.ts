@@ -47,7 +47,7 @@ const MAKERS: Record<PartType, (bytes: ArrayBuffer) => PartArray> = {
 /** Name of the part that is the solver's image; the others are names of arrays behind a colon. */
 const SOLVER = 'solver';
 
-export function encodeCheckpoint(checkpoint: Checkpoint, origin: Origin): Buffer {
+function encodeCheckpoint(checkpoint: Checkpoint, origin: Origin): Buffer {
   const parts: [string, PartArray][] = [[SOLVER, checkpoint.solver]];
   for (const [name, array] of Object.entries(checkpoint.arrays)) parts.push([`:${name}`, array]);
   const header: Header = {
@@ -71,7 +71,7 @@ function typeOf(array: PartArray): PartType {
 }
 
 /** The checkpoint in a file's bytes, or undefined where they are not a whole, unharmed one. */
-export function decodeCheckpoint(bytes: Buffer): { checkpoint: Checkpoint; origin: Origin } | undefined {
+function decodeCheckpoint(bytes: Buffer): { checkpoint: Checkpoint; origin: Origin } | undefined {
   const body = bytes.subarray(0, Math.max(0, bytes.length - DIGEST_BYTES));
   if (body.length < MAGIC.length + 4 || body.toString('latin1', 0, MAGIC.length) !== MAGIC) return undefined;
   if (!createHash('sha256').update(body).digest().equals(bytes.subarray(body.length))) return undefined;

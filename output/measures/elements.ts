@@ -1,8 +1,9 @@
 import ops from 'ndarray-ops';
 import type { Recording, WallSide } from '../../cases/index.ts';
 import { exceedance } from './exceedance.ts';
+import { ascending } from './order.ts';
 import { quantile } from './quantile.ts';
-import { layWall, series } from './surface.ts';
+import { type Surface, series } from './surface.ts';
 
 /**
  * What a single wall element felt, over all samples; the whole height, bands included.
@@ -26,11 +27,13 @@ export interface ElementRow {
   shareUnderGas: number | null;
 }
 
-/** One row per element of a wall, upward. */
-export function elementRows(recording: Recording, side: WallSide): ElementRow[] {
+/**
+ * One row per element of a wall, upward.
+ * @param surface the whole wall
+ */
+export function elementRows(recording: Recording, surface: Surface): ElementRow[] {
   const { membrane, x_m } = recording;
-  const surface = layWall(recording, side, { first: 0, end: x_m.length });
-  const { samples } = surface;
+  const { samples, side } = surface;
   const threshold_Pa = recording.case.swept.above_Pa;
   const watched_s = (samples - 1) * surface.every_s;
   const rows: ElementRow[] = Array.from(x_m, (x) => ({
@@ -61,7 +64,7 @@ export function elementRows(recording: Recording, side: WallSide): ElementRow[] 
     row.meanAbs_Pa = absSum / samples;
     row.mean_Pa = sum / samples;
     row.rms_Pa = Math.sqrt(ops.norm2squared(shear) / samples);
-    row.p95_Pa = quantile(magnitudes.slice().sort(), 0.95);
+    row.p95_Pa = quantile(ascending(magnitudes), 0.95);
     row.max_Pa = ops.norminf(shear);
     row.shareAbove = felt.above / samples;
     row.events_1_s = watched_s > 0 ? felt.rises / watched_s : null;

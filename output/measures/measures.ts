@@ -2,8 +2,9 @@ import type { Recording, WallSide } from '../../cases/index.ts';
 import { type ElementRow, elementRows } from './elements.ts';
 import { type Histogram, shearHistogram } from './histogram.ts';
 import { type LoopMeasures, loopMeasures } from './loop.ts';
+import { ascending } from './order.ts';
 import { type ShearStatistics, shearStatistics } from './shear.ts';
-import { layWall } from './surface.ts';
+import { clip, layWall, type Surface } from './surface.ts';
 import { type Swept, sweptFraction, sweptTogether, windowSamples } from './swept.ts';
 
 /** The answers of one recording. Shares are dimensionless, 0 to 1; null: not to be had from this recording, see `notes`. */
@@ -37,7 +38,8 @@ export interface WallMeasures {
 /** All measures of a recording. Pure: the recording is not changed. */
 export function measure(recording: Recording): Measures {
   const asked = recording.case.swept;
-  const walls = { left: measureWall(recording, 'left'), right: measureWall(recording, 'right') };
+  const surfaces = { left: layWall(recording, 'left'), right: layWall(recording, 'right') };
+  const walls = { left: measureWall(recording, surfaces.left), right: measureWall(recording, surfaces.right) };
   const { membranes } = recording.case.channel;
   const times = recording.times_s;
   return {
@@ -52,14 +54,14 @@ export function measure(recording: Recording): Measures {
     walls,
     together: sweptTogether(membranes.map((side) => walls[side].swept)),
     loop: loopMeasures(recording),
-    elements: [...elementRows(recording, 'left'), ...elementRows(recording, 'right')],
+    elements: [...elementRows(recording, surfaces.left), ...elementRows(recording, surfaces.right)],
     notes: notes(recording, walls),
   };
 }
 
-function measureWall(recording: Recording, side: WallSide): WallMeasures {
-  const surface = layWall(recording, side);
-  const sorted_Pa = surface.magnitude_Pa.data.slice().sort();
+function measureWall(recording: Recording, wall: Surface): WallMeasures {
+  const surface = clip(wall, recording.membrane);
+  const sorted_Pa = ascending(surface.magnitude_Pa.data);
   return {
     membrane: surface.membrane,
     elements: { open: surface.elements.length, underFin: surface.covered },

@@ -29,7 +29,7 @@ export interface ShearStatistics {
   shareUnderGas: number | null;
 }
 
-export type Percentile = (typeof PERCENTILES)[number];
+type Percentile = (typeof PERCENTILES)[number];
 const PERCENTILES = ['p5', 'p25', 'p50', 'p75', 'p95', 'p99'] as const;
 
 /**

@@ -26,35 +26,27 @@ export interface Surface {
   gas: NdArray<Uint8Array>;
 }
 
-/** Elements [first, end) of a recording's wall. */
-export interface Range {
-  first: number;
-  end: number;
-}
-
 /**
- * Lays out the elements of `range` on one wall; the recording's own arrays are viewed, then turned once so that time is contiguous.
- * @param range membrane elements by default
+ * Lays out all elements of one wall, from the lower end to the upper, bands included. The recording's own arrays are viewed, then turned
+ * once so that time is contiguous.
  */
-export function layWall(recording: Recording, side: WallSide, range: Range = recording.membrane): Surface {
+export function layWall(recording: Recording, side: WallSide): Surface {
   const samples = recording.times_s.length;
   const elements = recording.x_m.length;
   const rows = recording.walls[side];
-  const asked = Math.max(0, range.end - range.first);
   // views on the recording: [element, sample], nothing copied yet
-  const shearView = ndarray(rows.shear_Pa, [samples, elements]).lo(0, range.first).hi(samples, asked).transpose(1, 0);
-  const gasView = ndarray(rows.gas, [samples, elements]).lo(0, range.first).hi(samples, asked).transpose(1, 0);
+  const shearView = ndarray(rows.shear_Pa, [samples, elements]).transpose(1, 0);
+  const gasView = ndarray(rows.gas, [samples, elements]).transpose(1, 0);
 
-  const open: number[] = [];
-  for (let e = 0; e < asked; e++) {
-    // one NaN or infinity makes the sum non-finite
-    if (Number.isFinite(ops.sum(shearView.pick(e, null)))) open.push(e);
-  }
+  // one NaN or infinity makes the sum of an element's samples non-finite
+  const sums = new Float64Array(elements);
+  for (let s = 0; s < samples; s++) for (let e = 0; e < elements; e++) sums[e] += rows.shear_Pa[s * elements + e];
+  const open = Int32Array.from(sums.keys()).filter((e) => Number.isFinite(sums[e]));
 
   const shear_Pa = ndarray(new Float32Array(open.length * samples), [open.length, samples]);
   const magnitude_Pa = ndarray(new Float32Array(open.length * samples), [open.length, samples]);
   const gas = ndarray(new Uint8Array(open.length * samples), [open.length, samples]);
-  // runs of neighbouring open elements are turned together: a fin parts the wall into few runs
+  // runs of neighbouring open elements are turned together: fins part the wall into few runs
   for (let i = 0; i < open.length; ) {
     let n = 1;
     while (i + n < open.length && open[i + n] === open[i] + n) n++;
@@ -67,13 +59,30 @@ export function layWall(recording: Recording, side: WallSide, range: Range = rec
   return {
     side,
     membrane: recording.case.channel.membranes.includes(side),
-    elements: Int32Array.from(open, (e) => e + range.first),
-    covered: asked - open.length,
+    elements: open,
+    covered: elements - open.length,
     samples,
     every_s: recording.derived.sampleEvery * recording.derived.dt_s,
     shear_Pa,
     magnitude_Pa,
     gas,
+  };
+}
+
+/** The elements [first, end) of a wall as views on the same memory. */
+export function clip(surface: Surface, range: { first: number; end: number }): Surface {
+  const { samples } = surface;
+  const from = surface.elements.filter((e) => e < range.first).length;
+  const elements = surface.elements.filter((e) => e >= range.first && e < range.end);
+  const part = <T extends Float32Array | Uint8Array>(rows: NdArray<T>): NdArray<T> =>
+    ndarray(rows.data.subarray(from * samples, (from + elements.length) * samples) as T, [elements.length, samples]);
+  return {
+    ...surface,
+    elements,
+    covered: Math.max(0, range.end - range.first) - elements.length,
+    shear_Pa: part(surface.shear_Pa),
+    magnitude_Pa: part(surface.magnitude_Pa),
+    gas: part(surface.gas),
   };
 }
 

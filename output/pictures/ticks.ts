@@ -26,7 +26,7 @@ export function ticks(from: number, to: number, about: number): number[] {
 }
 
 /** Without the rest that binary fractions leave. */
-export function clean(value: number): number {
+function clean(value: number): number {
   return Number(value.toPrecision(10));
 }
 

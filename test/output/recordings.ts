@@ -18,7 +18,7 @@ export interface Making {
 }
 
 /** Cell size of made recordings. */
-export const CELL_M = 2e-4;
+const CELL_M = 2e-4;
 
 /** A recording whose every entry is known, on cells of 0.2 mm; sampling starts at 1 s. */
 export function makeRecording(making: Making = {}): Recording {
