@@ -19,7 +19,8 @@ const LONGEST_TAU = 2;
 export function contradictions(entries: CaseEntries, panel: Case, fins: readonly PlacedFin[]): PlacedFinding[] {
   const single = [...channelFindings(entries), ...recordFindings(panel), ...gasFindings(entries, panel), ...sizeFindings(panel)];
   if (single.length > 0) return single;
-  return [...bandFindings(panel), ...finFindings(entries, panel, fins), ...startFindings(panel)];
+  const bands = bandFindings(panel);
+  return bands.length > 0 ? bands : [...finFindings(entries, panel, fins), ...startFindings(panel)];
 }
 
 function channelFindings({ channel }: CaseEntries): PlacedFinding[] {
@@ -124,7 +125,7 @@ function bandFindings(panel: Case): PlacedFinding[] {
       path: ['channel', 'height'],
       problem,
       allowed: `at least ${mm(bands_m / 0.6)}`,
-      remedy: 'Make the channel higher or the bubbles smaller',
+      remedy: 'Make the channel higher, the bubbles smaller or grid.speed larger',
     },
   ];
 }
