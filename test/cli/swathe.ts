@@ -41,6 +41,12 @@ export class Bench {
     return Object.fromEntries(names.map((name) => [name, this.read(run, name)]));
   }
 
+  /** The pictures of the channel in a run folder, in order. */
+  frames(run: string): Buffer[] {
+    const names = readdirSync(this.path(run, 'frames')).sort();
+    return names.map((name) => readFileSync(this.path(run, 'frames', name)));
+  }
+
   /** Starts `swathe` in the folder. */
   start(...words: string[]): { child: ChildProcess; ended: Promise<Ended>; printed: () => string } {
     const child = spawn(process.execPath, [MAIN, ...words], { cwd: this.folder, env: { ...process.env, NO_COLOR: '1', npm_command: '' } });
