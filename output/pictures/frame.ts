@@ -1,9 +1,9 @@
 import type { Case, Derived, Snapshot } from '../../cases/index.ts';
 import { drawBar } from './bar.ts';
-import { Canvas, FIN, INK, TEXT_SCALE } from './canvas.ts';
+import { Canvas, FIN, INK, PALE_INK, TEXT_SCALE } from './canvas.ts';
 import { SPEED_MAP } from './colours.ts';
 import { CAPITAL_ROWS, textWidth } from './font.ts';
-import { drawStrip, LABEL, type Placing, type Point, place, WALL_PIXELS, wallKey } from './strip.ts';
+import { drawStrip, type Placing, type Point, place, WALL_PIXELS, wallKey } from './strip.ts';
 import { roundBelow, tickText } from './ticks.ts';
 
 /** How a frame is drawn. All frames of one run drawn with the same style have the same size and colours. */
@@ -57,7 +57,7 @@ export function drawFrame(snapshot: Snapshot, style: FrameStyle): Buffer {
     const side = layout.legendRight ? -WALL_PIXELS - 6 : ny * scale + WALL_PIXELS + 6;
     const at = place(layout.placing, along, side / scale);
     const top = Math.round(at.y - (CAPITAL_ROWS * text) / 2);
-    canvas.text(Math.round(at.x), top, BAND_LABELS[i], { hang: layout.legendRight ? 1 : -1, colour: LABEL, scale: text });
+    canvas.text(Math.round(at.x), top, BAND_LABELS[i], { hang: layout.legendRight ? 1 : -1, colour: PALE_INK, scale: text });
   });
 
   const { x } = layout.legend;

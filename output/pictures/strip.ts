@@ -1,5 +1,5 @@
 import type { Snapshot, WallSide } from '../../cases/index.ts';
-import { type Canvas, type Colour, FIN, INK, PALE_INK } from './canvas.ts';
+import { type Canvas, type Colour, FIN, INK } from './canvas.ts';
 import { colourAt, mix, SPEED_MAP } from './colours.ts';
 
 /**
@@ -41,7 +41,7 @@ const EDGE_HALF = 0.9;
 const INTERFACE_CELLS = 5;
 /** From this phi on a pixel is too far from an edge to show it. */
 const NEAR_EDGE = 0.9999;
-/** Dashes of the lines where the release band ends and the skim band begins, cells along the line are scaled to these pixels. */
+/** Length of the dashes in the lines where the release band ends and the skim band begins. */
 const DASH_PIXELS = 6;
 
 export interface StripStyle {
@@ -141,5 +141,3 @@ export function wallKey(membranes: readonly WallSide[]): { colour: Colour; name:
   if (membranes.length < 2) key.push({ colour: PLAIN, name: 'plain wall' });
   return key;
 }
-
-export const LABEL: Colour = PALE_INK;
