@@ -36,7 +36,7 @@ function channelFindings({ channel }: CaseEntries): PlacedFinding[] {
       path: ['channel', 'return'],
       problem,
       allowed: 'one of loss, upflow',
-      remedy: 'Write {loss: 1.5} for a tank or {upflow: 0.1 m/s} for a pump',
+      remedy: 'Write {loss: 1.5} for a tank, {upflow: 0.1 m/s} for a pump, {upflow: 0 m/s} for no loop flow',
     });
   }
   return found;

@@ -22,7 +22,7 @@ export interface Recording {
 }
 
 /** Shape (samples, elements), row-major. */
-export interface WallRows {
+interface WallRows {
   /** wall shear stress with sign, upward positive; NaN on elements under a fin */
   shear_Pa: Float32Array;
   /** 1 where gas touches the element */

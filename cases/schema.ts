@@ -36,8 +36,8 @@ const channel = z.strictObject({
   membranes,
   return: z
     .strictObject({
-      loss: plainNumber({ least: 0, most: 1e6, says: 'loss coefficient of the way back through the tank, on the mean upflow' }).optional(),
-      upflow: quantity('speed', { unit: 'm/s', least: -2, most: 2, says: 'mean liquid upflow held by a pump' }).optional(),
+      loss: plainNumber({ least: 0, most: 1000, says: 'loss coefficient of the way back through the tank, on the mean upflow' }).optional(),
+      upflow: quantity('speed', { unit: 'm/s', least: -2, most: 2, says: 'mean upflow held by a pump; 0 m/s for none' }).optional(),
     })
     .prefault({ loss: '1.5' })
     .meta({ description: 'how the liquid comes back to the bottom: a loss coefficient or a given upflow' }),
