@@ -22,9 +22,10 @@ export function count(value: number): string {
     .replace(/\B(?=(\d{3})+$)/g, ' ');
 }
 
-/** Seconds of wall time as people say them: 45s, 1m 20s, 2h 5m. */
+/** Seconds of wall time as people say them: 0.4s, 45s, 1m 20s, 2h 5m. */
 export function duration(seconds: number): string {
-  return prettyMilliseconds(1000 * Math.max(0, seconds), { unitCount: 2, secondsDecimalDigits: seconds < 10 ? 1 : 0 });
+  if (seconds < 1) return `${Math.max(0, seconds).toFixed(1)}s`;
+  return prettyMilliseconds(1000 * seconds, { unitCount: 2, secondsDecimalDigits: seconds < 10 ? 1 : 0 });
 }
 
 /** Bytes as kB, MB or GB. */

@@ -39,7 +39,7 @@ export async function run(options: RunOptions): Promise<number> {
       if (!options.quiet) process.stdout.write(`${path} holds this very run, done ${folder.record.ended}. ${how}\n`);
       return 0;
     }
-    const beginning = { caseText: text, title: panel.title, seed: panel.gas.seed, derived, version: version() };
+    const beginning = { caseText: text, title: panel.title, seed: panel.gas.seed, frames: options.frames, derived, version: version() };
     const resume = await beginOrResume(folder, path, beginning, options);
     return await compute(folder, path, { panel, derived }, resume, options);
   } finally {
@@ -57,8 +57,10 @@ async function beginOrResume(folder: RunFolder, path: string, beginning: Beginni
     const { checkpoint, notes } = await folder.resume(beginning);
     const from =
       checkpoint === undefined
-        ? 'starts over, for it has no checkpoint yet'
+        ? 'starts over, for it has no checkpoint to go on from'
         : `goes on from ${plain(checkpoint.step * beginning.derived.dt_s)} s`;
+    const begun = folder.record?.frames;
+    if (begun !== options.frames) notes.push(`frames: ${begun}, as the run was begun with`);
     if (!options.quiet) process.stderr.write([...notes, `the run in ${path} ${from}`].map((line) => `${line}\n`).join(''));
     return checkpoint;
   }
@@ -81,7 +83,7 @@ async function compute(
   try {
     const recording = await simulate(laid.panel, {
       ...(resume === undefined ? {} : { resume }),
-      ...frameHooks(folder, laid, options.frames),
+      ...frameHooks(folder, laid),
       onProgress: (progress) => {
         view.update(progress);
         folder.progress(progress);
@@ -111,8 +113,9 @@ async function compute(
   }
 }
 
-/** Frames from the start to the end, both among them, numbered by their place in the run so that a resumed one goes on counting. */
-function frameHooks(folder: RunFolder, { panel, derived }: { panel: Case; derived: Derived }, frames: number): Hooks {
+/** Frames from the start to the end, as many as the run was begun with, numbered by their place in it so that a resumed one goes on counting. */
+function frameHooks(folder: RunFolder, { panel, derived }: { panel: Case; derived: Derived }): Hooks {
+  const frames = folder.record?.frames ?? 0;
   if (frames === 0) return {};
   const every = Math.max(1, Math.floor(derived.steps / (frames - 1)));
   return {

@@ -21,6 +21,8 @@ export interface RunRecord {
   /** SHA-256 of case.yaml */
   case_sha256: string;
   seed: number;
+  /** pictures asked for, from start to end; 0 for none */
+  frames: number;
   derived: Derived;
   /** ISO 8601, UTC; `ended` is when the status was left */
   started: string;
@@ -44,6 +46,8 @@ export interface Beginning {
   caseText: string;
   title: string;
   seed: number;
+  /** pictures asked for, from start to end; 0 for none */
+  frames: number;
   derived: Derived;
   /** version of swathe */
   version: string;
@@ -58,6 +62,7 @@ export function newRecord(beginning: Beginning): RunRecord {
     versions: { swathe: beginning.version, node: process.versions.node },
     case_sha256: sha256(beginning.caseText),
     seed: beginning.seed,
+    frames: beginning.frames,
     derived: beginning.derived,
     started: now,
     updated: now,

@@ -23,7 +23,7 @@ describe('numbers for people', () => {
   it('write shares, counts, times and sizes', () => {
     expect(percent(0.4567)).toBe('45.7 %');
     expect(count(1234567)).toBe('1 234 567');
-    expect([duration(2.34), duration(65), duration(7260)]).toEqual(['2.3s', '1m 5s', '2h 1m']);
+    expect([duration(0.781), duration(2.34), duration(65), duration(7260)]).toEqual(['0.8s', '2.3s', '1m 5s', '2h 1m']);
     expect([size(0), size(999), size(1500), size(2.5e9)]).toEqual(['0 B', '999 B', '1.5 kB', '2.5 GB']);
   });
 });

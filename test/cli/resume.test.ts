@@ -66,8 +66,10 @@ describe('a run that is interrupted', () => {
     const command = /^ *swathe (run .*)$/m.exec(error)?.[1] ?? error;
     expect(command).toBe(`run longer.yaml --frames 4 --checkpoint 0.05 --out '${folder}'`);
 
-    const again = await bench.swathe(...RUN, '--out', folder);
+    // how many pictures was settled at the beginning
+    const again = await bench.swathe('run', 'longer.yaml', '--out', folder);
     expect(again.error).toMatch(/goes on from 0\.\d+ s/);
+    expect(again.error).toContain('frames: 4, as the run was begun with');
     expect(again.exit).toBe(0);
     expectSameAsWhole(folder);
   });

@@ -11,7 +11,7 @@ import { OutputError } from '../../solver/index.ts';
 import { makeRecording } from './recordings.ts';
 
 const { derived } = makeRecording();
-const beginning: Beginning = { caseText: 'title: Made panel\n', title: 'Made panel', seed: 7, derived, version: '0.1.0' };
+const beginning: Beginning = { caseText: 'title: Made panel\n', title: 'Made panel', seed: 7, frames: 3, derived, version: '0.1.0' };
 const checkpointAt = (step: number): Checkpoint => ({ step, solver: new Uint8Array(5000).fill(step), json: '{}', arrays: {} });
 const BUILT = pathToFileURL(join(import.meta.dirname, '../../.build/output/index.js')).href;
 

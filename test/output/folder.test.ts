@@ -15,6 +15,7 @@ const beginning: Beginning = {
   caseText: 'title: Made panel\n',
   title: 'Made panel',
   seed: 7,
+  frames: 3,
   derived: recording.derived,
   version: '0.1.0',
 };
@@ -44,6 +45,7 @@ describe('a run folder', () => {
       status: 'running',
       title: 'Made panel',
       seed: 7,
+      frames: 3,
       versions: { swathe: '0.1.0', node: process.versions.node },
     });
     expect(readFileSync(join(path, 'case.yaml'), 'utf8')).toBe(beginning.caseText);
