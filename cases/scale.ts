@@ -37,6 +37,9 @@ const GRAVITY_m_s2 = 9.80665;
 const INTERFACE_WIDTH = 5;
 const MOBILITY = 0.1;
 
+/** Share of a section's surplus flux taken out per step: sound along a channel of 0.1 m is gone within some ten milliseconds. */
+const SOUND_DAMPING = 0.01;
+
 /**
  * The lattice box of a case and the numbers that go with it. The computed height is `nx * dx_m`: the asked one rounded to whole cells.
  * Buoyancy acts with the density difference of liquid and real air, whatever density the gas is computed with.
@@ -58,6 +61,7 @@ export function layOut(panel: Case): { setup: Setup; derived: Derived } {
     surfaceTension,
     interfaceWidth: INTERFACE_WIDTH,
     mobility: MOBILITY,
+    soundDamping: SOUND_DAMPING,
     contactAngle: panel.contactAngle_rad,
     ...(panel.fins.length === 0 ? {} : { solid: solidCells(panel.fins, nx, ny, dx_m) }),
     gravity: { x: -g * Math.cos(panel.channel.tilt_rad), y: 0 - g * Math.sin(panel.channel.tilt_rad) },

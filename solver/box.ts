@@ -33,6 +33,8 @@ export interface Box {
   skim: Float64Array;
   /** 1 / (gas speed limit)^2 */
   gasLimit: number;
+  gasThickening: number;
+  soundDamping: number;
   damping: number;
   speedLimit: number;
   geometry: Geometry;
@@ -102,6 +104,8 @@ export function resolve(setup: Setup): Box {
     drive: checkedDrive(setup.drive),
     skim: Float64Array.from({ length: nx }, (_, x) => share(setup.skim?.[x] ?? 0)),
     gasLimit: 1 / positiveOrInfinite('gasSpeedLimit', setup.gasSpeedLimit ?? 0.15) ** 2,
+    gasThickening: within('gasThickening', setup.gasThickening ?? 300, 0, 1e4, '0 to 10000'),
+    soundDamping: within('soundDamping', setup.soundDamping ?? 0, 0, 0.1, '0 to 0.1'),
     damping: within('damping', setup.damping ?? 0.005, 0, 0.25, '0 to 0.25'),
     speedLimit: positive('speedLimit', setup.speedLimit ?? 0.4),
     geometry: geometry(setup),

@@ -1,7 +1,7 @@
 // The header of the kernel's memory: one f64 per entry, at byte 8 * entry. Literals only, compiled by both compilers.
 
 /** checked by the host against the kernel's own copy when it is loaded */
-export const VERSION = 2;
+export const VERSION = 3;
 /** bytes kept for the header */
 export const HEADER_BYTES = 1024;
 
@@ -80,6 +80,10 @@ export const GAS_LIMIT = 49;
 export const DAMPING = 50;
 /** mobility M */
 export const MOBILITY = 51;
+export const GAS_THICKENING = 52;
+export const SOUND_DAMPING = 53;
+/** two rows: the sum of ux over each section so far, and what sound damping takes from ux in the next step */
+export const AT_SECTIONS = 54;
 
 // ---- state
 export const STEP = 64;

@@ -48,6 +48,7 @@ export function layMemory(box: Box): MemoryMap {
     [H.AT_TAU, take(2 * ny * strideBytes) + 16],
     [H.AT_SKIM, take(strideBytes)],
     [H.AT_WEIGHTS, take(4 * strideBytes)],
+    [H.AT_SECTIONS, take(2 * strideBytes)],
     [H.AT_LINKS, take(20 * geometry.links.length)],
     [H.AT_RUNS, take(12 * geometry.runs.length)],
     [H.AT_GHOSTS, take(24 * (geometry.ghosts.length + neighbours))],
@@ -95,6 +96,8 @@ function writeNumbers(box: Box, header: Float64Array): void {
   header[H.GAS_LIMIT] = box.gasLimit;
   header[H.DAMPING] = box.damping;
   header[H.MOBILITY] = box.mobility;
+  header[H.GAS_THICKENING] = box.gasThickening;
+  header[H.SOUND_DAMPING] = box.soundDamping;
   header[H.DRIVE_KIND] = box.drive === undefined ? 0 : box.drive.kind === 'loss' ? 1 : 2;
   header[H.DRIVE_VALUE] = box.drive === undefined ? 0 : box.drive.kind === 'loss' ? box.drive.coefficient : box.drive.target;
 }

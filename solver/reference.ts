@@ -1,7 +1,7 @@
 /**
  * The method in plain f64 TypeScript: a text to read, and the oracle of the kernel's tests. One step, in order:
  *
- * 1. `fillGhosts`: populations leaving the box come back through its sides; solids return what met them.
+ * 1. `fillGhosts` (ghosts.ts): populations leaving the box come back through its sides; solids return what met them.
  * 2. `interfacePass`: phi of every cell is the sum of the g that arrive; skimming; ghosts of phi carry the wetting.
  * 3. `cell`: gradients of phi, forces, velocity, pressure, wall stress; then both collisions (collide.ts).
  *
@@ -9,10 +9,11 @@
  * after collision, f as it is (it sums to about 0), g less w: both are deviations, which f32 keeps to more digits.
  */
 import ndarray from 'ndarray';
-import { type Box, driveForce, resolve, wallSpeed } from './box.ts';
+import { type Box, driveForce, resolve } from './box.ts';
 import { type Cell, collideFlow, collideInterface, newCell } from './collide.ts';
 import { Q } from './constants.ts';
-import { ex, ey, mirrorX, mirrorY, opposite, w } from './lattice.ts';
+import { fillGhosts, indexOf } from './ghosts.ts';
+import { ex, ey } from './lattice.ts';
 import { Recorder } from './recorder.ts';
 import type { Setup, Side } from './setup.ts';
 import type { Field, Samples, Simulation, Status } from './simulation.ts';
@@ -35,6 +36,9 @@ export class Reference implements Simulation {
   private readonly fields: Record<'phi' | 'ux' | 'uy' | 'p' | 'ux2' | 'uy2', Float64Array>;
   /** stress of the first and second row at either wall, of this step and the one before; shape (8, nx) */
   private stress: Float64Array[];
+  /** sum of ux over each section, and what sound damping takes from ux in the next step; shape (nx) each */
+  private readonly sections: Float64Array;
+  private readonly sound: Float64Array;
   private readonly recorder: Recorder;
   private readonly cell: Cell = newCell();
   /** drive force now, mean ux now and one step ago, gas area, gas skimmed */
@@ -55,6 +59,8 @@ export class Reference implements Simulation {
     this.fields = { phi: field(), ux: field(), uy: field(), p: field(), ux2: field(), uy2: field() };
     this.fields.phi.fill(1);
     this.stress = Array.from({ length: 8 }, () => new Float64Array(nx));
+    this.sections = new Float64Array(nx);
+    this.sound = new Float64Array(nx);
     this.recorder = new Recorder(nx);
     const view = (data: Float64Array): Field => ndarray(data, [nx, ny], [1, this.S], this.S + 1);
     this.phi = view(this.fields.phi);
@@ -66,7 +72,7 @@ export class Reference implements Simulation {
 
   /** Index of a cell. */
   private at(x: number, y: number): number {
-    return (y + 1) * this.S + x + 1;
+    return indexOf(this.box, x, y);
   }
 
   private start(x: number, y: number): void {
@@ -98,7 +104,8 @@ export class Reference implements Simulation {
 
   advance(steps: number, sampleEvery = 0): Status {
     for (let n = 0; n < steps; n++) {
-      this.fillGhosts();
+      fillGhosts(this.box, this.f, this.fields.phi);
+      if (this.box.twoPhase) fillGhosts(this.box, this.g, undefined);
       if (this.box.twoPhase) this.interfacePass();
       const status = this.cells();
       [this.f, this.fNext] = [this.fNext, this.f];
@@ -108,70 +115,6 @@ export class Reference implements Simulation {
       if (status) return status;
     }
     return { kind: 'ok', step: this.step };
-  }
-
-  // ---- 1. ghosts of the populations
-
-  private fillGhosts(): void {
-    const { nx, ny, setup, twoPhase, geometry } = this.box;
-    const sets = twoPhase ? [this.f, this.g] : [this.f];
-    for (const set of sets) {
-      for (const { x, y, k, fluidX, fluidY } of geometry.links) set[k][this.at(x, y)] = set[opposite[k]][this.at(fluidX, fluidY)];
-      if (setup.sides.bottom === 'periodic') {
-        for (const field of set) {
-          for (let y = 0; y < ny; y++) {
-            field[this.at(-1, y)] = field[this.at(nx - 1, y)];
-            field[this.at(nx, y)] = field[this.at(0, y)];
-          }
-        }
-      } else {
-        this.reflect(set, setup.sides.bottom, 'x', 0, 1);
-        this.reflect(set, setup.sides.top, 'x', nx - 1, -1);
-      }
-      if (setup.sides.left === 'periodic') {
-        const [from, to] = setup.sides.bottom === 'periodic' ? [-1, nx + 1] : [0, nx];
-        for (const field of set) {
-          for (let x = from; x < to; x++) {
-            field[this.at(x, -1)] = field[this.at(x, ny - 1)];
-            field[this.at(x, ny)] = field[this.at(x, 0)];
-          }
-        }
-      } else {
-        this.reflect(set, setup.sides.left, 'y', 0, 1);
-        this.reflect(set, setup.sides.right, 'y', ny - 1, -1);
-      }
-    }
-  }
-
-  /**
-   * Fills the ghosts beyond one side from its first row of cells. `axis` is the one across the side, `edge` the row's
-   * coordinate on it, `inward` the sign of the directions that come back. A wall sends each population back where it came
-   * from, adding 2 w rho e.u/CS2 when it moves; a slip side mirrors it. In a corner of two sides that are not periodic the
-   * diagonal goes straight back, with what both walls add.
-   */
-  private reflect(set: Float64Array[], side: Side, axis: 'x' | 'y', edge: number, inward: 1 | -1): void {
-    const { nx, ny } = this.box;
-    const [eN, eT, length] = axis === 'y' ? [ey, ex, nx] : [ex, ey, ny];
-    const { sides } = this.setup;
-    const ends = axis === 'y' ? [sides.bottom, sides.top] : [sides.left, sides.right];
-    const periodicT = ends[0] === 'periodic';
-    const mirrored = axis === 'y' ? mirrorY : mirrorX;
-    const speed = set === this.f ? wallSpeed(side) : 0;
-    const place = (t: number, n: number): number => (axis === 'y' ? this.at(t, n) : this.at(n, t));
-    for (let k = 1; k < Q; k++) {
-      if (eN[k] !== inward) continue;
-      for (let t = 0; t < length; t++) {
-        const ghost = place(t - eT[k], edge - inward);
-        const corner = !periodicT && (t - eT[k] < 0 || t - eT[k] >= length);
-        if (side === 'slip' && !corner) {
-          set[k][ghost] = set[mirrored[k]][place((t - eT[k] + length) % length, edge)];
-        } else {
-          const rho = this.box.rhoGas + this.fields.phi[place(t, edge)] * (this.box.rhoLiquid - this.box.rhoGas);
-          const end = corner && set === this.f ? eN[k] * wallSpeed(eT[k] > 0 ? ends[0] : ends[1]) : 0;
-          set[k][ghost] = set[opposite[k]][place(t, edge)] + 6 * w[k] * rho * (eT[k] * speed + end);
-        }
-      }
-    }
   }
 
   // ---- 2. phi
@@ -231,7 +174,7 @@ export class Reference implements Simulation {
   private cells(): Status | undefined {
     const { nx, ny, geometry, speedLimit } = this.box;
     const { f, g, S, cell, fields } = this;
-    let sumUx = 0;
+    this.sections.fill(0);
     this.stress = [...this.stress.slice(4), ...this.stress.slice(0, 4)];
     let bad: Status | undefined;
     for (let y = 0; y < ny; y++) {
@@ -248,6 +191,7 @@ export class Reference implements Simulation {
         }
         if (this.box.twoPhase) this.gradients(i);
         cell.driveX = this.totalsNow[0];
+        cell.soundX = this.sound[x];
         cell.ux1 = fields.ux[i];
         cell.uy1 = fields.uy[i];
         cell.ux2 = fields.ux2[i];
@@ -264,7 +208,7 @@ export class Reference implements Simulation {
         fields.ux[i] = cell.ux;
         fields.uy[i] = cell.uy;
         fields.p[i] = cell.p;
-        sumUx += cell.ux;
+        this.sections[x] += cell.ux;
         if (y < 2) this.stress[y][x] = cell.tauXY;
         if (y >= ny - 2) this.stress[2 + ny - 1 - y][x] = cell.tauXY;
         const speed = Math.hypot(cell.ux, cell.uy);
@@ -274,7 +218,10 @@ export class Reference implements Simulation {
       }
     }
     const before = this.totalsNow[1];
-    const now = sumUx / (nx * ny);
+    const now = this.sections.reduce((sum, ux) => sum + ux, 0) / (nx * ny);
+    this.sound.forEach((_, x) => {
+      this.sound[x] = this.box.soundDamping * (this.sections[x] / ny - now);
+    });
     this.totalsNow[0] = driveForce(this.box.drive, this.box.rhoLiquid, this.totalsNow[0], now, before);
     this.totalsNow[1] = now;
     this.totalsNow[2] = before;
@@ -334,7 +281,7 @@ export class Reference implements Simulation {
 
   /** Everything a step reads, in one order. */
   private arrays(): Float64Array[] {
-    return [this.totalsNow, ...this.f, ...this.g, ...Object.values(this.fields), ...this.stress];
+    return [this.totalsNow, this.sound, ...this.f, ...this.g, ...Object.values(this.fields), ...this.stress];
   }
 
   save(): Uint8Array {

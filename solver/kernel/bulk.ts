@@ -1,11 +1,10 @@
 // The flow collision of one row of a box that holds liquid alone: flow.ts with phi = 1 and no gradients.
 // Reads f of rows y - 1, y, y + 1 and mask; writes f over row y - 2, ux and uy, and on demand p and tau.
 import * as H from '../header';
-import { entry, fieldRow, nx, row, stride, tauRow } from './rows';
-import { add, get, largest, mad, max, mul, nmad, put, splat, sub, total } from './vector';
+import { address, entry, fieldRow, nx, row, stride, tauRow } from './rows';
+import { add, get, largest, mad, max, mul, nmad, put, splat, sub } from './vector';
 import { FIELDS, STRESS } from './flow';
 
-export let bulkSumUx: f64 = 0;
 export let bulkTopU2: f64 = 0;
 
 export function bulkRow<T>(y: i32, flags: i32): void {
@@ -30,7 +29,6 @@ export function bulkRow<T>(y: i32, flags: i32): void {
 
   const density = entry(H.RHO_LIQUID);
   const omegaNumber = 1 / (3 / (density * entry(H.FLUIDITY_LIQUID)) + 0.5);
-  const zero = splat<T>(0);
   const half = splat<T>(0.5);
   const quarter = splat<T>(0.25);
   const third = splat<T>(1.0 / 3.0);
@@ -39,10 +37,11 @@ export function bulkRow<T>(y: i32, flags: i32): void {
   const lighter = splat<T>(1 / density);
   const keep = splat<T>(1 - omegaNumber);
   const toStress = splat<T>(0.5 * omegaNumber - 1);
+  const sections = address(H.AT_SECTIONS);
+  const sound = sections + stride;
   const halfFx = splat<T>(0.5 * (entry(H.FORCE_X) + entry(H.DRIVE_FORCE)));
   const halfFy = splat<T>(0.5 * entry(H.FORCE_Y));
-  let sum = zero;
-  let top = zero;
+  let top = splat<T>(0);
 
   const end = <usize>nx * size;
   let i: usize = 0;
@@ -66,7 +65,7 @@ export function bulkRow<T>(y: i32, flags: i32): void {
     const y24 = add<T>(v2, v4);
 
     const live = mul<T>(lighter, get(mask + i));
-    const ux = mul<T>(add<T>(halfFx, m10), live);
+    const ux = mul<T>(nmad<T>(rho, get(sound + i), add<T>(halfFx, m10)), live);
     const uy = mul<T>(add<T>(halfFy, m01), live);
     const jx = mul<T>(rho, ux);
     const jy = mul<T>(rho, uy);
@@ -74,7 +73,7 @@ export function bulkRow<T>(y: i32, flags: i32): void {
     const yy = mul<T>(jy, uy);
     const rhoU2 = add<T>(xx, yy);
     const u2 = mad<T>(ux, ux, mul<T>(uy, uy));
-    sum = add<T>(sum, ux);
+    put(sections + i, add<T>(get(sections + i), ux));
     top = max<T>(top, u2);
     const moving = add<T>(add<T>(x13, y24), add<T>(b57, b86));
     const p = mul<T>(splat<T>(0.6), nmad<T>(twoThirds, rhoU2, moving));
@@ -117,6 +116,5 @@ export function bulkRow<T>(y: i32, flags: i32): void {
     if (flags & STRESS) put(tauOut + i, mul<T>(toStress, n11));
     i += 16;
   } while (i < end);
-  bulkSumUx = total<T>(sum);
   bulkTopU2 = largest<T>(top);
 }

@@ -1,16 +1,15 @@
 // Both collisions of one row, f and g: the formulas of collide.ts, whose text explains them, in lanes along x.
 // Form of the flow equation: momentum-based (Liang et al. 2018, Phys. Rev. E 97, 033309; from memory). It lives here alone.
 // Reads f and g of rows y - 1, y, y + 1, z and its ghosts, mask, skim, the velocities of the last two steps; writes f and g over
-// row y - 2, ux and uy, on demand phi and p (flag FIELDS) and tau (flag STRESS). Leaves the sum of ux and the largest u^2 of the
-// row in `sumUx`, `topU2`.
+// row y - 2, ux and uy, on demand phi and p (flag FIELDS) and tau (flag STRESS). Adds ux to
+// the sums of the sections and leaves the largest u^2 of the row in `topU2`.
 import * as H from '../header';
 import { address, entry, fieldRow, nx, row, stride, tauRow, zRow } from './rows';
-import { add, div, get, largest, mad, max, min, mul, nmad, put, root, splat, sub, total } from './vector';
+import { add, div, get, largest, mad, max, min, mul, nmad, put, root, splat, sub } from './vector';
 
 export const FIELDS: i32 = 1;
 export const STRESS: i32 = 2;
 
-export let sumUx: f64 = 0;
 export let topU2: f64 = 0;
 
 export function collideRow<T>(y: i32, flags: i32): void {
@@ -66,9 +65,12 @@ export function collideRow<T>(y: i32, flags: i32): void {
   const diffusion = splat<T>(drho * entry(H.MOBILITY));
   const damping = splat<T>(entry(H.DAMPING));
   const gasLimit = splat<T>(entry(H.GAS_LIMIT));
+  const thickening = splat<T>(entry(H.GAS_THICKENING));
+  const sections = address(H.AT_SECTIONS);
+  const sound = sections + stride;
   const three = splat<T>(3);
   const tiny = splat<T>(1e-12);
-  let sum = zero;
+  const notDenormal = splat<T>(1e-20);
   let top = zero;
 
   const end = <usize>nx * size;
@@ -124,9 +126,16 @@ export function collideRow<T>(y: i32, flags: i32): void {
     const y24 = add<T>(v2, v4);
     const diagonals = add<T>(b57, b86);
 
-    // one division for 1/rho, 1/(3 + fluid/2) and 1/|grad phi|; fluid = rho / eta
+    // one division for 1/rho, omega and 1/|grad phi|; fluid = rho / eta, thicker = added / (eta / rho)
     const fluid = mul<T>(rho, mad<T>(inside, dFluidity, fluidityGas));
-    const below = mad<T>(half, fluid, three);
+    const ux1 = get(uxAt + i);
+    const uy1 = get(uyAt + i);
+    const earlier2 = mad<T>(ux1, ux1, mul<T>(uy1, uy1));
+    const gas2 = mul<T>(gas, gas);
+    const gas4 = mul<T>(gas2, gas2);
+    const gas4u2 = mul<T>(gas4, earlier2);
+    const thicker = mul<T>(mul<T>(thickening, fluid), mul<T>(gas4u2, mul<T>(gas4, earlier2)));
+    const below = mad<T>(three, thicker, mad<T>(half, fluid, three));
     const steep = root<T>(mad<T>(phiX, phiX, mad<T>(phiY, phiY, tiny)));
     const steepBelow = mul<T>(steep, below);
     const all = div<T>(one, mul<T>(rho, steepBelow));
@@ -137,9 +146,7 @@ export function collideRow<T>(y: i32, flags: i32): void {
 
     // velocity: what arrives, damped, gas held back
     const live = mul<T>(lighter, get(mask + i));
-    const ux1 = get(uxAt + i);
-    const uy1 = get(uyAt + i);
-    const uxRaw = mul<T>(mad<T>(half, Fx, m10), live);
+    const uxRaw = mul<T>(nmad<T>(rho, get(sound + i), mad<T>(half, Fx, m10)), live);
     const uyRaw = mul<T>(mad<T>(half, Fy, m01), live);
     const bendX = add<T>(sub<T>(uxRaw, add<T>(ux1, ux1)), get(uxBefore + i));
     const bendY = add<T>(sub<T>(uyRaw, add<T>(uy1, uy1)), get(uyBefore + i));
@@ -154,7 +161,7 @@ export function collideRow<T>(y: i32, flags: i32): void {
     put(uxAt + i, ux);
     put(uyAt + i, uy);
     const u2 = mad<T>(ux, ux, mul<T>(uy, uy));
-    sum = add<T>(sum, ux);
+    put(sections + i, add<T>(get(sections + i), ux));
     top = max<T>(top, u2);
 
     const uxRhoX = mul<T>(ux, rhoX);
@@ -224,7 +231,7 @@ export function collideRow<T>(y: i32, flags: i32): void {
         put(phiOut + i, phi);
         put(pOut + i, p);
       }
-      if (flags & STRESS) put(tauOut + i, mul<T>(sub<T>(zero, half1), mad<T>(half, s11, n11)));
+      if (flags & STRESS) put(tauOut + i, div<T>(mul<T>(sub<T>(zero, half1), mad<T>(half, s11, n11)), add<T>(one, thicker)));
     }
 
     // the interface
@@ -236,7 +243,7 @@ export function collideRow<T>(y: i32, flags: i32): void {
     const c86 = sub<T>(w8, w6);
     const j10 = add<T>(sub<T>(get(f1 + toG + i), get(f3 + toG + i)), add<T>(c57, c86));
     const j01 = add<T>(sub<T>(get(f2 + toG + i), get(f4 + toG + i)), sub<T>(c57, c86));
-    const zAfter = nmad<T>(z, skimmed, z);
+    const zAfter = add<T>(nmad<T>(z, skimmed, z), notDenormal);
     const phiAfter = add<T>(one, zAfter);
     const sharpen = mul<T>(sharp, sharpness);
     const vx = mul<T>(phiAfter, ux);
@@ -272,6 +279,5 @@ export function collideRow<T>(y: i32, flags: i32): void {
     put(outG + 8 * stride, add<T>(gEven68, gOdd68));
     i += 16;
   } while (i < end);
-  sumUx = total<T>(sum);
   topU2 = largest<T>(top);
 }

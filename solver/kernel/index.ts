@@ -1,8 +1,8 @@
 // Entry points of the kernel. One call does many steps; a failure is a status in the header, never a trap.
 // A step: fillGhosts, phiPass (two phases), one collision row after another, the drive, a sample.
 import * as H from '../header';
-import { bulkRow, bulkSumUx, bulkTopU2 } from './bulk';
-import { FIELDS, STRESS, collideRow, sumUx, topU2 } from './flow';
+import { bulkRow, bulkTopU2 } from './bulk';
+import { FIELDS, STRESS, collideRow, topU2 } from './flow';
 import { clearSolids, fillGhosts } from './ghosts';
 import { phiPass } from './phi';
 import { address, bind, entry, fieldRow, nx, ny, row, setEntry, stride, turn, zRow } from './rows';
@@ -26,28 +26,24 @@ function advance<T>(steps: i32, sampleEvery: i32): i32 {
     const fields = done == steps ? FIELDS : 0;
     fillGhosts<T>(twoPhase ? 2 : 1);
     if (twoPhase) phiPass<T>();
-    let total: f64 = 0;
-    for (let y = 0; y < ny; y++) {
-      const flags = fields | (y < 2 || y >= ny - 2 ? STRESS : 0);
-      total += collide<T>(y, flags, twoPhase);
-    }
+    memory.fill(address(H.AT_SECTIONS), 0, <usize>nx * sizeof<T>());
+    for (let y = 0; y < ny; y++) collide<T>(y, fields | (y < 2 || y >= ny - 2 ? STRESS : 0), twoPhase);
     turn();
     clearSolids<T>();
     setEntry(H.STEP, <f64>step);
-    drive(total / <f64>(nx * ny));
+    drive(meanFlux<T>());
     if (sampling) sample<T>();
   }
   return done;
 }
 
 /** One row; a speed that is not below the limit names its cell. */
-function collide<T>(y: i32, flags: i32, twoPhase: bool): f64 {
+function collide<T>(y: i32, flags: i32, twoPhase: bool): void {
   if (twoPhase) collideRow<T>(y, flags);
   else bulkRow<T>(y, flags);
   const limit = entry(H.SPEED_LIMIT);
   const top = twoPhase ? topU2 : bulkTopU2;
-  const sum = twoPhase ? sumUx : bulkSumUx;
-  if (top < limit * limit || entry(H.STATUS) != 0) return sum;
+  if (top < limit * limit || entry(H.STATUS) != 0) return;
   for (let x = 0; x < nx; x++) {
     const ux = <f64>load<T>(fieldRow(H.AT_UX, y) + <usize>x * sizeof<T>());
     const uy = <f64>load<T>(fieldRow(H.AT_UY, y) + <usize>x * sizeof<T>());
@@ -59,7 +55,22 @@ function collide<T>(y: i32, flags: i32, twoPhase: bool): f64 {
     setEntry(H.BAD_SPEED, speed);
     break;
   }
-  return sum;
+}
+
+/** Mean of ux over all cells; what sound damping takes from each section in the next step. */
+function meanFlux<T>(): f64 {
+  const sums = address(H.AT_SECTIONS);
+  let total: f64 = 0;
+  for (let x = 0; x < nx; x++) total += <f64>load<T>(sums + <usize>x * sizeof<T>());
+  const mean = total / <f64>(nx * ny);
+  const share = entry(H.SOUND_DAMPING);
+  if (share != 0) {
+    for (let x = 0; x < nx; x++) {
+      const at = sums + <usize>x * sizeof<T>();
+      store<T>(at + stride, <T>(share * (<f64>load<T>(at) / <f64>ny - mean)));
+    }
+  }
+  return mean;
 }
 
 function drive(upflow: f64): void {
