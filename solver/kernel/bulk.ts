@@ -2,6 +2,7 @@
 // Reads f of rows y - 1, y, y + 1 and mask; writes f over row y - 2, ux and uy, and on demand p and tau.
 import * as H from '../header';
 import { address, entry, fieldRow, nx, row, stride, tauRow } from './rows';
+import { tremble } from './tremble';
 import { add, get, largest, mad, max, mul, nmad, put, splat, sub } from './vector';
 import { FIELDS, STRESS } from './flow';
 
@@ -39,8 +40,10 @@ export function bulkRow<T>(y: i32, flags: i32): void {
   const toStress = splat<T>(0.5 * omegaNumber - 1);
   const sections = address(H.AT_SECTIONS);
   const sound = sections + stride;
-  const halfFx = splat<T>(0.5 * (entry(H.FORCE_X) + entry(H.DRIVE_FORCE)));
-  const halfFy = splat<T>(0.5 * entry(H.FORCE_Y));
+  const driveX = entry(H.FORCE_X) + entry(H.DRIVE_FORCE);
+  const driveY = entry(H.FORCE_Y);
+  const halfFx = splat<T>(0.5 * driveX + tremble<T>(driveX));
+  const halfFy = splat<T>(0.5 * driveY + tremble<T>(driveY));
   let top = splat<T>(0);
 
   const end = <usize>nx * size;

@@ -5,6 +5,7 @@
 // the sums of the sections and leaves the largest u^2 of the row in `topU2`.
 import * as H from '../header';
 import { address, entry, fieldRow, nx, row, stride, tauRow, zRow } from './rows';
+import { tremble } from './tremble';
 import { add, div, get, largest, mad, max, min, mul, nmad, put, root, splat, sub } from './vector';
 
 export const FIELDS: i32 = 1;
@@ -55,10 +56,15 @@ export function collideRow<T>(y: i32, flags: i32): void {
   const dFluidity = splat<T>(entry(H.FLUIDITY_LIQUID) - entry(H.FLUIDITY_GAS));
   const beta4 = splat<T>(4 * entry(H.BETA));
   const kappaSixth = splat<T>(entry(H.KAPPA) / 6);
-  const forceX = splat<T>(entry(H.FORCE_X) + entry(H.DRIVE_FORCE));
-  const forceY = splat<T>(entry(H.FORCE_Y));
-  const heavyX = splat<T>(drho * entry(H.GRAVITY_X));
-  const heavyY = splat<T>(drho * entry(H.GRAVITY_Y));
+  const driveX = entry(H.FORCE_X) + entry(H.DRIVE_FORCE);
+  const driveY = entry(H.FORCE_Y);
+  // the same on both, so that it falls to nothing in gas, whose momentum lies on a finer grid
+  const trembleX = 2 * tremble<T>(driveX);
+  const trembleY = 2 * tremble<T>(driveY);
+  const forceX = splat<T>(driveX + trembleX);
+  const forceY = splat<T>(driveY + trembleY);
+  const heavyX = splat<T>(drho * entry(H.GRAVITY_X) + trembleX);
+  const heavyY = splat<T>(drho * entry(H.GRAVITY_Y) + trembleY);
   const keepPhi = splat<T>(1 - omegaPhi);
   const slope = splat<T>(4 / entry(H.WIDTH));
   const sharp = splat<T>((1 - 0.5 * omegaPhi) / 3);
