@@ -6,7 +6,7 @@
 import { bandsOf, gridOf } from './bands.ts';
 import type { Case } from './case.ts';
 import type { PlacedFinding } from './faults.ts';
-import { type PlacedFin, passable, solidCells } from './fins.ts';
+import { cellsWithin, type PlacedFin, passable, solidCells } from './fins.ts';
 import { crossesItself, extent, overlap, signedArea } from './polygon.ts';
 import type { CaseEntries } from './schema.ts';
 import { mm } from './units.ts';
@@ -25,7 +25,7 @@ export function finFindings(entries: CaseEntries, panel: Case, fins: readonly Pl
   const crossed = crossings(fins);
   if (crossed.length > 0) return firstPerEntry(crossed);
   const { nx, ny, dx_m } = gridOf(panel);
-  if (passable(solidCells(panel.fins, nx, ny, dx_m), nx, ny)) return [];
+  if (fins.length === 0 || passable(solidCells(panel.fins, nx, ny, dx_m), nx, ny)) return [];
   return [{ path: ['fins'], problem: 'leave no way through the channel that is three cells wide', remedy: 'Move or shorten fins' }];
 }
 
@@ -85,7 +85,7 @@ function shapeFindings(panel: Case, { outline, entry }: PlacedFin, index: number
     return [{ path, problem: `${which} reaches into ${band}, ${span} along`, allowed, remedy: 'Move the fin or make the channel higher' }];
   }
   const { nx, ny, dx_m } = gridOf(panel);
-  const cells = solidCells([outline], nx, ny, dx_m).reduce((sum, cell) => sum + cell, 0);
+  const cells = cellsWithin(outline, nx, ny, dx_m).length;
   if (cells < THINNEST * THINNEST)
     return [
       {

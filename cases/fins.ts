@@ -43,17 +43,22 @@ function bar(across: number, along: number, length: number, thickness: number, a
  */
 export function solidCells(fins: readonly Outline[], nx: number, ny: number, dx_m: number): Uint8Array {
   const solid = new Uint8Array(nx * ny);
-  for (const fin of fins) {
-    const { across, along } = extent(fin);
-    const xEnd = Math.min(nx - 1, Math.ceil(along[1] / dx_m));
-    const yEnd = Math.min(ny - 1, Math.ceil(across[1] / dx_m));
-    for (let y = Math.max(0, Math.floor(across[0] / dx_m) - 1); y <= yEnd; y++) {
-      for (let x = Math.max(0, Math.floor(along[0] / dx_m) - 1); x <= xEnd; x++) {
-        if (inside(fin, (y + 0.5) * dx_m, (x + 0.5) * dx_m)) solid[y * nx + x] = 1;
-      }
+  for (const fin of fins) for (const cell of cellsWithin(fin, nx, ny, dx_m)) solid[cell] = 1;
+  return solid;
+}
+
+/** Indices of the cells whose centre lies in one fin. */
+export function cellsWithin(fin: Outline, nx: number, ny: number, dx_m: number): number[] {
+  const cells: number[] = [];
+  const { across, along } = extent(fin);
+  const xEnd = Math.min(nx - 1, Math.ceil(along[1] / dx_m));
+  const yEnd = Math.min(ny - 1, Math.ceil(across[1] / dx_m));
+  for (let y = Math.max(0, Math.floor(across[0] / dx_m) - 1); y <= yEnd; y++) {
+    for (let x = Math.max(0, Math.floor(along[0] / dx_m) - 1); x <= xEnd; x++) {
+      if (inside(fin, (y + 0.5) * dx_m, (x + 0.5) * dx_m)) cells.push(y * nx + x);
     }
   }
-  return solid;
+  return cells;
 }
 
 /** Whether a way three cells wide leads from the bottom to the top: one whose middle cell has no solid and no wall beside it. */
