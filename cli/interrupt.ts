@@ -1,6 +1,9 @@
 /** What a shell expects of a process ended by each signal: 128 + its number. */
 const EXITS = { SIGINT: 130, SIGTERM: 143, SIGHUP: 129 } as const;
 
+/** A launcher such as npx may pass the same Ctrl-C on once more: within this time it counts as one, ms. */
+const SAME_MS = 200;
+
 /** A request from outside to stop. */
 export interface Interrupt {
   signal: AbortSignal;
@@ -14,10 +17,15 @@ export interface Interrupt {
 export function catchInterrupts(onFirst: () => void): Interrupt {
   const controller = new AbortController();
   let exit: number | undefined;
+  let first_ms = 0;
   const listeners = Object.entries(EXITS).map(([name, code]) => {
     const listener = (): void => {
-      if (exit !== undefined) process.exit(exit);
+      if (exit !== undefined) {
+        if (performance.now() - first_ms > SAME_MS) process.exit(exit);
+        return;
+      }
       exit = code;
+      first_ms = performance.now();
       onFirst();
       controller.abort();
     };

@@ -79,6 +79,7 @@ describe('a run that is interrupted', () => {
     await until(() => hasCheckpoint('twice'));
     child.kill('SIGINT');
     await until(() => printed().includes('once more ends at once'));
+    await new Promise((resolve) => setTimeout(resolve, 250));
     child.kill('SIGINT');
     expect((await ended).exit).toBe(130);
     expect(status('twice')).toBeOneOf(['running', 'stopped']);
