@@ -82,7 +82,7 @@ export const DAMPING = 50;
 export const MOBILITY = 51;
 export const GAS_THICKENING = 52;
 export const SOUND_DAMPING = 53;
-/** two rows: the sum of ux over each section so far, and what sound damping takes from ux in the next step */
+/** three rows: the sums of ux and of gas over each section so far; what sound damping takes from ux in the next step */
 export const AT_SECTIONS = 54;
 
 // ---- state

@@ -48,7 +48,7 @@ export function layMemory(box: Box): MemoryMap {
     [H.AT_TAU, take(2 * ny * strideBytes) + 16],
     [H.AT_SKIM, take(strideBytes)],
     [H.AT_WEIGHTS, take(4 * strideBytes)],
-    [H.AT_SECTIONS, take(2 * strideBytes)],
+    [H.AT_SECTIONS, take(3 * strideBytes)],
     [H.AT_LINKS, take(20 * geometry.links.length)],
     [H.AT_RUNS, take(12 * geometry.runs.length)],
     [H.AT_GHOSTS, take(24 * (geometry.ghosts.length + neighbours))],

@@ -36,8 +36,9 @@ export class Reference implements Simulation {
   private readonly fields: Record<'phi' | 'ux' | 'uy' | 'p' | 'ux2' | 'uy2', Float64Array>;
   /** stress of the first and second row at either wall, of this step and the one before; shape (8, nx) */
   private stress: Float64Array[];
-  /** sum of ux over each section, and what sound damping takes from ux in the next step; shape (nx) each */
+  /** sums of ux and gas over each section, and what sound damping takes from ux in the next step; shape (nx) each */
   private readonly sections: Float64Array;
+  private readonly sectionGas: Float64Array;
   private readonly sound: Float64Array;
   private readonly recorder: Recorder;
   private readonly cell: Cell = newCell();
@@ -60,6 +61,7 @@ export class Reference implements Simulation {
     this.fields.phi.fill(1);
     this.stress = Array.from({ length: 8 }, () => new Float64Array(nx));
     this.sections = new Float64Array(nx);
+    this.sectionGas = new Float64Array(nx);
     this.sound = new Float64Array(nx);
     this.recorder = new Recorder(nx);
     const view = (data: Float64Array): Field => ndarray(data, [nx, ny], [1, this.S], this.S + 1);
@@ -175,6 +177,7 @@ export class Reference implements Simulation {
     const { nx, ny, geometry, speedLimit } = this.box;
     const { f, g, S, cell, fields } = this;
     this.sections.fill(0);
+    this.sectionGas.fill(0);
     this.stress = [...this.stress.slice(4), ...this.stress.slice(0, 4)];
     let bad: Status | undefined;
     for (let y = 0; y < ny; y++) {
@@ -209,6 +212,7 @@ export class Reference implements Simulation {
         fields.uy[i] = cell.uy;
         fields.p[i] = cell.p;
         this.sections[x] += cell.ux;
+        this.sectionGas[x] += 1 - Math.min(Math.max(cell.phi, 0), 1);
         if (y < 2) this.stress[y][x] = cell.tauXY;
         if (y >= ny - 2) this.stress[2 + ny - 1 - y][x] = cell.tauXY;
         const speed = Math.hypot(cell.ux, cell.uy);
@@ -219,13 +223,22 @@ export class Reference implements Simulation {
     }
     const before = this.totalsNow[1];
     const now = this.sections.reduce((sum, ux) => sum + ux, 0) / (nx * ny);
-    this.sound.forEach((_, x) => {
-      this.sound[x] = this.box.soundDamping * (this.sections[x] / ny - now);
-    });
+    this.dampSound();
     this.totalsNow[0] = driveForce(this.box.drive, this.box.rhoLiquid, this.totalsNow[0], now, before);
     this.totalsNow[1] = now;
     this.totalsNow[2] = before;
     return bad;
+  }
+
+  /** What sound damping takes in the next step: sections without gas weigh 1, those with a fiftieth of it or more 0. */
+  private dampSound(): void {
+    const { ny, soundDamping } = this.box;
+    const weights = this.sectionGas.map((gas) => Math.max(0, 1 - (50 * gas) / ny));
+    const all = weights.reduce((sum, weight) => sum + weight, 0);
+    const reference = all > 0 ? weights.reduce((sum, weight, x) => sum + weight * this.sections[x], 0) / all : 0;
+    weights.forEach((weight, x) => {
+      this.sound[x] = (soundDamping * weight * (this.sections[x] - reference)) / ny;
+    });
   }
 
   /** Isotropic gradient (8 neighbours) and Laplacian (9 points) of phi. */

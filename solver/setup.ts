@@ -65,8 +65,9 @@ export interface Setup {
   /** A of the viscosity A (1 - phi)^8 u^4 added where gas is fast, so that its jets stay smooth; 300 by default */
   gasThickening?: number;
   /**
-   * Share per step by which the mean of ux over a section is drawn to that of all sections; 0 by default. Between sides that
-   * let nothing through they are equal in a fluid that cannot be compressed: what this damps is sound along x, and nothing else.
+   * Share per step by which the mean of ux over a section that holds liquid alone is drawn to that of all such sections; 0 by
+   * default. Between sides that let nothing through they are equal in a liquid that cannot be compressed: what this damps is
+   * sound along x, and nothing else.
    */
   soundDamping?: number;
   /** damping of velocities that change sign from step to step; 0.005 by default, in boxes with gas */

@@ -39,7 +39,7 @@ export function bulkRow<T>(y: i32, flags: i32): void {
   const keep = splat<T>(1 - omegaNumber);
   const toStress = splat<T>(0.5 * omegaNumber - 1);
   const sections = address(H.AT_SECTIONS);
-  const sound = sections + stride;
+  const sound = sections + 2 * stride;
   const driveX = entry(H.FORCE_X) + entry(H.DRIVE_FORCE);
   const driveY = entry(H.FORCE_Y);
   const halfFx = splat<T>(0.5 * driveX + tremble<T>(driveX));

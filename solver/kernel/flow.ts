@@ -1,8 +1,8 @@
 // Both collisions of one row, f and g: the formulas of collide.ts, whose text explains them, in lanes along x.
 // Form of the flow equation: momentum-based (Liang et al. 2018, Phys. Rev. E 97, 033309; from memory). It lives here alone.
 // Reads f and g of rows y - 1, y, y + 1, z and its ghosts, mask, skim, the velocities of the last two steps; writes f and g over
-// row y - 2, ux and uy, on demand phi and p (flag FIELDS) and tau (flag STRESS). Adds ux to
-// the sums of the sections and leaves the largest u^2 of the row in `topU2`.
+// row y - 2, ux and uy, on demand phi and p (flag FIELDS) and tau (flag STRESS). Adds ux
+// and gas to the sums of the sections and leaves the largest u^2 of the row in `topU2`.
 import * as H from '../header';
 import { address, entry, fieldRow, nx, row, stride, tauRow, zRow } from './rows';
 import { tremble } from './tremble';
@@ -73,7 +73,8 @@ export function collideRow<T>(y: i32, flags: i32): void {
   const gasLimit = splat<T>(entry(H.GAS_LIMIT));
   const thickening = splat<T>(entry(H.GAS_THICKENING));
   const sections = address(H.AT_SECTIONS);
-  const sound = sections + stride;
+  const sectionGas = sections + stride;
+  const sound = sections + 2 * stride;
   const three = splat<T>(3);
   const tiny = splat<T>(1e-12);
   const notDenormal = splat<T>(1e-20);
@@ -151,7 +152,8 @@ export function collideRow<T>(y: i32, flags: i32): void {
     const omega = mul<T>(fluid, mul<T>(shared, steep));
 
     // velocity: what arrives, damped, gas held back
-    const live = mul<T>(lighter, get(mask + i));
+    const fluidHere = get(mask + i);
+    const live = mul<T>(lighter, fluidHere);
     const uxRaw = mul<T>(nmad<T>(rho, get(sound + i), mad<T>(half, Fx, m10)), live);
     const uyRaw = mul<T>(mad<T>(half, Fy, m01), live);
     const bendX = add<T>(sub<T>(uxRaw, add<T>(ux1, ux1)), get(uxBefore + i));
@@ -168,6 +170,7 @@ export function collideRow<T>(y: i32, flags: i32): void {
     put(uyAt + i, uy);
     const u2 = mad<T>(ux, ux, mul<T>(uy, uy));
     put(sections + i, add<T>(get(sections + i), ux));
+    put(sectionGas + i, mad<T>(gas, fluidHere, get(sectionGas + i)));
     top = max<T>(top, u2);
 
     const uxRhoX = mul<T>(ux, rhoX);

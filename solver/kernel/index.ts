@@ -26,7 +26,7 @@ function advance<T>(steps: i32, sampleEvery: i32): i32 {
     const fields = done == steps ? FIELDS : 0;
     fillGhosts<T>(twoPhase ? 2 : 1);
     if (twoPhase) phiPass<T>();
-    memory.fill(address(H.AT_SECTIONS), 0, <usize>nx * sizeof<T>());
+    memory.fill(address(H.AT_SECTIONS), 0, stride + <usize>nx * sizeof<T>());
     for (let y = 0; y < ny; y++) collide<T>(y, fields | (y < 2 || y >= ny - 2 ? STRESS : 0), twoPhase);
     turn();
     clearSolids<T>();
@@ -57,21 +57,35 @@ function collide<T>(y: i32, flags: i32, twoPhase: bool): void {
   }
 }
 
-/** Mean of ux over all cells; what sound damping takes from each section in the next step. */
+/** Mean of ux over all cells; and what sound damping takes from the sections of liquid in the next step. */
 function meanFlux<T>(): f64 {
   const sums = address(H.AT_SECTIONS);
-  let total: f64 = 0;
-  for (let x = 0; x < nx; x++) total += <f64>load<T>(sums + <usize>x * sizeof<T>());
-  const mean = total / <f64>(nx * ny);
   const share = entry(H.SOUND_DAMPING);
+  let total: f64 = 0;
+  let ofLiquid: f64 = 0;
+  let weights: f64 = 0;
+  for (let x = 0; x < nx; x++) {
+    const at = sums + <usize>x * sizeof<T>();
+    const flux = <f64>load<T>(at);
+    const weight = liquidWeight(<f64>load<T>(at + stride));
+    total += flux;
+    ofLiquid += weight * flux;
+    weights += weight;
+  }
   if (share != 0) {
+    const reference = weights > 0 ? ofLiquid / weights : 0;
     for (let x = 0; x < nx; x++) {
       const at = sums + <usize>x * sizeof<T>();
-      store<T>(at + stride, <T>(share * (<f64>load<T>(at) / <f64>ny - mean)));
+      const weight = liquidWeight(<f64>load<T>(at + stride));
+      store<T>(at + 2 * stride, <T>(share * weight * (<f64>load<T>(at) - reference) / <f64>ny));
     }
   }
-  return mean;
+  return total / <f64>(nx * ny);
 }
+
+/** 1 for a section without gas, 0 for one with a fiftieth or more of it. */
+// @ts-ignore: decorator
+@inline function liquidWeight(gas: f64): f64 { return Math.max(0, 1 - 50 * gas / <f64>ny); }
 
 function drive(upflow: f64): void {
   const before = entry(H.UPFLOW);
