@@ -158,6 +158,8 @@ const BAD: [string, Partial<Setup>, RegExp][] = [
   ['a speed limit of nothing', { speedLimit: 0 }, /speedLimit is 0; it must be positive/],
   ['an endless speed limit', { speedLimit: Infinity }, /speedLimit is Infinity; it must be positive and finite/],
   ['gas that may not move', { gasSpeedLimit: 0 }, /gasSpeedLimit is 0; it must be positive/],
+  ['gas that turns thin', { gasThickening: -1 }, /gasThickening is -1; it must lie in 0 to 10000/],
+  ['sound that grows', { soundDamping: -0.1 }, /soundDamping is -0\.1; it must lie in 0 to 0\.1/],
   ['damping that is no number', { damping: Number.NaN }, /damping is NaN; it must lie in 0 to 0\.25/],
   ['damping that feeds', { damping: -0.01 }, /damping is -0\.01; it must lie in 0 to 0\.25/],
 ];
