@@ -12,8 +12,8 @@
  * - phi is clipped to 0..1 where rho, eta, theta and the buoyancy are made from it;
  * - fast gas is thicker, nu + A (1 - phi)^8 u^4: the jets of a pinch-off would pass the lattice's sound speed, and break up at
  *   the size of a cell before that; the wall stress is read without it;
- * - gas faster than the limit c is held back, u / sqrt(1 + (1 - phi) (u^2/c^2 - 1)): a safety net, which takes momentum and
- *   would take a seventh of the buoyancy without the line above;
+ * - gas that was faster than the limit c is held back, u / sqrt(1 + (1 - phi) (u^2/c^2 - 1)): a safety net, which takes momentum
+ *   and would take a seventh of the buoyancy without the line above;
  * - velocities that change sign in every step lose 4 damping of themselves per step (a second difference in time, which
  *   leaves steady acceleration alone).
  */
@@ -81,15 +81,13 @@ export function collideFlow(box: Box, cell: Cell): void {
   const m02 = f[2] + f[4] + diagonals;
   const m11 = f[5] - f[6] + f[7] - f[8];
 
-  let ux = (m10 + 0.5 * Fx) / rho;
-  let uy = (m01 + 0.5 * Fy) / rho;
-  ux -= cell.soundX;
+  const earlier2 = cell.ux1 ** 2 + cell.uy1 ** 2;
+  const held = 1 / Math.sqrt(1 + gas * Math.max(earlier2 * box.gasLimit - 1, 0));
+  let ux = ((m10 + 0.5 * Fx) / rho - cell.soundX) * held;
+  let uy = ((m01 + 0.5 * Fy) / rho) * held;
   if (box.twoPhase) {
     ux -= box.damping * (ux - 2 * cell.ux1 + cell.ux2);
     uy -= box.damping * (uy - 2 * cell.uy1 + cell.uy2);
-    const held = 1 / Math.sqrt(1 + gas * Math.max((ux * ux + uy * uy) * box.gasLimit - 1, 0));
-    ux *= held;
-    uy *= held;
   }
   const u2 = ux * ux + uy * uy;
   const uGradRho = ux * rhoX + uy * rhoY;
@@ -104,7 +102,6 @@ export function collideFlow(box: Box, cell: Cell): void {
   const Jy = jy - diffusing * phiY;
 
   // shear moments: relaxed
-  const earlier2 = cell.ux1 ** 2 + cell.uy1 ** 2;
   const nu = eta / rho;
   const added = box.gasThickening * gas ** 8 * earlier2 * earlier2;
   const omega = 1 / ((nu + added) / CS2 + 0.5);

@@ -144,10 +144,13 @@ export function collideRow<T>(y: i32, flags: i32): void {
     const thicker = mul<T>(mul<T>(thickening, fluid), mul<T>(gas4u2, mul<T>(gas4, earlier2)));
     const below = mad<T>(three, thicker, mad<T>(half, fluid, three));
     const steep = root<T>(mad<T>(phiX, phiX, mad<T>(phiY, phiY, tiny)));
+    const excess = max<T>(sub<T>(mul<T>(earlier2, gasLimit), one), zero);
+    const holding = root<T>(mad<T>(gas, excess, one));
     const steepBelow = mul<T>(steep, below);
-    const all = div<T>(one, mul<T>(rho, steepBelow));
+    const heavy = mul<T>(rho, holding);
+    const all = div<T>(one, mul<T>(heavy, steepBelow));
     const lighter = mul<T>(all, steepBelow);
-    const shared = mul<T>(all, rho);
+    const shared = mul<T>(all, heavy);
     const sharpness = mul<T>(mul<T>(slope, well), mul<T>(shared, below));
     const omega = mul<T>(fluid, mul<T>(shared, steep));
 
@@ -158,12 +161,8 @@ export function collideRow<T>(y: i32, flags: i32): void {
     const uyRaw = mul<T>(mad<T>(half, Fy, m01), live);
     const bendX = add<T>(sub<T>(uxRaw, add<T>(ux1, ux1)), get(uxBefore + i));
     const bendY = add<T>(sub<T>(uyRaw, add<T>(uy1, uy1)), get(uyBefore + i));
-    const uxDamped = nmad<T>(damping, bendX, uxRaw);
-    const uyDamped = nmad<T>(damping, bendY, uyRaw);
-    const excess = max<T>(sub<T>(mul<T>(mad<T>(uxDamped, uxDamped, mul<T>(uyDamped, uyDamped)), gasLimit), one), zero);
-    const held = div<T>(one, root<T>(mad<T>(gas, excess, one)));
-    const ux = mul<T>(uxDamped, held);
-    const uy = mul<T>(uyDamped, held);
+    const ux = nmad<T>(damping, bendX, uxRaw);
+    const uy = nmad<T>(damping, bendY, uyRaw);
     put(uxBefore + i, ux1);
     put(uyBefore + i, uy1);
     put(uxAt + i, ux);
