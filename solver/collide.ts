@@ -10,7 +10,7 @@
  * - J is the mass flux of the interface equation, J = rho u - drho M (1 - theta/|grad phi|) grad phi, so that mass and
  *   momentum move together;
  * - phi is clipped to 0..1 where rho, eta, theta and the buoyancy are made from it;
- * - fast gas is thicker, nu + A (1 - phi)^8 u^4: the jets of a pinch-off would pass the lattice's sound speed, and break up at
+ * - fast gas is thicker, nu + A (0.98 - phi)^8 u^4: the jets of a pinch-off would pass the lattice's sound speed, and break up at
  *   the size of a cell before that; the wall stress is read without it;
  * - gas that was faster than the limit c is held back, u / sqrt(1 + (1 - phi) (u^2/c^2 - 1)): a safety net, which takes momentum
  *   and would take a seventh of the buoyancy without the line above;
@@ -55,6 +55,9 @@ export const newCell = (): Cell => ({
   ...{ phi: 1, phiX: 0, phiY: 0, lapPhi: 0, driveX: 0, soundX: 0, skim: 0 },
   ...{ ux: 0, uy: 0, ux1: 0, uy1: 0, ux2: 0, uy2: 0, p: 0, sharpness: 0, tauXY: 0 },
 });
+
+/** gas that is not thickened: the liquid's side of an interface, and powers that would underflow there */
+const SKIN = 0.02;
 
 const clip = (phi: number): number => Math.min(Math.max(phi, 0), 1);
 
@@ -103,7 +106,7 @@ export function collideFlow(box: Box, cell: Cell): void {
 
   // shear moments: relaxed
   const nu = eta / rho;
-  const added = box.gasThickening * gas ** 8 * earlier2 * earlier2;
+  const added = box.gasThickening * Math.max(gas - SKIN, 0) ** 8 * earlier2 * earlier2;
   const omega = 1 / ((nu + added) / CS2 + 0.5);
   const eDiff = Jx * ux - Jy * uy;
   const e11 = 0.5 * (Jx * uy + Jy * ux);

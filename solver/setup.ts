@@ -62,7 +62,7 @@ export interface Setup {
   };
   /** speed above which gas, and gas alone, is held back smoothly; 0.15 by default, Infinity for none */
   gasSpeedLimit?: number;
-  /** A of the viscosity A (1 - phi)^8 u^4 added where gas is fast, so that its jets stay smooth; 300 by default */
+  /** A of the viscosity A (0.98 - phi)^8 u^4 added where gas is fast, so that its jets stay smooth; 300 by default */
   gasThickening?: number;
   /**
    * Share per step by which the mean of ux over a section that holds liquid alone is drawn to that of all such sections; 0 by
