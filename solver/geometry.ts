@@ -2,7 +2,7 @@ import { ex, ey, w } from './lattice.ts';
 import type { Setup } from './setup.ts';
 
 /** A pull from a solid cell: what leaves the fluid cell against `k` comes back along `k`. */
-export interface Link {
+interface Link {
   /** solid cell whose slot `k` is filled */
   x: number;
   y: number;
@@ -13,7 +13,7 @@ export interface Link {
 }
 
 /** A solid cell next to fluid: it carries a ghost value of phi, made from the weighted mean of its fluid neighbours. */
-export interface SolidGhost {
+interface SolidGhost {
   x: number;
   y: number;
   neighbours: { x: number; y: number; weight: number }[];

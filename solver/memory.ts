@@ -73,11 +73,16 @@ const sideCode = (side: Side): number => (side === 'periodic' ? 0 : side === 'sl
 
 function writeNumbers(box: Box, header: Float64Array): void {
   const { sides } = box.setup;
-  const names = ['left', 'right', 'bottom', 'top'] as const;
-  names.forEach((name, n) => {
-    header[H.SIDE_LEFT + n] = sideCode(sides[name]);
-    header[H.SPEED_LEFT + n] = wallSpeed(sides[name]);
-  });
+  const entries = [
+    [sides.left, H.SIDE_LEFT, H.SPEED_LEFT],
+    [sides.right, H.SIDE_RIGHT, H.SPEED_RIGHT],
+    [sides.bottom, H.SIDE_BOTTOM, H.SPEED_BOTTOM],
+    [sides.top, H.SIDE_TOP, H.SPEED_TOP],
+  ] as const;
+  for (const [side, kind, speed] of entries) {
+    header[kind] = sideCode(side);
+    header[speed] = wallSpeed(side);
+  }
   header[H.TWO_PHASE] = box.twoPhase ? 1 : 0;
   header[H.RHO_LIQUID] = box.rhoLiquid;
   header[H.RHO_GAS] = box.rhoGas;

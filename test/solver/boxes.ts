@@ -4,7 +4,7 @@ import type { Setup, Side, Simulation } from '../../solver/index.ts';
 export type Sides = Setup['sides'];
 
 /** Random numbers in 0 to 1, the same for the same seed (mulberry32, public domain). */
-export function randomNumbers(seed: number): () => number {
+function randomNumbers(seed: number): () => number {
   let state = seed >>> 0;
   return () => {
     state = (state + 0x6d2b79f5) >>> 0;
