@@ -56,13 +56,17 @@ function difference(a: Simulation, b: Simulation, samplesA: Samples, samplesB: S
       }
     }
   }
+  // wall rows are kept in f32: a difference in the last bit of f64 may turn into one of their last bit, which does not count
+  const noteRow = (value: number, other: number, place: string): void => {
+    if (Math.abs(value - other) > 2 ** -23 * Math.abs(value)) note(value, other, place);
+  };
   expect(Array.from(samplesB.steps)).toEqual(Array.from(samplesA.steps));
   for (let n = 0; n < samplesA.steps.length; n++) {
     for (const rows of ['shear', 'phi'] as const) {
       for (const side of ['left', 'right'] as const) {
         const place = `${rows} at the ${side} wall`;
         for (let x = 0; x < nx; x++)
-          note(samplesA[rows][side].get(n, x), samplesB[rows][side].get(n, x), `${place}, ${x} of ${nx} x ${ny}`);
+          noteRow(samplesA[rows][side].get(n, x), samplesB[rows][side].get(n, x), `${place}, ${x} of ${nx} x ${ny}`);
       }
     }
     note(samplesA.upflow[n], samplesB.upflow[n], `upflow sample of ${nx} x ${ny}`);
