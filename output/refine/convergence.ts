@@ -23,7 +23,7 @@ const SAME = 1e-4;
  * `same` all alike; `shrinking` the differences get smaller and keep their sign; `swinging` smaller, with changing sign;
  * `growing` and `wild` likewise, but they do not get smaller; `chance` the finer two alike, the coarsest not: no order to be had.
  */
-export type Course = 'same' | 'shrinking' | 'swinging' | 'growing' | 'wild' | 'chance';
+type Course = 'same' | 'shrinking' | 'swinging' | 'growing' | 'wild' | 'chance';
 
 /** null: not to be had, see `course`. */
 export interface Convergence {
