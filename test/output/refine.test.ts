@@ -101,6 +101,13 @@ describe('the notes beside the verdicts', () => {
     expect(text).toContain('0.2 to 12 mm on the coarsest, 0.2 to 20 mm on the finest');
   });
 
+  it('do not mind a difference of the bands within a cell of the coarsest grid, 0.4 mm', () => {
+    const skim = (from_m: number) => ({ skim: { from_m, to_m: 0.03 } });
+    const text = (from_m: number) => notes(gridRun(20, 1, skim(from_m)), gridRun(30, 1, skim(0.02)), gridRun(45, 1, skim(0.02)));
+    expect(text(0.0197)).not.toContain('The height that counts');
+    expect(text(0.0191)).toContain('The height that counts');
+  });
+
   it('say where an order is not believed', () => {
     expect(notes(gridRun(20, 1.21), gridRun(30, 1.01), gridRun(45, 1))).toContain('verdicts take order 2');
   });
