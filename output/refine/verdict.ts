@@ -43,7 +43,7 @@ export function verdictOn(convergence: Convergence | undefined, asked: Question)
       const capped = order > BELIEVED_ORDER ? ` at order ${BELIEVED_ORDER}` : '';
       if (course === 'swinging') return { state: 'oscillating', says: `oscillating, index ${percent(error)}${capped}`, error };
       if (extrapolated !== null && (extrapolated < asked.range.least || extrapolated > asked.range.most)) {
-        return { state: 'not yet', says: `not yet: ${inDigits(extrapolated)}, where it leads to, cannot be`, error };
+        return { state: 'not yet', says: `not yet: leads to ${inDigits(extrapolated, 3)}, which cannot be`, error };
       }
       return error <= asked.within
         ? { state: 'converged', says: `converged within ${percent(error)}${capped}`, error }
@@ -61,6 +61,6 @@ function percent(share: number): string {
   return value > 100 ? 'over 100 %' : value < 0.1 ? 'below 0.1 %' : `${inDigits(value)} %`;
 }
 
-function inDigits(value: number): string {
-  return String(Number(value.toPrecision(2)));
+function inDigits(value: number, digits = 2): string {
+  return String(Number(value.toPrecision(digits)));
 }

@@ -65,7 +65,7 @@ describe('the verdict on three grids', () => {
 
   it('is no convergence where the values lead to a share above one, though a stress may go there', () => {
     expect(verdicts(0.84, 0.94, 0.99)).toMatchObject({
-      share: { state: 'not yet', says: 'not yet: 1, where it leads to, cannot be' },
+      share: { state: 'not yet', says: 'not yet: leads to 1.04, which cannot be' },
       shear: { state: 'not yet', says: expect.stringContaining('index') },
     });
   });
