@@ -6,7 +6,7 @@ import { createSimulation, type Setup, type Simulation } from '../../../solver/i
 import { advance, airBeside, CLOSED, fastest, PERIODIC, profile } from '../channel.ts';
 import { type Check, row } from '../row.ts';
 
-export const [W, SIGMA] = [5, 0.0032];
+const [W, SIGMA] = [5, 0.0032];
 
 /** In a box of 4 R cells a side; off the lattice on purpose. */
 export function bubble(R: number, viscosity: number, sides: Setup['sides'] = PERIODIC): Promise<Simulation> {
@@ -20,7 +20,7 @@ export function bubble(R: number, viscosity: number, sides: Setup['sides'] = PER
 }
 
 /** p in the middle less p in the far corner, over sigma/R of the circle of the same area. */
-export function jump(s: Simulation): number {
+function jump(s: Simulation): number {
   const { nx, ny } = s.setup;
   const radius = Math.sqrt(s.totals().gasArea / Math.PI);
   return (s.pressure.get(nx / 2, ny / 2) - s.pressure.get(0, 0)) / (SIGMA / radius);
@@ -46,7 +46,7 @@ export async function resting(R: number, settling: number): Promise<{ jump: numb
 }
 
 /** Gas area after so many steps with the viscosity of water, in f32 in a closed box, over that at the start. */
-export async function areaKept(steps: number): Promise<number> {
+async function areaKept(steps: number): Promise<number> {
   const s = await bubble(20, 6.7e-4, CLOSED);
   const before = s.totals().gasArea;
   advance(s, steps);

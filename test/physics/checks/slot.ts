@@ -76,12 +76,12 @@ export async function longBubble(H: number, Re = 200): Promise<{ froude: number;
   return { froude: (nose - from) / (s.step - since) / Math.sqrt(g * H), film: -shear.left.get(0, at) / (g * delta), delta };
 }
 
-/** Rise of a bubble 2 H long, in H, during the time in which 0.01 sqrt(gH) would carry it 1 H; `bond` is rho g H^2/sigma. */
-export async function stalled(H: number, bond: number): Promise<number> {
+/** Rise of a bubble 2 H long, in H, during the time in which `pace` sqrt(gH) would carry it 1 H; `bond` is rho g H^2/sigma. */
+export async function stalled(H: number, bond: number, pace = 0.01): Promise<number> {
   const [sigma, viscosity] = [0.01, 0.05];
   const g = (bond * sigma) / (H * H);
   const s = await slot({ H, length: 5, tail: 1, nose: 3, film: 3, viscosity, sigma, g, gas: airBeside(viscosity) });
-  const time = Math.round(H / (0.01 * Math.sqrt(g * H)));
+  const time = Math.round(H / (pace * Math.sqrt(g * H)));
   advance(s, time);
   const from = noseOf(s);
   advance(s, time);

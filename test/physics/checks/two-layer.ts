@@ -6,7 +6,8 @@ import { createSimulation } from '../../../solver/index.ts';
 import { CHANNEL, meanOf, profile, settle } from '../channel.ts';
 import { type Check, row } from '../row.ts';
 
-export const [W, ETA, G] = [5, 0.1, 1e-6];
+export const [ETA, G] = [0.1, 1e-6];
+const W = 5;
 
 /**
  * Wall shear at the liquid's wall by the 1-D equation with 1/eta linear in phi, u = 0 at both walls: tau(s) = tau_w - G s, so
