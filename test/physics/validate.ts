@@ -46,8 +46,10 @@ async function runAll(names: string[], long: boolean): Promise<Row[]> {
     for (let name = waiting.shift(); name !== undefined; name = waiting.shift()) {
       const check = name;
       const start = performance.now();
-      results.set(check, await inThread({ name, long }).catch((error: unknown) => [broken(check, error)]));
-      process.stderr.write(`${check} done in ${((performance.now() - start) / 1000).toFixed(0)} s\n`);
+      const rows = await inThread({ name, long }).catch((error: unknown) => [broken(check, error)]);
+      results.set(check, rows);
+      const verdicts = rows.map(({ verdict }) => verdict).join(', ');
+      process.stderr.write(`${check}, ${((performance.now() - start) / 1000).toFixed(0)} s: ${verdicts}\n`);
     }
   };
   await Promise.all(Array.from({ length: Math.min(availableParallelism(), names.length) }, lane));
@@ -57,7 +59,10 @@ async function runAll(names: string[], long: boolean): Promise<Row[]> {
 async function intoReadme(rows: Row[]): Promise<void> {
   const text = existsSync('README.md') ? readFileSync('README.md', 'utf8') : '';
   const [from, to] = MARKS.map((mark) => text.indexOf(mark));
-  if (from === -1 || to < from) throw new Error(`README.md has no ${MARKS.join(' ... ')}; set the two markers on lines of their own`);
+  if (from === -1 || to < from) {
+    process.stderr.write(`README.md left as it is: it has no ${MARKS.join(' ... ')}; set the two markers on lines of their own\n`);
+    return;
+  }
   await writeFileAtomic('README.md', `${text.slice(0, from + MARKS[0].length)}\n${markdownTable(rows)}\n${text.slice(to)}`);
 }
 

@@ -49,18 +49,20 @@ function noseOf(s: Simulation): number {
 }
 
 /**
- * Long bubble in a slot of 20 mm with the surface tension of water, rho g H^2/sigma = 54, but ten times as thick, UH/nu = `Re` = 200; 0.23 sqrt(gH) holds from 50 and 100 on, and the film is 0.07 H instead of 0.03 H thick. The gas is softened, 50:1 and 5:1: in a
- * column of air 4.5 H high the pressure falls by more than its rho CS2 as it rises, which the lattice answers with divergence.
+ * Long bubble in a slot of 20 mm with the surface tension of water, rho g H^2/sigma = 54, but ten times as thick, UH/nu = 200:
+ * 0.23 sqrt(gH) holds from 50 and 100 on, and the film is 0.07 H thick where water's would be 0.03 H. With UH/nu = 500 the tail
+ * breaks up within a rise of H/2 and the bubble with it. The gas is softened, 50:1 and 5:1: in a column of air 4.5 H high the
+ * pressure falls by more than its rho CS2 as it rises, which the lattice answers with divergence.
  * @returns U over sqrt(gH) once the nose has gone 1.2 H, over the next 1.5 H; shear over rho g delta and delta (cells), 3 H below the nose
  */
-export async function longBubble(H: number, Re = 200): Promise<{ froude: number; film: number; delta: number }> {
+export async function longBubble(H: number): Promise<{ froude: number; film: number; delta: number }> {
   // 0.1 m/s at the lattice velocity 0.005
   const dx_m = 0.02 / H;
   const dt_s = (dx_m * 0.005) / 0.1;
   const g = (9.80665 * dt_s ** 2) / dx_m;
   const sigma = (0.072736 * dt_s ** 2) / (998.207 * dx_m ** 3);
   const speed = 0.23 * Math.sqrt(g * H);
-  const viscosity = (speed * H) / Re;
+  const viscosity = (speed * H) / 200;
   const gas = { density: 0.02, viscosity: viscosity / 5 };
   const s = await slot({ H, length: 9, tail: 0.5, nose: 5, film: H / 10, viscosity, sigma, g, gas });
   const start = noseOf(s);
