@@ -3,7 +3,7 @@
 import * as H from '../header';
 import { address, entry, fieldRow, nx, row, stride, tauRow } from './rows';
 import { tremble } from './tremble';
-import { add, get, largest, mad, max, mul, nmad, put, splat, sub } from './vector';
+import { add, atLeast, get, largest, mad, mul, nmad, put, splat, sub } from './vector';
 import { FIELDS, STRESS } from './flow';
 
 export let bulkTopU2: f64 = 0;
@@ -45,6 +45,7 @@ export function bulkRow<T>(y: i32, flags: i32): void {
   const halfFx = splat<T>(0.5 * driveX + tremble<T>(driveX));
   const halfFy = splat<T>(0.5 * driveY + tremble<T>(driveY));
   let top = splat<T>(0);
+  let energy = splat<T>(0);
 
   const end = <usize>nx * size;
   let i: usize = 0;
@@ -77,7 +78,8 @@ export function bulkRow<T>(y: i32, flags: i32): void {
     const rhoU2 = add<T>(xx, yy);
     const u2 = mad<T>(ux, ux, mul<T>(uy, uy));
     put(sections + i, add<T>(get(sections + i), ux));
-    top = max<T>(top, u2);
+    top = atLeast<T>(top, u2);
+    energy = add<T>(energy, u2);
     const moving = add<T>(add<T>(x13, y24), add<T>(b57, b86));
     const p = mul<T>(splat<T>(0.6), nmad<T>(twoThirds, rhoU2, moving));
 
@@ -119,5 +121,5 @@ export function bulkRow<T>(y: i32, flags: i32): void {
     if (flags & STRESS) put(tauOut + i, mul<T>(toStress, n11));
     i += 16;
   } while (i < end);
-  bulkTopU2 = largest<T>(top);
+  bulkTopU2 = largest<T>(top, energy);
 }

@@ -6,7 +6,7 @@
 import * as H from '../header';
 import { address, entry, fieldRow, nx, row, stride, tauRow, zRow } from './rows';
 import { tremble } from './tremble';
-import { add, div, get, largest, mad, max, min, mul, nmad, put, root, splat, sub } from './vector';
+import { add, atLeast, atMost, div, get, largest, mad, mul, nmad, put, root, splat, sub } from './vector';
 
 export const FIELDS: i32 = 1;
 export const STRESS: i32 = 2;
@@ -104,6 +104,7 @@ export function collideRow<T>(y: i32, flags: i32): void {
   const tiny = splat<T>(1e-12);
   const notDenormal = splat<T>(1e-20);
   let top = zero;
+  let energy = zero;
 
   const end = <usize>nx * size;
   let i: usize = 0;
@@ -126,7 +127,7 @@ export function collideRow<T>(y: i32, flags: i32): void {
     const corners = add<T>(add<T>(zNE, zSW), add<T>(zSE, zNW));
     const lap6 = add<T>(mul<T>(splat<T>(4), axes), nmad<T>(splat<T>(20), z, corners));
     const phi = add<T>(one, z);
-    const inside = min<T>(max<T>(phi, zero), one);
+    const inside = atMost<T>(atLeast<T>(phi, zero), one);
     const gas = sub<T>(one, inside);
     const well = mul<T>(inside, gas);
 
@@ -163,14 +164,14 @@ export function collideRow<T>(y: i32, flags: i32): void {
     const ux1 = get(uxAt + i);
     const uy1 = get(uyAt + i);
     const earlier2 = mad<T>(ux1, ux1, mul<T>(uy1, uy1));
-    const core = max<T>(sub<T>(gas, skin), zero);
+    const core = atLeast<T>(sub<T>(gas, skin), zero);
     const core2 = mul<T>(core, core);
     const core4 = mul<T>(core2, core2);
     const core4u2 = mul<T>(core4, earlier2);
     const thicker = mul<T>(mul<T>(thickening, fluid), mul<T>(core4u2, core4u2));
     const below = mad<T>(three, thicker, mad<T>(half, fluid, three));
     const steep = root<T>(mad<T>(phiX, phiX, mad<T>(phiY, phiY, tiny)));
-    const excess = max<T>(sub<T>(mul<T>(earlier2, gasLimit), one), zero);
+    const excess = atLeast<T>(sub<T>(mul<T>(earlier2, gasLimit), one), zero);
     const holding = root<T>(mad<T>(gas, excess, one));
     const steepBelow = mul<T>(steep, below);
     const heavy = mul<T>(rho, holding);
@@ -196,7 +197,8 @@ export function collideRow<T>(y: i32, flags: i32): void {
     const u2 = mad<T>(ux, ux, mul<T>(uy, uy));
     put(sections + i, add<T>(get(sections + i), ux));
     put(sectionGas + i, mad<T>(gas, fluidHere, get(sectionGas + i)));
-    top = max<T>(top, u2);
+    top = atLeast<T>(top, u2);
+    energy = add<T>(energy, u2);
 
     const uxRhoX = mul<T>(ux, rhoX);
     const uyRhoY = mul<T>(uy, rhoY);
@@ -311,5 +313,5 @@ export function collideRow<T>(y: i32, flags: i32): void {
     put(r8 + i, add<T>(gEven68, gOdd68));
     i += 16;
   } while (i < end);
-  topU2 = largest<T>(top);
+  topU2 = largest<T>(top, energy);
 }

@@ -17,10 +17,12 @@
 @inline export function nmad<T>(a: v128, b: v128, c: v128): v128 { return v128.sub<T>(c, v128.mul<T>(a, b)); }
 // @ts-ignore: decorator
 @inline export function root<T>(a: v128): v128 { return v128.sqrt<T>(a); }
+/** b where a < b, else a: one instruction, where `v128.max` takes seven for its care of what is not a number */
 // @ts-ignore: decorator
-@inline export function max<T>(a: v128, b: v128): v128 { return v128.max<T>(a, b); }
+@inline export function atLeast<T>(a: v128, b: v128): v128 { return v128.pmax<T>(a, b); }
+/** b where b < a, else a */
 // @ts-ignore: decorator
-@inline export function min<T>(a: v128, b: v128): v128 { return v128.min<T>(a, b); }
+@inline export function atMost<T>(a: v128, b: v128): v128 { return v128.pmin<T>(a, b); }
 // @ts-ignore: decorator
 @inline export function splat<T>(a: f64): v128 { return v128.splat<T>(<T>a); }
 // @ts-ignore: decorator
@@ -35,9 +37,9 @@ export function total<T>(a: v128): f64 {
   return sum;
 }
 
-/** Largest lane; not a number where one is not. */
-export function largest<T>(a: v128): f64 {
-  let top = f64.max(<f64>v128.extract_lane<T>(a, 0), <f64>v128.extract_lane<T>(a, 1));
-  if (sizeof<T>() == 4) top = f64.max(top, f64.max(<f64>v128.extract_lane<T>(a, 2), <f64>v128.extract_lane<T>(a, 3)));
-  return top;
+/** Largest lane of `top`; not a number where a lane of `sum`, which such numbers stick to, is none. */
+export function largest<T>(top: v128, sum: v128): f64 {
+  let most = f64.max(<f64>v128.extract_lane<T>(top, 0), <f64>v128.extract_lane<T>(top, 1));
+  if (sizeof<T>() == 4) most = f64.max(most, f64.max(<f64>v128.extract_lane<T>(top, 2), <f64>v128.extract_lane<T>(top, 3)));
+  return most + 0 * total<T>(sum);
 }
