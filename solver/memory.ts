@@ -1,6 +1,7 @@
-import { type Box, wallSpeed } from './box.ts';
+import type { Box } from './box.ts';
 import * as H from './header.ts';
 import type { Side } from './setup.ts';
+import { wallSpeed } from './walls.ts';
 
 /** First byte the host gives out: the header lies at 0, the kernel's own statics at 65536. */
 const FIRST = 131072;
@@ -98,10 +99,7 @@ function writeNumbers(box: Box, header: Float64Array): void {
   header[H.GRAVITY_X] = box.gravityX;
   header[H.GRAVITY_Y] = box.gravityY;
   header[H.SPEED_LIMIT] = box.speedLimit;
-  header[H.GAS_LIMIT] = box.gasLimit;
-  header[H.DAMPING] = box.damping;
   header[H.MOBILITY] = box.mobility;
-  header[H.GAS_THICKENING] = box.gasThickening;
   header[H.SOUND_DAMPING] = box.soundDamping;
   header[H.DRIVE_KIND] = box.drive === undefined ? 0 : box.drive.kind === 'loss' ? 1 : 2;
   header[H.DRIVE_VALUE] = box.drive === undefined ? 0 : box.drive.kind === 'loss' ? box.drive.coefficient : box.drive.target;

@@ -1,15 +1,19 @@
 import type { Box } from './box.ts';
-import { fromMoments } from './collide.ts';
+import { fromMoments, velocityMoments } from './collide.ts';
 import { CS2 } from './constants.ts';
 
 /** Equilibrium populations of a cell: f, and g less w. */
 export function equilibriumState(box: Box, phi: number, ux: number, uy: number, p: number): { f: Float64Array; g: Float64Array } {
-  const rho = box.rhoGas + phi * (box.rhoLiquid - box.rhoGas);
+  const rho = box.rhoLiquid;
   const u2 = ux * ux + uy * uy;
   const f = new Float64Array(9);
   const g = new Float64Array(9);
-  const [jx, jy] = [rho * ux, rho * uy];
-  fromMoments(f, 0, jx, jy, p + jx * ux, p + jy * uy, jx * uy, CS2 * jy, CS2 * jx, CS2 * (p + rho * u2));
+  if (box.twoPhase) {
+    velocityMoments(f, (3 * p) / rho, p / rho, ux, uy, 0, 0);
+  } else {
+    const [jx, jy] = [rho * ux, rho * uy];
+    fromMoments(f, 0, jx, jy, p + jx * ux, p + jy * uy, jx * uy, CS2 * jy, CS2 * jx, CS2 * (p + rho * u2));
+  }
   const z = phi - 1;
   const [kx, ky] = [phi * ux, phi * uy];
   fromMoments(g, z, kx, ky, CS2 * z + kx * ux, CS2 * z + ky * uy, kx * uy, CS2 * ky, CS2 * kx, CS2 * (CS2 * z + phi * u2));
