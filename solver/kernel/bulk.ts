@@ -1,10 +1,12 @@
 // The flow collision of one row of a box that holds liquid alone: flow.ts with phi = 1 and no gradients.
 // Reads f of rows y - 1, y, y + 1 and mask; writes f over row y - 2, ux and uy, and on demand p and tau.
 import * as H from '../header';
-import { address, entry, fieldRow, nx, row, stride, tauRow } from './rows';
+import { address, entry, fieldRow, nx, row, stride } from './rows';
 import { tremble } from './tremble';
 import { add, get, largest, mad, max, mul, nmad, put, splat, sub } from './vector';
-import { FIELDS, STRESS } from './flow';
+
+export const FIELDS: i32 = 1;
+export const STRESS: i32 = 2;
 
 export let bulkTopU2: f64 = 0;
 
@@ -26,7 +28,7 @@ export function bulkRow<T>(y: i32, flags: i32): void {
   const uxOut = fieldRow(H.AT_UX, y);
   const uyOut = fieldRow(H.AT_UY, y);
   const pOut = fieldRow(H.AT_P, y);
-  const tauOut = tauRow(y);
+  const tauOut = fieldRow(H.AT_TAU, y);
 
   const density = entry(H.RHO_LIQUID);
   const omegaNumber = 1 / (3 / (density * entry(H.FLUIDITY_LIQUID)) + 0.5);

@@ -35,7 +35,7 @@ function awkwardSetup(nx: number, ny: number, sides: Sides, twoPhase: boolean, p
     skim: Float64Array.from({ length: nx }, (_, x) => (x > nx - 3 ? 0.05 : 0)),
     initial: randomState(nx, ny, seed),
     // the aids for runs at high ratios, strong enough here to act on these slow states
-    ...{ gasSpeedLimit: 0.02, gasThickening: 1e4, damping: 0.05, soundDamping: 0.02 },
+    soundDamping: 0.02,
     speedLimit: 10,
     precision,
   };
