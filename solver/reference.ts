@@ -115,6 +115,7 @@ export class Reference implements Simulation {
         fillReturns(this.box, this.f, 'flow');
         fillReturns(this.box, this.g, 'interface');
         this.arrivals();
+        this.dampSound();
         this.fillPhiGhosts();
         this.pressures();
       } else fillGhosts(this.box, this.f);
@@ -135,6 +136,8 @@ export class Reference implements Simulation {
     const { phi } = this.fields;
     let gas = 0;
     let skimmed = 0;
+    this.sections.fill(0);
+    this.sectionGas.fill(0);
     for (let y = 0; y < ny; y++) {
       for (let x = 0; x < nx; x++) {
         const i = this.at(x, y);
@@ -150,6 +153,8 @@ export class Reference implements Simulation {
         this.fields.sum[i] = sum;
         [this.fields.mx[i], this.fields.my[i]] = firstMoment(this.cell.f);
         if (geometry.fluid[y * nx + x] === 0) continue;
+        this.sections[x] += this.fields.mx[i];
+        this.sectionGas[x] += 1 - clip(1 + z);
         gas -= z * (1 - skim[x]);
         skimmed -= z * skim[x];
       }
@@ -205,8 +210,8 @@ export class Reference implements Simulation {
   private cells(): Status | undefined {
     const { nx, ny, geometry, speedLimit } = this.box;
     const { f, g, S, cell, fields } = this;
-    this.sections.fill(0);
-    this.sectionGas.fill(0);
+    let upflow = 0;
+    if (!this.box.twoPhase) this.sections.fill(0);
     let bad: Status | undefined;
     for (let y = 0; y < ny; y++) {
       for (let x = 0; x < nx; x++) {
@@ -233,8 +238,8 @@ export class Reference implements Simulation {
         fields.ux[i] = cell.ux;
         fields.uy[i] = cell.uy;
         fields.p[i] = cell.p;
-        this.sections[x] += cell.ux;
-        this.sectionGas[x] += 1 - Math.min(Math.max(cell.phi, 0), 1);
+        if (!this.box.twoPhase) this.sections[x] += cell.ux;
+        upflow += cell.ux;
         if (y < 2) this.stress[y][x] = cell.tauXY;
         if (y >= ny - 2) this.stress[2 + ny - 1 - y][x] = cell.tauXY;
         const speed = Math.hypot(cell.ux, cell.uy);
@@ -244,15 +249,18 @@ export class Reference implements Simulation {
       }
     }
     const before = this.totalsNow[1];
-    const now = this.sections.reduce((sum, ux) => sum + ux, 0) / (nx * ny);
-    this.dampSound();
+    const now = upflow / (nx * ny);
+    if (!this.box.twoPhase) this.dampSound();
     this.totalsNow[0] = driveForce(this.box.drive, this.box.rhoLiquid, this.totalsNow[0], now, before);
     this.totalsNow[1] = now;
     this.totalsNow[2] = before;
     return bad;
   }
 
-  /** What sound damping takes in the next step: sections without gas weigh 1, those with a fiftieth of it or more 0. */
+  /**
+   * What sound damping takes from ux: with gas in this very step, from what arrives, since what is taken a step late feeds velocities
+   * that change sign in every step; without gas in the next one. Sections without gas weigh 1, those with a fiftieth of it or more 0.
+   */
   private dampSound(): void {
     const { ny, soundDamping } = this.box;
     const weights = this.sectionGas.map((gas) => Math.max(0, 1 - (50 * gas) / ny));

@@ -1,13 +1,15 @@
 // What arrives at every cell of a box with gas, taken in before any row is written: z = phi - 1, the sum of the g that arrive
 // (each less its w), and the first moment of g; the velocity m, the sum of f, and the second moments of f less m m.
-// Reads f, g, mask, skim. Adds up the gas area and the gas that the collision will skim.
+// Reads f, g, mask, skim. Adds m and gas to the sums of the sections, and adds up the gas area and the gas that the collision will skim.
 import * as H from '../header';
 import { address, entry, fieldRow, nx, ny, row, setEntry, stride, zRow } from './rows';
-import { add, get, mad, mul, nmad, put, splat, sub, total } from './vector';
+import { add, get, mad, max, min, mul, nmad, put, splat, sub, total } from './vector';
 
 export function arrive<T>(): void {
   const size = sizeof<T>();
   const skim = address(H.AT_SKIM);
+  const sections = address(H.AT_SECTIONS);
+  const sectionGas = sections + stride;
   let less: f64 = 0;
   let skimmed: f64 = 0;
   for (let y = 0; y < ny; y++) {
@@ -32,6 +34,8 @@ export function arrive<T>(): void {
     const n11Out = fieldRow(H.AT_N11, y);
     const j10Out = fieldRow(H.AT_J10, y);
     const j01Out = fieldRow(H.AT_J01, y);
+    const zero = splat<T>(0);
+    const one = splat<T>(1);
     let gasLanes = splat<T>(0);
     let skimLanes = splat<T>(0);
     const end = <usize>nx * size;
@@ -75,7 +79,11 @@ export function arrive<T>(): void {
       const diagonals = add<T>(add<T>(w5, w7), add<T>(w6, w8));
       const z = add<T>(add<T>(get(here + nine + i), axes), diagonals);
       put(zOut + i, z);
-      const counted = mul<T>(z, get(mask + i));
+      const fluid = get(mask + i);
+      const counted = mul<T>(z, fluid);
+      put(sections + i, mad<T>(mx, fluid, get(sections + i)));
+      const gas = min<T>(max<T>(sub<T>(zero, z), zero), one);
+      put(sectionGas + i, mad<T>(gas, fluid, get(sectionGas + i)));
       gasLanes = add<T>(gasLanes, counted);
       skimLanes = mad<T>(counted, get(skim + i), skimLanes);
       i += 16;

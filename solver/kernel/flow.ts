@@ -54,7 +54,6 @@ export function collideRow<T>(y: i32, flags: i32): void {
   const uyAt = fieldRow(H.AT_UY, y);
   const phiOut = fieldRow(H.AT_PHI, y);
   const sections = address(H.AT_SECTIONS);
-  const sectionGas = sections + stride;
   const sound = sections + 2 * stride;
 
   const rhoLiquid = entry(H.RHO_LIQUID);
@@ -178,7 +177,6 @@ export function collideRow<T>(y: i32, flags: i32): void {
     const yy = mul<T>(uy, uy);
     const u2 = add<T>(xx, yy);
     put(sections + i, add<T>(get(sections + i), ux));
-    put(sectionGas + i, mad<T>(gas, fluid, get(sectionGas + i)));
     top = max<T>(top, u2);
 
     // coupling of pressure

@@ -26,18 +26,21 @@ function advance<T>(steps: i32, sampleEvery: i32): i32 {
     const step = <i64>entry(H.STEP) + 1;
     const sampling = sampleEvery > 0 && step % <i64>sampleEvery == 0;
     const fields = done == steps ? FIELDS : 0;
+    clearSections<T>();
     if (twoPhase) {
       fillReturns<T>();
       arrive<T>();
+      dampSound<T>();
+      clearSections<T>();
       fillPhiGhosts<T>();
       press<T>();
     } else fillGhosts<T>();
-    memory.fill(address(H.AT_SECTIONS), 0, stride + <usize>nx * sizeof<T>());
     for (let y = 0; y < ny; y++) collide<T>(y, fields | (y < 2 || y >= ny - 2 ? STRESS : 0), twoPhase);
     if (!twoPhase) turn();
     clearSolids<T>();
     setEntry(H.STEP, <f64>step);
     drive(meanFlux<T>());
+    if (!twoPhase) dampSound<T>();
     if (sampling) sample<T>();
   }
   return done;
@@ -63,30 +66,38 @@ function collide<T>(y: i32, flags: i32, twoPhase: bool): void {
   }
 }
 
-/** Mean of ux over all cells; and what sound damping takes from the sections of liquid in the next step. */
+function clearSections<T>(): void { memory.fill(address(H.AT_SECTIONS), 0, stride + <usize>nx * sizeof<T>()); }
+
+/** Mean of ux over all cells. */
 function meanFlux<T>(): f64 {
   const sums = address(H.AT_SECTIONS);
-  const share = entry(H.SOUND_DAMPING);
   let total: f64 = 0;
+  for (let x = 0; x < nx; x++) total += <f64>load<T>(sums + <usize>x * sizeof<T>());
+  return total / <f64>(nx * ny);
+}
+
+/**
+ * What sound damping takes from the sections of liquid: with gas in this very step, from what arrives, since what is taken a step late
+ * feeds velocities that change sign in every step; without gas in the next one, where viscosity takes care of those.
+ */
+function dampSound<T>(): void {
+  const share = entry(H.SOUND_DAMPING);
+  if (share == 0) return;
+  const sums = address(H.AT_SECTIONS);
   let ofLiquid: f64 = 0;
   let weights: f64 = 0;
   for (let x = 0; x < nx; x++) {
     const at = sums + <usize>x * sizeof<T>();
-    const flux = <f64>load<T>(at);
     const weight = liquidWeight(<f64>load<T>(at + stride));
-    total += flux;
-    ofLiquid += weight * flux;
+    ofLiquid += weight * <f64>load<T>(at);
     weights += weight;
   }
-  if (share != 0) {
-    const reference = weights > 0 ? ofLiquid / weights : 0;
-    for (let x = 0; x < nx; x++) {
-      const at = sums + <usize>x * sizeof<T>();
-      const weight = liquidWeight(<f64>load<T>(at + stride));
-      store<T>(at + 2 * stride, <T>(share * weight * (<f64>load<T>(at) - reference) / <f64>ny));
-    }
+  const reference = weights > 0 ? ofLiquid / weights : 0;
+  for (let x = 0; x < nx; x++) {
+    const at = sums + <usize>x * sizeof<T>();
+    const weight = liquidWeight(<f64>load<T>(at + stride));
+    store<T>(at + 2 * stride, <T>(share * weight * (<f64>load<T>(at) - reference) / <f64>ny));
   }
-  return total / <f64>(nx * ny);
 }
 
 /** 1 for a section without gas, 0 for one with a fiftieth or more of it. */
