@@ -84,7 +84,6 @@ export function resolve(setup: Setup): Box {
   // mu grad(phi) with the gradient and the Laplacian of the grid pulls 16/(15 W^2) less than sigma: both are h^2/6 and h^2/12 short
   // in the second derivative, and the tanh profile has int phi''^2 / int phi'^2 = 16/(5 W^2)
   const onGrid = sigma / (1 - 16 / (15 * W * W));
-  if (twoPhase) for (const fluid of [setup.liquid, gas]) checkExplicit(fluid);
   const solids = geometry(setup);
   const buoyancy = finite('buoyancy', setup.buoyancy ?? 1);
   return {
@@ -111,16 +110,19 @@ export function resolve(setup: Setup): Box {
     skim: Float64Array.from({ length: nx }, (_, x) => share(setup.skim?.[x] ?? 0)),
     soundDamping: within('soundDamping', setup.soundDamping ?? 0, 0, 0.1, '0 to 0.1'),
     speedLimit: positive('speedLimit', setup.speedLimit ?? 0.4),
-    nu0: (NU0_SHARE * setup.liquid.viscosity) / setup.liquid.density,
+    nu0: twoPhase ? sharedViscosity(setup.liquid, gas) : 0,
     geometry: solids,
     walls: walls(setup, solids.fluid),
   };
 }
 
-/** The viscous force of a box with gas is explicit: neighbours overshoot beyond this kinematic viscosity. */
-function checkExplicit({ density, viscosity }: Fluid): void {
-  const nu = viscosity / density;
-  if (nu > NU_LIMIT) fail(`viscosity/density is ${nu}; it must be at most ${NU_LIMIT} in a box with gas (shorten the step)`);
+/** nu0 of a box with gas, whose viscous force is explicit: neighbours overshoot beyond a kinematic viscosity of 1/6. */
+function sharedViscosity(liquid: Fluid, gas: Fluid): number {
+  for (const [name, { density, viscosity }] of Object.entries({ liquid, gas })) {
+    const nu = viscosity / density;
+    if (nu > NU_LIMIT) fail(`${name}.viscosity / ${name}.density is ${nu}; it must be at most ${NU_LIMIT} in a box with gas`);
+  }
+  return (NU0_SHARE * liquid.viscosity) / liquid.density;
 }
 
 function share(value: number): number {

@@ -263,6 +263,7 @@ export class Reference implements Simulation {
    */
   private dampSound(): void {
     const { ny, soundDamping } = this.box;
+    if (soundDamping === 0) return;
     const weights = this.sectionGas.map((gas) => Math.max(0, 1 - (50 * gas) / ny));
     const all = weights.reduce((sum, weight) => sum + weight, 0);
     const reference = all > 0 ? weights.reduce((sum, weight, x) => sum + weight * this.sections[x], 0) / all : 0;
