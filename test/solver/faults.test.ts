@@ -33,7 +33,13 @@ describe('a run that leaves its range', () => {
       // u = G (step - 1/2) / rho in one phase, G step / rho with gas: step 67 is the first above 0.099 in both
       const setup: Setup = { ...box, force: { x: 0, y: 0.0015 }, speedLimit: 0.099 + 1e-9 };
       const { kernel, reference } = await statuses(setup, 100);
-      expect(kernel).toEqual({ kind: 'tooFast', step: 67, x: 0, y: 0, speed: expect.closeTo(phases === 'one phase' ? 0.09975 : 0.1005, 8) });
+      expect(kernel).toEqual({
+        kind: 'tooFast',
+        step: 67,
+        x: 0,
+        y: 0,
+        speed: expect.closeTo(phases === 'one phase' ? 0.09975 : 0.1005, 8),
+      });
       expect(reference).toMatchObject({ kind: 'tooFast', step: 67, x: 0, y: 0 });
     });
 
