@@ -29,11 +29,17 @@ export interface FlowFields {
   P: Float64Array;
 }
 
+/** phi this close to 0 or 1 counts as pure gas or liquid where densities and viscosities are made of it: liquid is left alone there */
+const PURE = 0.002;
+
 export const clip = (phi: number): number => Math.min(Math.max(phi, 0), 1);
 
-export const density = (box: Box, phi: number): number => box.rhoGas + clip(phi) * (box.rhoLiquid - box.rhoGas);
+/** Share of liquid, 0 to 1. */
+export const share = (phi: number): number => clip((phi - PURE) / (1 - 2 * PURE));
 
-export const viscosity = (box: Box, phi: number): number => 1 / (box.fluidityGas + clip(phi) * (box.fluidityLiquid - box.fluidityGas));
+export const density = (box: Box, phi: number): number => box.rhoGas + share(phi) * (box.rhoLiquid - box.rhoGas);
+
+export const viscosity = (box: Box, phi: number): number => 1 / (box.fluidityGas + share(phi) * (box.fluidityLiquid - box.fluidityGas));
 
 /** Index into P of the cell with index i of the other fields. */
 export const wideIndex = (box: Box, i: number): number => i + box.nx + 5 + 2 * Math.floor(i / (box.nx + 2));
@@ -45,7 +51,7 @@ export function pressureUpdate(box: Box, fields: FlowFields, i: number, p: numbe
   let least = 1;
   for (const row of [i - S, i, i + S]) for (let j = row - 1; j <= row + 1; j++) least = Math.min(least, phi[j]);
   const change = (density(box, least) / 3) * (fields.sum[i] - (3 * p) / box.rhoLiquid);
-  const liquid = clip(phi[i]) ** 4;
+  const liquid = share(phi[i]) ** 4;
   return [p + change, p + (1 + SOUND_FRICTION * (1 - liquid)) * change];
 }
 

@@ -13,7 +13,7 @@ import ndarray from 'ndarray';
 import { type Box, driveForce, resolve } from './box.ts';
 import { type Cell, collideInterface, collideLiquid, collideVelocity, firstMoment, newCell } from './collide.ts';
 import { Q } from './constants.ts';
-import { clip, coupling, type FlowFields, kick, pressureUpdate, viscosity, wideIndex } from './forces.ts';
+import { clip, coupling, type FlowFields, kick, pressureUpdate, share, viscosity, wideIndex } from './forces.ts';
 import { fillGhosts, fillReturns, fillWallGhosts, fillWide, indexOf } from './ghosts.ts';
 import { ex, ey } from './lattice.ts';
 import { Recorder } from './recorder.ts';
@@ -287,7 +287,7 @@ export class Reference implements Simulation {
     const gas = 1 - clip(a);
     cell.sharpness = ((4 / box.W) * (1 - gas) * gas) / Math.sqrt(cell.phiX ** 2 + cell.phiY ** 2 + 1e-12);
     const mu = 4 * box.beta * a * (a - 1) * (a - 0.5) - box.kappa * laplacian;
-    const heavy = gas * (box.rhoLiquid - box.rhoGas);
+    const heavy = (1 - share(a)) * (box.rhoLiquid - box.rhoGas);
     const forceX = mu * cell.phiX - heavy * box.gravityX + cell.Fx;
     const forceY = mu * cell.phiY - heavy * box.gravityY + cell.Fy;
     [cell.Fx, cell.Fy] = kick(box, fields, i, forceX, forceY);

@@ -5,18 +5,16 @@ import * as H from '../header';
 import { FIELDS } from './bulk';
 import { address, entry, fieldRow, nx, row, stride, zRow } from './rows';
 import { tremble } from './tremble';
-import { add, div, get, largest, mad, max, min, mul, nmad, put, root, splat, sub } from './vector';
+import { add, div, get, largest, mad, max, min, mul, nmad, noneBelow, PURE, put, root, share, splat, sub } from './vector';
 
 const COUPLING: f64 = 0.25;
 
 export let topU2: f64 = 0;
 
-/** eta of the liquid at the middle of a face over that of the liquid, phi clipped */
+/** eta at the face between two cells */
 // @ts-ignore: decorator
 @inline function thickness<T>(z: v128, other: v128, gas: v128, more: v128): v128 {
-  const one = splat<T>(1);
-  const inside = min<T>(max<T>(mad<T>(splat<T>(0.5), add<T>(z, other), one), splat<T>(0)), one);
-  return div<T>(one, mad<T>(inside, more, gas));
+  return div<T>(splat<T>(1), mad<T>(share<T>(mul<T>(splat<T>(0.5), add<T>(z, other))), more, gas));
 }
 
 /** share of one face in the coupling: weight times (3 (P' - P) - (P'' - P behind)) */
@@ -81,6 +79,8 @@ export function collideRow<T>(y: i32, flags: i32): void {
   const heavyY = splat<T>(drho * entry(H.GRAVITY_Y) + trembleY);
   const liquidLight = splat<T>(1 / rhoLiquid);
   const toSum = splat<T>(3 / rhoLiquid);
+  const nuLiquid = splat<T>(1 / (rhoLiquid * entry(H.FLUIDITY_LIQUID)));
+  const pure = splat<T>(-PURE);
   const nu0 = splat<T>(entry(H.NU0));
   const keepF = splat<T>(1 - 1 / (3 * entry(H.NU0) + 0.5));
   const coupled = splat<T>(0.25 * COUPLING);
@@ -119,31 +119,56 @@ export function collideRow<T>(y: i32, flags: i32): void {
 
     // forces
     const mu = sub<T>(mul<T>(mul<T>(beta4, mul<T>(phi, z)), sub<T>(phi, half)), mul<T>(kappaSixth, lap6));
-    const forcedX = mad<T>(mu, phiX, nmad<T>(gas, heavyX, forceX));
-    const forcedY = mad<T>(mu, phiY, nmad<T>(gas, heavyY, forceY));
+    let accelX = mad<T>(mu, phiX, forceX);
+    let accelY = mad<T>(mu, phiY, forceY);
 
-    // gradient of P
+    // what sets gas and interface apart from liquid: gradient of P, weight, viscosity of the faces, coupling of pressure
     const P = get(PC + i);
-    const PE = get(PC + i + size);
-    const PW = get(PC + i - size);
-    const PNorth = get(PN + i);
-    const PSouth = get(PS + i);
-    const PA = sub<T>(get(PN + i + size), get(PS + i - size));
-    const PB = sub<T>(get(PS + i + size), get(PN + i - size));
-    const Px = mad<T>(sub<T>(PE, PW), third, mul<T>(add<T>(PA, PB), twelfth));
-    const Py = mad<T>(sub<T>(PNorth, PSouth), third, mul<T>(sub<T>(PA, PB), twelfth));
-    const light = get(lightC + i);
-    const lighter = sub<T>(light, liquidLight);
-
-    // viscous force over the four faces
     const openE = get(openC + i + size);
     const openW = get(openC + i - size);
     const openN = get(openC + stride + i);
     const openS = get(openC - stride + i);
-    const cE = nmad<T>(nu0, openE, mul<T>(light, thickness<T>(z, zE, fluidityGas, dFluidity)));
-    const cW = nmad<T>(nu0, openW, mul<T>(light, thickness<T>(z, zW, fluidityGas, dFluidity)));
-    const cN = nmad<T>(nu0, openN, mul<T>(light, thickness<T>(z, zNorth, fluidityGas, dFluidity)));
-    const cS = nmad<T>(nu0, openS, mul<T>(light, thickness<T>(z, zSouth, fluidityGas, dFluidity)));
+    const lowest = min<T>(min<T>(zE, zW), min<T>(min<T>(zNorth, zSouth), z));
+    let etaE = nuLiquid;
+    let etaW = nuLiquid;
+    let etaN = nuLiquid;
+    let etaS = nuLiquid;
+    let coupling = zero;
+    if (noneBelow<T>(lowest, pure)) {
+      accelX = mul<T>(liquidLight, accelX);
+      accelY = mul<T>(liquidLight, accelY);
+    } else {
+      const PE = get(PC + i + size);
+      const PW = get(PC + i - size);
+      const PNorth = get(PN + i);
+      const PSouth = get(PS + i);
+      const PA = sub<T>(get(PN + i + size), get(PS + i - size));
+      const PB = sub<T>(get(PS + i + size), get(PN + i - size));
+      const Px = mad<T>(sub<T>(PE, PW), third, mul<T>(add<T>(PA, PB), twelfth));
+      const Py = mad<T>(sub<T>(PNorth, PSouth), third, mul<T>(sub<T>(PA, PB), twelfth));
+      const light = get(lightC + i);
+      const lighter = sub<T>(light, liquidLight);
+      const heavy = sub<T>(one, share<T>(z));
+      accelX = nmad<T>(lighter, Px, mul<T>(light, nmad<T>(heavy, heavyX, accelX)));
+      accelY = nmad<T>(lighter, Py, mul<T>(light, nmad<T>(heavy, heavyY, accelY)));
+      etaE = mul<T>(light, thickness<T>(z, zE, fluidityGas, dFluidity));
+      etaW = mul<T>(light, thickness<T>(z, zW, fluidityGas, dFluidity));
+      etaN = mul<T>(light, thickness<T>(z, zNorth, fluidityGas, dFluidity));
+      etaS = mul<T>(light, thickness<T>(z, zSouth, fluidityGas, dFluidity));
+      const weightE = mul<T>(openE, min<T>(lighter, sub<T>(get(lightC + i + size), liquidLight)));
+      const weightW = mul<T>(openW, min<T>(lighter, sub<T>(get(lightC + i - size), liquidLight)));
+      const weightN = mul<T>(openN, min<T>(lighter, sub<T>(get(lightC + stride + i), liquidLight)));
+      const weightS = mul<T>(openS, min<T>(lighter, sub<T>(get(lightC - stride + i), liquidLight)));
+      const couplingX = add<T>(part<T>(weightE, PE, P, get(PC + i + 2 * size), PW), part<T>(weightW, PW, P, get(PC + i - 2 * size), PE));
+      const couplingY = add<T>(part<T>(weightN, PNorth, P, get(PN + stride + i), PSouth), part<T>(weightS, PSouth, P, get(PS - stride + i), PNorth));
+      coupling = mul<T>(coupled, add<T>(couplingX, couplingY));
+    }
+
+    // viscous force over the four faces
+    const cE = nmad<T>(nu0, openE, etaE);
+    const cW = nmad<T>(nu0, openW, etaW);
+    const cN = nmad<T>(nu0, openN, etaN);
+    const cS = nmad<T>(nu0, openS, etaS);
     const mx = get(mxC + i);
     const my = get(myC + i);
     const mxE = get(mxC + i + size);
@@ -164,8 +189,8 @@ export function collideRow<T>(y: i32, flags: i32): void {
     const stretchY = sub<T>(mul<T>(cN, sub<T>(myNorth, my)), mul<T>(cS, sub<T>(my, mySouth)));
     const shearX = sub<T>(mul<T>(cN, add<T>(sub<T>(mxNorth, mx), alongXN)), mul<T>(cS, add<T>(sub<T>(mx, mxSouth), alongXS)));
     const shearY = sub<T>(mul<T>(cE, add<T>(sub<T>(myE, my), alongYE)), mul<T>(cW, add<T>(sub<T>(my, myW), alongYW)));
-    const Fx = add<T>(nmad<T>(lighter, Px, mul<T>(light, forcedX)), mad<T>(two, stretchX, shearX));
-    const Fy = add<T>(nmad<T>(lighter, Py, mul<T>(light, forcedY)), mad<T>(two, stretchY, shearY));
+    const Fx = add<T>(accelX, mad<T>(two, stretchX, shearX));
+    const Fy = add<T>(accelY, mad<T>(two, stretchY, shearY));
 
     // velocity
     const fluid = get(mask + i);
@@ -179,23 +204,14 @@ export function collideRow<T>(y: i32, flags: i32): void {
     put(sections + i, add<T>(get(sections + i), ux));
     top = max<T>(top, u2);
 
-    // coupling of pressure
-    const weightE = mul<T>(openE, min<T>(lighter, sub<T>(get(lightC + i + size), liquidLight)));
-    const weightW = mul<T>(openW, min<T>(lighter, sub<T>(get(lightC + i - size), liquidLight)));
-    const weightN = mul<T>(openN, min<T>(lighter, sub<T>(get(lightC + stride + i), liquidLight)));
-    const weightS = mul<T>(openS, min<T>(lighter, sub<T>(get(lightC - stride + i), liquidLight)));
-    const couplingX = add<T>(part<T>(weightE, PE, P, get(PC + i + 2 * size), PW), part<T>(weightW, PW, P, get(PC + i - 2 * size), PE));
-    const couplingY = add<T>(part<T>(weightN, PNorth, P, get(PN + stride + i), PSouth), part<T>(weightS, PSouth, P, get(PS - stride + i), PNorth));
-    const coupling = mul<T>(coupled, add<T>(couplingX, couplingY));
-
     // the flow
     const s = mul<T>(toSum, get(pC + i));
-    const share = mul<T>(liquidLight, P);
+    const specific = mul<T>(liquidLight, P);
     const d20 = mul<T>(mul<T>(half, keepF), get(n20C + i));
     const d11 = mul<T>(keepF, get(n11C + i));
     const twice11 = add<T>(d11, d11);
-    const q20 = add<T>(add<T>(share, xx), d20);
-    const q02 = sub<T>(add<T>(share, yy), d20);
+    const q20 = add<T>(add<T>(specific, xx), d20);
+    const q02 = sub<T>(add<T>(specific, yy), d20);
     const uv = mul<T>(ux, uy);
     const q11 = add<T>(uv, d11);
     const d21 = mad<T>(ux, twice11, mul<T>(uy, d20));
@@ -204,7 +220,7 @@ export function collideRow<T>(y: i32, flags: i32): void {
     const q12 = mad<T>(ux, add<T>(third, yy), d12);
     const d22a = mul<T>(two, mad<T>(uy, d21, mul<T>(ux, d12)));
     const d22 = nmad<T>(mul<T>(splat<T>(4), uv), d11, mad<T>(sub<T>(xx, yy), d20, d22a));
-    const q22 = add<T>(mad<T>(third, add<T>(share, u2), mul<T>(xx, yy)), d22);
+    const q22 = add<T>(mad<T>(third, add<T>(specific, u2), mul<T>(xx, yy)), d22);
     const f0 = o0 + i;
     put(f0, add<T>(sub<T>(add<T>(s, q22), add<T>(q20, q02)), coupling));
     const evenX = mul<T>(half, sub<T>(q20, q22));

@@ -7,6 +7,7 @@ import { collideRow, topU2 } from './flow';
 import { clearSolids, fillGhosts, fillReturns } from './ghosts';
 import { fillPhiGhosts } from './phi';
 import { press } from './pressure';
+import { PURE } from './vector';
 import { address, bind, entry, fieldRow, nx, ny, row, setEntry, stride, turn, zRow } from './rows';
 
 export function version(): i32 { return H.VERSION; }
@@ -141,9 +142,10 @@ function friction<T>(to: usize, inside: i32, beyond: i32): void {
   for (let x = 0; x < nx; x++) {
     const i = <usize>x * sizeof<T>();
     const wall = load<T>(fieldRow(H.AT_OPEN, inside) + i) != 0 && load<T>(fieldRow(H.AT_OPEN, beyond) + i) == 0;
-    const z = 0.5 * (<f64>load<T>(zRow(inside) + i) + <f64>load<T>(zRow(beyond) + i));
+    const phi = 1 + 0.5 * (<f64>load<T>(zRow(inside) + i) + <f64>load<T>(zRow(beyond) + i));
+    const liquid = Math.min(Math.max((phi - PURE) / (1 - 2 * PURE), 0), 1);
     const slip = <f64>load<T>(fieldRow(H.AT_MX, inside) + i) - <f64>load<T>(fieldRow(H.AT_MX, beyond) + i);
-    store<f32>(to + 4 * <usize>x, wall ? <f32>(slip / (gas + Math.min(Math.max(1 + z, 0), 1) * more)) : 0);
+    store<f32>(to + 4 * <usize>x, wall ? <f32>(slip / (gas + liquid * more)) : 0);
   }
 }
 

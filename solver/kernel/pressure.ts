@@ -2,7 +2,7 @@
 // Reads the sum of f, z and its ghosts, p; writes p, P, 1/rho, and ghosts.
 import * as H from '../header';
 import { address, entry, fieldRow, nx, ny, stride, zRow } from './rows';
-import { add, div, get, mad, max, min, mul, nmad, put, splat, sub } from './vector';
+import { add, div, get, mad, min, mul, nmad, put, share, splat } from './vector';
 
 const SOUND_FRICTION: f64 = 0.2;
 
@@ -25,13 +25,12 @@ function pressRow<T>(y: i32): void {
   const pAt = fieldRow(H.AT_P, y);
   const out = fieldRow(H.AT_PRESSURE, y);
   const lightOut = fieldRow(H.AT_LIGHT, y);
-  const zero = splat<T>(0);
   const one = splat<T>(1);
   const rhoGas = splat<T>(entry(H.RHO_GAS));
   const dRho = splat<T>(entry(H.RHO_LIQUID) - entry(H.RHO_GAS));
   const third = splat<T>(1.0 / 3.0);
   const toSum = splat<T>(3 / entry(H.RHO_LIQUID));
-  const share = splat<T>(SOUND_FRICTION);
+  const friction = splat<T>(SOUND_FRICTION);
   const end = <usize>nx * size;
   let i: usize = 0;
   do {
@@ -40,14 +39,14 @@ function pressRow<T>(y: i32): void {
     const north = min<T>(min<T>(get(zN + i - size), get(zN + i)), get(zN + i + size));
     const here = min<T>(min<T>(get(zC + i - size), z), get(zC + i + size));
     const least = min<T>(min<T>(south, north), here);
-    const lowest = mad<T>(min<T>(max<T>(add<T>(one, least), zero), one), dRho, rhoGas);
+    const lowest = mad<T>(share<T>(least), dRho, rhoGas);
     const p = get(pAt + i);
     const change = mul<T>(mul<T>(lowest, third), nmad<T>(toSum, p, get(sumAt + i)));
-    const inside = min<T>(max<T>(add<T>(one, z), zero), one);
+    const inside = share<T>(z);
     const square = mul<T>(inside, inside);
     const now = add<T>(p, change);
     put(pAt + i, now);
-    put(out + i, mad<T>(mul<T>(share, nmad<T>(square, square, one)), change, now));
+    put(out + i, mad<T>(mul<T>(friction, nmad<T>(square, square, one)), change, now));
     put(lightOut + i, div<T>(one, mad<T>(inside, dRho, rhoGas)));
     i += 16;
   } while (i < end);

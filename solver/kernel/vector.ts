@@ -1,6 +1,9 @@
 // The verbs of the kernel: one 16-byte group of lanes of T (four f32, two f64). v128 takes no operators, and a class around
 // it would live on the heap; inlined functions cost nothing.
 
+/** phi this close to 0 or 1 is pure, see forces.ts */
+export const PURE: f64 = 0.002;
+
 // @ts-ignore: decorator
 @inline export function add<T>(a: v128, b: v128): v128 { return v128.add<T>(a, b); }
 // @ts-ignore: decorator
@@ -27,6 +30,20 @@
 @inline export function get(at: usize): v128 { return v128.load(at); }
 // @ts-ignore: decorator
 @inline export function put(at: usize, a: v128): void { v128.store(at, a); }
+
+/** every lane of a at least that of b */
+// @ts-ignore: decorator
+@inline export function noneBelow<T>(a: v128, b: v128): bool {
+  const yes = v128.ge<T>(a, b);
+  return sizeof<T>() == 8 ? i64x2.all_true(yes) : i32x4.all_true(yes);
+}
+
+/** Share of liquid at z = phi - 1, see forces.ts. */
+// @ts-ignore: decorator
+@inline export function share<T>(z: v128): v128 {
+  const one = splat<T>(1);
+  return min<T>(max<T>(mad<T>(z, splat<T>(1 / (1 - 2 * PURE)), splat<T>((1 - PURE) / (1 - 2 * PURE))), splat<T>(0)), one);
+}
 
 /** Sum of the lanes. */
 export function total<T>(a: v128): f64 {
