@@ -49,7 +49,7 @@ export function pressureUpdate(box: Box, fields: FlowFields, i: number, p: numbe
   const S = box.nx + 2;
   const { phi } = fields;
   let least = 1;
-  for (const row of [i - S, i, i + S]) for (let j = row - 1; j <= row + 1; j++) least = Math.min(least, phi[j]);
+  for (const row of [i - S, i, i + S]) for (let j = row - 1; j <= row + 1; j++) if (phi[j] < least) least = phi[j];
   const change = (density(box, least) / 3) * (fields.sum[i] - (3 * p) / box.rhoLiquid);
   const liquid = share(phi[i]) ** 4;
   return [p + change, p + (1 + SOUND_FRICTION * (1 - liquid)) * change];

@@ -3,7 +3,7 @@
 // Reads f, g, mask, skim. Adds m and gas to the sums of the sections, and adds up the gas area and the gas that the collision will skim.
 import * as H from '../header';
 import { address, entry, fieldRow, nx, ny, row, setEntry, stride, zRow } from './rows';
-import { add, get, mad, max, min, mul, nmad, put, splat, sub, total } from './vector';
+import { add, atLeast, atMost, get, mad, mul, nmad, put, splat, sub, total } from './vector';
 
 export function arrive<T>(): void {
   const size = sizeof<T>();
@@ -82,7 +82,7 @@ export function arrive<T>(): void {
       const fluid = get(mask + i);
       const counted = mul<T>(z, fluid);
       put(sections + i, mad<T>(mx, fluid, get(sections + i)));
-      const gas = min<T>(max<T>(sub<T>(zero, z), zero), one);
+      const gas = atMost<T>(atLeast<T>(sub<T>(zero, z), zero), one);
       put(sectionGas + i, mad<T>(gas, fluid, get(sectionGas + i)));
       gasLanes = add<T>(gasLanes, counted);
       skimLanes = mad<T>(counted, get(skim + i), skimLanes);

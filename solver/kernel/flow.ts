@@ -5,7 +5,7 @@ import * as H from '../header';
 import { FIELDS } from './bulk';
 import { address, entry, fieldRow, nx, row, stride, zRow } from './rows';
 import { tremble } from './tremble';
-import { add, div, get, largest, mad, max, min, mul, nmad, noneBelow, PURE, put, root, share, splat, sub } from './vector';
+import { add, atLeast, atMost, div, get, largest, mad, max, mul, nmad, noneBelow, PURE, put, root, share, splat, sub } from './vector';
 
 const COUPLING: f64 = 0.25;
 
@@ -112,7 +112,7 @@ export function collideRow<T>(y: i32, flags: i32): void {
     const corners = add<T>(add<T>(zNE, zSW), add<T>(zSE, zNW));
     const lap6 = add<T>(mul<T>(splat<T>(4), axes), nmad<T>(splat<T>(20), z, corners));
     const phi = add<T>(one, z);
-    const inside = min<T>(max<T>(phi, zero), one);
+    const inside = atMost<T>(atLeast<T>(phi, zero), one);
     const gas = sub<T>(one, inside);
     const steep = root<T>(mad<T>(phiX, phiX, mad<T>(phiY, phiY, tiny)));
     const sharpness = div<T>(mul<T>(slope, mul<T>(inside, gas)), steep);
@@ -128,7 +128,7 @@ export function collideRow<T>(y: i32, flags: i32): void {
     const openW = get(openC + i - size);
     const openN = get(openC + stride + i);
     const openS = get(openC - stride + i);
-    const lowest = min<T>(min<T>(zE, zW), min<T>(min<T>(zNorth, zSouth), z));
+    const lowest = atMost<T>(atMost<T>(zE, zW), atMost<T>(atMost<T>(zNorth, zSouth), z));
     let etaE = nuLiquid;
     let etaW = nuLiquid;
     let etaN = nuLiquid;
@@ -155,10 +155,10 @@ export function collideRow<T>(y: i32, flags: i32): void {
       etaW = mul<T>(light, thickness<T>(z, zW, fluidityGas, dFluidity));
       etaN = mul<T>(light, thickness<T>(z, zNorth, fluidityGas, dFluidity));
       etaS = mul<T>(light, thickness<T>(z, zSouth, fluidityGas, dFluidity));
-      const weightE = mul<T>(openE, min<T>(lighter, sub<T>(get(lightC + i + size), liquidLight)));
-      const weightW = mul<T>(openW, min<T>(lighter, sub<T>(get(lightC + i - size), liquidLight)));
-      const weightN = mul<T>(openN, min<T>(lighter, sub<T>(get(lightC + stride + i), liquidLight)));
-      const weightS = mul<T>(openS, min<T>(lighter, sub<T>(get(lightC - stride + i), liquidLight)));
+      const weightE = mul<T>(openE, atMost<T>(lighter, sub<T>(get(lightC + i + size), liquidLight)));
+      const weightW = mul<T>(openW, atMost<T>(lighter, sub<T>(get(lightC + i - size), liquidLight)));
+      const weightN = mul<T>(openN, atMost<T>(lighter, sub<T>(get(lightC + stride + i), liquidLight)));
+      const weightS = mul<T>(openS, atMost<T>(lighter, sub<T>(get(lightC - stride + i), liquidLight)));
       const couplingX = add<T>(part<T>(weightE, PE, P, get(PC + i + 2 * size), PW), part<T>(weightW, PW, P, get(PC + i - 2 * size), PE));
       const couplingY = add<T>(part<T>(weightN, PNorth, P, get(PN + stride + i), PSouth), part<T>(weightS, PSouth, P, get(PS - stride + i), PNorth));
       coupling = mul<T>(coupled, add<T>(couplingX, couplingY));

@@ -2,7 +2,7 @@
 // Reads the sum of f, z and its ghosts, p; writes p, P, 1/rho, and ghosts.
 import * as H from '../header';
 import { address, entry, fieldRow, nx, ny, stride, zRow } from './rows';
-import { add, div, get, mad, min, mul, nmad, put, share, splat } from './vector';
+import { add, atMost, div, get, mad, mul, nmad, put, share, splat } from './vector';
 
 const SOUND_FRICTION: f64 = 0.2;
 
@@ -25,6 +25,7 @@ function pressRow<T>(y: i32): void {
   const pAt = fieldRow(H.AT_P, y);
   const out = fieldRow(H.AT_PRESSURE, y);
   const lightOut = fieldRow(H.AT_LIGHT, y);
+  const zero = splat<T>(0);
   const one = splat<T>(1);
   const rhoGas = splat<T>(entry(H.RHO_GAS));
   const dRho = splat<T>(entry(H.RHO_LIQUID) - entry(H.RHO_GAS));
@@ -35,10 +36,9 @@ function pressRow<T>(y: i32): void {
   let i: usize = 0;
   do {
     const z = get(zC + i);
-    const south = min<T>(min<T>(get(zS + i - size), get(zS + i)), get(zS + i + size));
-    const north = min<T>(min<T>(get(zN + i - size), get(zN + i)), get(zN + i + size));
-    const here = min<T>(min<T>(get(zC + i - size), z), get(zC + i + size));
-    const least = min<T>(min<T>(south, north), here);
+    const south = atMost<T>(atMost<T>(atMost<T>(zero, get(zS + i - size)), get(zS + i)), get(zS + i + size));
+    const here = atMost<T>(atMost<T>(atMost<T>(south, get(zC + i - size)), z), get(zC + i + size));
+    const least = atMost<T>(atMost<T>(atMost<T>(here, get(zN + i - size)), get(zN + i)), get(zN + i + size));
     const lowest = mad<T>(share<T>(least), dRho, rhoGas);
     const p = get(pAt + i);
     const change = mul<T>(mul<T>(lowest, third), nmad<T>(toSum, p, get(sumAt + i)));

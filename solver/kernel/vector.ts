@@ -20,10 +20,14 @@ export const PURE: f64 = 0.002;
 @inline export function nmad<T>(a: v128, b: v128, c: v128): v128 { return v128.sub<T>(c, v128.mul<T>(a, b)); }
 // @ts-ignore: decorator
 @inline export function root<T>(a: v128): v128 { return v128.sqrt<T>(a); }
+/** the larger, not a number where one is not */
 // @ts-ignore: decorator
 @inline export function max<T>(a: v128, b: v128): v128 { return v128.max<T>(a, b); }
+/** a, or b where that is beyond it: one instruction where `max` takes many; a b that is no number counts for nothing */
 // @ts-ignore: decorator
-@inline export function min<T>(a: v128, b: v128): v128 { return v128.min<T>(a, b); }
+@inline export function atLeast<T>(a: v128, b: v128): v128 { return v128.pmax<T>(a, b); }
+// @ts-ignore: decorator
+@inline export function atMost<T>(a: v128, b: v128): v128 { return v128.pmin<T>(a, b); }
 // @ts-ignore: decorator
 @inline export function splat<T>(a: f64): v128 { return v128.splat<T>(<T>a); }
 // @ts-ignore: decorator
@@ -42,7 +46,7 @@ export const PURE: f64 = 0.002;
 // @ts-ignore: decorator
 @inline export function share<T>(z: v128): v128 {
   const one = splat<T>(1);
-  return min<T>(max<T>(mad<T>(z, splat<T>(1 / (1 - 2 * PURE)), splat<T>((1 - PURE) / (1 - 2 * PURE))), splat<T>(0)), one);
+  return atMost<T>(atLeast<T>(mad<T>(z, splat<T>(1 / (1 - 2 * PURE)), splat<T>((1 - PURE) / (1 - 2 * PURE))), splat<T>(0)), one);
 }
 
 /** Sum of the lanes. */
