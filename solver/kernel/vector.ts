@@ -20,9 +20,9 @@ export const PURE: f64 = 0.002;
 @inline export function nmad<T>(a: v128, b: v128, c: v128): v128 { return v128.sub<T>(c, v128.mul<T>(a, b)); }
 // @ts-ignore: decorator
 @inline export function root<T>(a: v128): v128 { return v128.sqrt<T>(a); }
-/** the larger, not a number where one is not */
+/** the larger of two that are not negative, not a number where one is not: the bits of such numbers are in their order */
 // @ts-ignore: decorator
-@inline export function max<T>(a: v128, b: v128): v128 { return v128.max<T>(a, b); }
+@inline export function max<T>(a: v128, b: v128): v128 { return sizeof<T>() == 4 ? v128.max<u32>(a, b) : v128.max<T>(a, b); }
 /** a, or b where that is beyond it: one instruction where `max` takes many; a b that is no number counts for nothing */
 // @ts-ignore: decorator
 @inline export function atLeast<T>(a: v128, b: v128): v128 { return v128.pmax<T>(a, b); }
