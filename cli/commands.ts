@@ -10,6 +10,8 @@ const NAME = { type: 'string', describe: 'a ready-made case' } as const;
 const FRAMES = { least: 2, most: 10_000, whole: true };
 /** Seconds between checkpoints: writing them more often takes longer than the run, more seldom loses hours. */
 const CHECKPOINT = { least: 0.01, most: 3600, whole: false };
+/** Percent of a value that an error of the grid may have. */
+const WITHIN = { least: 0.1, most: 50, whole: false };
 
 const CAUTION =
   'Results are for screening, not for design. Compressed air, chemicals and lifting modules can hurt people: ' +
@@ -58,6 +60,24 @@ export async function commandLine(words: string[]): Promise<number> {
         const word = required('check', args.case);
         const { check } = await import('./check.ts');
         await check({ word, sets: args.set ?? [], json: args.json });
+      },
+    )
+    .command(
+      'refine [case]',
+      'run a case on three grids and say how far each measure is from one without grid',
+      (builder) =>
+        builder
+          .positional('case', CASE)
+          .options(OPTIONS.refine)
+          .example('$0 refine tilted-panel --grids 24,32,48', 'a ready-made case on grids of your choice'),
+      async (args) => {
+        const word = required('refine', args.case);
+        const grids = single('grids', args.grids);
+        const within = numberWithin('within', (single('within', args.within) ?? '').replace(/ ?%$/, ''), WITHIN) / 100;
+        const checkpoint_s = numberWithin('checkpoint', single('checkpoint', args.checkpoint) ?? '', CHECKPOINT);
+        const out = single('out', args.out);
+        const { refine } = await import('./refine.ts');
+        exit = await refine({ word, sets: args.set ?? [], grids, within, out, again: args.again, checkpoint_s, quiet: args.quiet, words });
       },
     )
     .command(

@@ -22,6 +22,15 @@ export const OPTIONS = {
     set: SET,
     json: { type: 'boolean', default: false, describe: 'as JSON' },
   },
+  refine: {
+    set: SET,
+    grids: { type: 'string', requiresArg: true, describe: "three numbers of cells across; the case's own and two coarser without it" },
+    within: { type: 'string', requiresArg: true, default: '5 %', describe: 'error of the grid that counts as converged' },
+    out: { type: 'string', requiresArg: true, describe: 'folder for the three runs; runs/<name of the case>-refine without it' },
+    again: { type: 'boolean', default: false, describe: 'start anew in a folder that holds a refinement; its results are lost' },
+    checkpoint: { type: 'string', requiresArg: true, default: '10', describe: 'seconds of wall time between checkpoints' },
+    quiet: { type: 'boolean', default: false, describe: 'say nothing but errors' },
+  },
   gallery: {
     copy: { type: 'string', requiresArg: true, describe: 'folder to copy to; files that are there are kept' },
   },

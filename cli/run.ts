@@ -23,6 +23,8 @@ export interface RunOptions {
   /** wall time between checkpoints */
   checkpoint_s: number;
   quiet: boolean;
+  /** one of several runs: its answers are not printed */
+  partial?: boolean;
   /** the words after `swathe`, to say how to go on */
   words: readonly string[];
 }
@@ -36,7 +38,7 @@ export async function run(options: RunOptions): Promise<number> {
   try {
     if (!options.again && folder.record?.status === 'done' && folder.holds(text)) {
       const how = 'Give another folder with --out to compute it once more, or --again to replace it.';
-      if (!options.quiet) process.stdout.write(`${path} holds this very run, done ${folder.record.ended}. ${how}\n`);
+      if (!options.quiet && !options.partial) process.stdout.write(`${path} holds this very run, done ${folder.record.ended}. ${how}\n`);
       return 0;
     }
     const beginning = { caseText: text, title: panel.title, seed: panel.gas.seed, frames: options.frames, derived, version: version() };
@@ -102,7 +104,7 @@ async function compute(
     }
     const taken = duration(folder.record?.timeTaken_s ?? 0);
     const page = [`${laid.panel.title}: done in ${taken}`, summaryPage(measures), `files: ${path}`, CAUTION].join('\n');
-    if (!options.quiet) process.stdout.write(`${page}\n`);
+    if (!options.quiet && !options.partial) process.stdout.write(`${page}\n`);
     return 0;
   } catch (error) {
     view.end();

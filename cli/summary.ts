@@ -26,7 +26,7 @@ export function summaryPage(measures: Measures): string {
 }
 
 /** Columns with two spaces between, the first to the left, the others to the right. */
-function table(rows: string[][]): string {
+export function table(rows: string[][]): string {
   const widths = rows[0].map((_, column) => Math.max(...rows.map((row) => row[column].length)));
   return rows.map((row) => row.map((cell, i) => (i === 0 ? cell.padEnd(widths[i]) : cell.padStart(widths[i]))).join('  ')).join('\n');
 }
