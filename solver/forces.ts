@@ -37,7 +37,7 @@ export const clip = (phi: number): number => Math.min(Math.max(phi, 0), 1);
 /** Share of liquid, 0 to 1. */
 export const share = (phi: number): number => clip((phi - PURE) / (1 - 2 * PURE));
 
-export const density = (box: Box, phi: number): number => box.rhoGas + share(phi) * (box.rhoLiquid - box.rhoGas);
+const density = (box: Box, phi: number): number => box.rhoGas + share(phi) * (box.rhoLiquid - box.rhoGas);
 
 export const viscosity = (box: Box, phi: number): number => 1 / (box.fluidityGas + share(phi) * (box.fluidityLiquid - box.fluidityGas));
 

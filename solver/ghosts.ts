@@ -148,3 +148,32 @@ function reflect(box: Box, set: Float64Array[], side: Side, axis: 'x' | 'y', edg
     }
   }
 }
+
+/** phi at a wall whose first cell holds `phi`, from d(phi)/dn = -(4/W) cos(theta) phi (1 - phi), and the ghost beyond it. */
+function wettedGhost(c: number, phi: number): number {
+  const inside = Math.min(Math.max(phi, 0), 1);
+  const wall = (4 * inside) / (2 - c + Math.sqrt((2 - c) * (2 - c) + 8 * c * inside));
+  return phi + 2 * (wall - inside);
+}
+
+/** Ghosts of phi: walls and solids carry the wetting, slip sides images, periodic sides copies. */
+export function fillPhiGhosts(box: Box, phi: Float64Array): void {
+  const { nx, ny, setup, geometry, wetting } = box;
+  const at = (x: number, y: number): number => indexOf(box, x, y);
+  for (const ghost of geometry.ghosts) {
+    let mean = 0;
+    for (const n of ghost.neighbours) mean += n.weight * phi[at(n.x, n.y)];
+    phi[at(ghost.x, ghost.y)] = wettedGhost(wetting, mean);
+  }
+  const beyond = (side: Side, inside: number, across: number): number =>
+    side === 'periodic' ? phi[across] : side === 'slip' ? phi[inside] : wettedGhost(wetting, phi[inside]);
+  const { left, right, bottom, top } = setup.sides;
+  for (let x = 0; x < nx; x++) {
+    phi[at(x, -1)] = beyond(left, at(x, 0), at(x, ny - 1));
+    phi[at(x, ny)] = beyond(right, at(x, ny - 1), at(x, 0));
+  }
+  for (let y = -1; y <= ny; y++) {
+    phi[at(-1, y)] = beyond(bottom, at(0, y), at(nx - 1, y));
+    phi[at(nx, y)] = beyond(top, at(nx - 1, y), at(0, y));
+  }
+}

@@ -14,10 +14,10 @@ import { type Box, driveForce, resolve } from './box.ts';
 import { type Cell, collideInterface, collideLiquid, collideVelocity, firstMoment, newCell } from './collide.ts';
 import { Q } from './constants.ts';
 import { clip, coupling, type FlowFields, kick, pressureUpdate, share, viscosity, wideIndex } from './forces.ts';
-import { fillGhosts, fillReturns, fillWallGhosts, fillWide, indexOf } from './ghosts.ts';
+import { fillGhosts, fillPhiGhosts, fillReturns, fillWallGhosts, fillWide, indexOf } from './ghosts.ts';
 import { ex, ey } from './lattice.ts';
 import { Recorder } from './recorder.ts';
-import type { Setup, Side } from './setup.ts';
+import type { Setup } from './setup.ts';
 import type { Field, Samples, Simulation, Status } from './simulation.ts';
 import { equilibriumState, placeCircle } from './state.ts';
 
@@ -116,7 +116,7 @@ export class Reference implements Simulation {
         fillReturns(this.box, this.g);
         this.arrivals();
         this.dampSound();
-        this.fillPhiGhosts();
+        fillPhiGhosts(this.box, this.fields.phi);
         this.pressures();
       } else fillGhosts(this.box, this.f);
       const status = this.cells();
@@ -174,35 +174,6 @@ export class Reference implements Simulation {
     }
     fillWallGhosts(box, fields);
     fillWide(box, fields.P);
-  }
-
-  /** phi at a wall whose first cell holds `phi`, from d(phi)/dn = -(4/W) cos(theta) phi (1 - phi), and the ghost beyond it. */
-  private wettedGhost(phi: number): number {
-    const c = this.box.wetting;
-    const inside = Math.min(Math.max(phi, 0), 1);
-    const wall = (4 * inside) / (2 - c + Math.sqrt((2 - c) * (2 - c) + 8 * c * inside));
-    return phi + 2 * (wall - inside);
-  }
-
-  private fillPhiGhosts(): void {
-    const { nx, ny, setup, geometry } = this.box;
-    const { phi } = this.fields;
-    for (const ghost of geometry.ghosts) {
-      let mean = 0;
-      for (const n of ghost.neighbours) mean += n.weight * phi[this.at(n.x, n.y)];
-      phi[this.at(ghost.x, ghost.y)] = this.wettedGhost(mean);
-    }
-    const beyond = (side: Side, inside: number, across: number): number =>
-      side === 'periodic' ? phi[across] : side === 'slip' ? phi[inside] : this.wettedGhost(phi[inside]);
-    const { left, right, bottom, top } = setup.sides;
-    for (let x = 0; x < nx; x++) {
-      phi[this.at(x, -1)] = beyond(left, this.at(x, 0), this.at(x, ny - 1));
-      phi[this.at(x, ny)] = beyond(right, this.at(x, ny - 1), this.at(x, 0));
-    }
-    for (let y = -1; y <= ny; y++) {
-      phi[this.at(-1, y)] = beyond(bottom, this.at(0, y), this.at(nx - 1, y));
-      phi[this.at(nx, y)] = beyond(top, this.at(nx - 1, y), this.at(0, y));
-    }
   }
 
   // ---- 3. collision
