@@ -53,9 +53,9 @@ function wrap(box: Box, set: Float64Array[]): void {
 }
 
 /** Ghosts of one population of a box with gas: periodic sides wrap, every wall returns what walls.ts lists. */
-export function fillReturns(box: Box, set: Float64Array[]): void {
+export function fillReturns(box: Box, set: Float64Array[], which: 'flow' | 'interface'): void {
   wrap(box, set);
-  const returned = box.walls.returns.map(({ from }) => set[from.k][indexOf(box, from.x, from.y)]);
+  const returned = box.walls.returns.map((entry) => set[entry[which].k][indexOf(box, entry[which].x, entry[which].y)]);
   box.walls.returns.forEach(({ x, y, k }, n) => {
     set[k][indexOf(box, x, y)] = returned[n];
   });

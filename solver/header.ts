@@ -95,7 +95,7 @@ export const AT_N20 = 61;
 export const AT_N11 = 62;
 export const AT_J10 = 63;
 export const AT_J01 = 75;
-/** six i32 each: place x, y, direction; then the same of the stand-in */
+/** nine i32 each: place x, y, direction; then the same of the stand-in of f and of that of g */
 export const AT_RETURNS = 76;
 export const RETURNS = 77;
 /** f64: place, n, then n times cell, cell behind, 1 if there is one, speed of the wall along x, along y; places in bytes from cell (0, 0) */

@@ -56,7 +56,7 @@ export function layMemory(box: Box): MemoryMap {
     [H.AT_LINKS, take(20 * geometry.links.length)],
     [H.AT_RUNS, take(12 * geometry.runs.length)],
     [H.AT_GHOSTS, take(24 * (geometry.ghosts.length + neighbours))],
-    [H.AT_RETURNS, take(24 * walls.returns.length)],
+    [H.AT_RETURNS, take(36 * walls.returns.length)],
     [H.AT_WALL_GHOSTS, take(8 * walls.ghosts.reduce((n, ghost) => n + 2 + 5 * ghost.faces.length, 0))],
     [H.AT_SAMPLES, take(sampleCapacity * sampleBytes)],
   ];
@@ -142,9 +142,9 @@ function writeWalls(box: Box, map: MemoryMap): void {
   const { header, memory, bytesPerNumber } = map;
   header[H.RETURNS] = walls.returns.length;
   header[H.WALL_GHOSTS] = walls.ghosts.length;
-  const returns = new Int32Array(memory.buffer, header[H.AT_RETURNS], 6 * walls.returns.length);
-  walls.returns.forEach(({ x, y, k, from }, n) => {
-    returns.set([x, y, k, from.x, from.y, from.k], 6 * n);
+  const returns = new Int32Array(memory.buffer, header[H.AT_RETURNS], 9 * walls.returns.length);
+  walls.returns.forEach(({ x, y, k, flow: f, interface: g }, n) => {
+    returns.set([x, y, k, f.x, f.y, f.k, g.x, g.y, g.k], 9 * n);
   });
   const place = (at: { x: number; y: number }): number => at.y * header[H.STRIDE] + at.x * bytesPerNumber;
   const ghosts = walls.ghosts.flatMap((ghost) => [

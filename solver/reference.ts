@@ -112,8 +112,8 @@ export class Reference implements Simulation {
   advance(steps: number, sampleEvery = 0): Status {
     for (let n = 0; n < steps; n++) {
       if (this.box.twoPhase) {
-        fillReturns(this.box, this.f);
-        fillReturns(this.box, this.g);
+        fillReturns(this.box, this.f, 'flow');
+        fillReturns(this.box, this.g, 'interface');
         this.arrivals();
         this.dampSound();
         fillPhiGhosts(this.box, this.fields.phi);

@@ -1,20 +1,21 @@
 /**
  * What every wall of a box with gas amounts to, as lists worked out once: straight sides and the faces of solids alike.
- * A wall reflects the populations like a mirror. Those of the flow then carry no friction at all: it is a viscous force of its own,
- * made from ghost values of the velocity, and what a wall takes is what is read from it. Those of the interface then leave one that
- * meets the wall at a right angle at rest: sent straight back, they bend it and drive a current.
+ * A wall reflects the flow populations like a mirror, so that they carry no friction at all; the friction is a viscous force of
+ * its own, made from ghost values of the velocity. What a wall sends back and what it is felt by therefore agree to round-off.
  */
 import { ex, ey, mirrorX, mirrorY, opposite } from './lattice.ts';
 import type { Setup, Side } from './setup.ts';
 
-/** A population that arrives at a cell from a wall: where it is pulled from, and which one of which cell stands in. */
+/** A population that arrives at a cell from a wall: where it is pulled from, and which populations of which cells stand in. */
 interface Return {
   /** place it is pulled from, -1 .. nx, -1 .. ny, and its direction */
   x: number;
   y: number;
   k: number;
-  /** stand-in, of f and g alike: mirrored where the wall is straight, straight back in its corners */
-  from: { x: number; y: number; k: number };
+  /** stand-in of f: mirrored where the wall is straight, straight back in its corners */
+  flow: { x: number; y: number; k: number };
+  /** stand-in of g: straight back, mirrored on slip sides */
+  interface: { x: number; y: number; k: number };
 }
 
 /** A place in a wall next to fluid, with ghost values of velocity and pressure as means over its `faces`. */
@@ -65,13 +66,15 @@ export function walls(setup: Setup, fluid: Uint8Array): Walls {
       if (x < 0 || x >= nx || y < 0 || y >= ny || !isFluid(x, y)) continue;
       for (let k = 1; k < 9; k++) {
         const [sx, sy] = [x - ex[k], y - ey[k]];
-        if (isFluid(sx, sy)) continue;
-        let from = { x, y, k: opposite[k] as number };
+        const met = kind(sx, sy);
+        if (met === 'fluid') continue;
+        const back = { x, y, k: opposite[k] };
         const alongX = k >= 5 && isFluid(sx, y);
         const alongY = k >= 5 && isFluid(x, sy);
-        if (alongX && !alongY) from = { x: wrapX(sx), y, k: mirrorY[k] };
-        if (alongY && !alongX) from = { x, y: wrapY(sy), k: mirrorX[k] };
-        returns.push({ x: sx, y: sy, k, from });
+        let mirrored = back;
+        if (alongX && !alongY) mirrored = { x: wrapX(sx), y, k: mirrorY[k] };
+        if (alongY && !alongX) mirrored = { x, y: wrapY(sy), k: mirrorX[k] };
+        returns.push({ x: sx, y: sy, k, flow: mirrored, interface: met === 'slip' ? mirrored : back });
       }
     }
   }

@@ -55,11 +55,10 @@ export function fillReturns<T>(): void {
   }
   clearPadding<T>(18);
   let item = address(H.AT_RETURNS);
-  for (let n = <i32>entry(H.RETURNS); n > 0; n--, item += 24) {
+  for (let n = <i32>entry(H.RETURNS); n > 0; n--, item += 36) {
     const to = at<T>(load<i32>(item), load<i32>(item, 4), load<i32>(item, 8));
-    const from = at<T>(load<i32>(item, 12), load<i32>(item, 16), load<i32>(item, 20));
-    store<T>(to, load<T>(from));
-    store<T>(to + 9 * stride, load<T>(from + 9 * stride));
+    store<T>(to, load<T>(at<T>(load<i32>(item, 12), load<i32>(item, 16), load<i32>(item, 20))));
+    store<T>(to + 9 * stride, load<T>(at<T>(load<i32>(item, 24), load<i32>(item, 28), 9 + load<i32>(item, 32))));
   }
 }
 
