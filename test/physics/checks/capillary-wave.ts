@@ -42,7 +42,7 @@ export const SETS: readonly WaveSet[] = [
   },
 ];
 
-const [W, NU, MOBILITY] = [5, 0.05, 0.05];
+const [W, NU, MOBILITY] = [5, 0.02, 0.05];
 
 /** Height of phi = 1/2 at the crest (x between the two middle cells) above the mean level. */
 function crest(s: Simulation, level: number): number {

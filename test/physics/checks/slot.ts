@@ -6,7 +6,7 @@
  * REFERENCES section 2.
  */
 import { createSimulation, type Fluid, type Simulation } from '../../../solver/index.ts';
-import { advance, airBeside, CLOSED, crossings, profile } from '../channel.ts';
+import { advance, CLOSED, crossings, profile } from '../channel.ts';
 import { type Check, row } from '../row.ts';
 
 /** Interface width, cells; the water wets well. */
@@ -80,9 +80,11 @@ export async function longBubble(H: number): Promise<{ froude: number; film: num
 
 /** Rise of a bubble 2 H long, in H, during the time in which `pace` sqrt(gH) would carry it 1 H; `bond` is rho g H^2/sigma. */
 export async function stalled(H: number, bond: number, pace = 0.01): Promise<number> {
-  const [sigma, viscosity] = [0.01, 0.01];
+  const [sigma, viscosity] = [0.01, 0.05];
   const g = (bond * sigma) / (H * H);
-  const s = await slot({ H, length: 5, tail: 1, nose: 3, film: 3, viscosity, sigma, g, gas: airBeside(viscosity) });
+  // as light as air, but thinner beside so thick a liquid: its kinematic viscosity is bounded
+  const gas = { density: 1 / 832, viscosity: 0.15 / 832 };
+  const s = await slot({ H, length: 5, tail: 1, nose: 3, film: 3, viscosity, sigma, g, gas });
   const time = Math.round(H / (pace * Math.sqrt(g * H)));
   advance(s, time);
   const from = noseOf(s);
