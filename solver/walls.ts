@@ -14,7 +14,7 @@ interface Return {
   k: number;
   /** stand-in of f: mirrored where the wall is straight, straight back in its corners */
   flow: { x: number; y: number; k: number };
-  /** stand-in of g: straight back (mirrored, contact lines hold on to the wall and take most of the buoyancy), mirrored on slip sides */
+  /** stand-in of g: straight back, mirrored on slip sides */
   interface: { x: number; y: number; k: number };
 }
 
