@@ -1,7 +1,7 @@
 /** How long a step is, how long a run, and which ends of the channel serve to let gas in and take it out. */
 import type { Case } from './case.ts';
 
-/** Lattice velocity at which `grid.speed` stands (METHOD section 3: held at 0.02 and below). */
+/** Lattice velocity at which `grid.speed` stands (it held at 0.02 and below). */
 const LATTICE_SPEED = 0.02;
 
 /** Bubbles are drawn within this many standard deviations of the mean diameter. */

@@ -33,7 +33,7 @@ export interface Derived {
 /** Standard gravity, m/s2. */
 const GRAVITY_m_s2 = 9.80665;
 
-/** Interface width W, cells, and mobility M: what held in trials of air and water (METHOD section 3). */
+/** Interface width W, cells, and mobility M: what held in trials of air and water. */
 const INTERFACE_WIDTH = 5;
 const MOBILITY = 0.1;
 

@@ -1,6 +1,7 @@
 import { CS2 } from './constants.ts';
 import { type Geometry, geometry } from './geometry.ts';
-import type { Drive, Setup, Side } from './setup.ts';
+import type { Drive, Fluid, Setup, Side } from './setup.ts';
+import { type Walls, walls } from './walls.ts';
 
 /** A setup with every default filled in and every derived number worked out, as both implementations of the step read it. */
 export interface Box {
@@ -31,17 +32,22 @@ export interface Box {
   drive: Drive | undefined;
   /** skimmed share per step and x; shape (nx) */
   skim: Float64Array;
+  soundDamping: number;
+  /** kinematic viscosity that the populations carry in a box with gas; forces.ts adds the rest */
+  nu0: number;
+  speedLimit: number;
   /** 1 / (gas speed limit)^2 */
   gasLimit: number;
-  gasThickening: number;
-  soundDamping: number;
-  damping: number;
-  speedLimit: number;
   geometry: Geometry;
+  walls: Walls;
 }
 
 /** 18 populations of four bytes: less than any cell takes, so that a box far too big is refused before anything is made for it */
 const LEAST_BYTES = 72;
+
+/** nu0 over the kinematic viscosity of the liquid */
+const NU0_SHARE = 0.01;
+const NU_LIMIT = 0.16;
 
 const fail = (what: string): never => {
   throw new RangeError(`setup: ${what}`);
@@ -83,6 +89,7 @@ export function resolve(setup: Setup): Box {
   // mu grad(phi) with the gradient and the Laplacian of the grid pulls 16/(15 W^2) less than sigma: both are h^2/6 and h^2/12 short
   // in the second derivative, and the tanh profile has int phi''^2 / int phi'^2 = 16/(5 W^2)
   const onGrid = sigma / (1 - 16 / (15 * W * W));
+  const solids = geometry(setup);
   const buoyancy = finite('buoyancy', setup.buoyancy ?? 1);
   return {
     setup,
@@ -106,13 +113,22 @@ export function resolve(setup: Setup): Box {
     gravityY: buoyancy * finite('gravity.y', setup.gravity?.y ?? 0),
     drive: checkedDrive(setup.drive),
     skim: Float64Array.from({ length: nx }, (_, x) => share(setup.skim?.[x] ?? 0)),
-    gasLimit: 1 / positiveOrInfinite('gasSpeedLimit', setup.gasSpeedLimit ?? 0.15) ** 2,
-    gasThickening: within('gasThickening', setup.gasThickening ?? 300, 0, 1e4, '0 to 10000'),
     soundDamping: within('soundDamping', setup.soundDamping ?? 0, 0, 0.1, '0 to 0.1'),
-    damping: within('damping', setup.damping ?? 0.005, 0, 0.25, '0 to 0.25'),
+    gasLimit: 1 / positiveOrInfinite('gasSpeedLimit', setup.gasSpeedLimit ?? 0.2) ** 2,
     speedLimit: positive('speedLimit', setup.speedLimit ?? 0.4),
-    geometry: geometry(setup),
+    nu0: twoPhase ? sharedViscosity(setup.liquid, gas) : 0,
+    geometry: solids,
+    walls: walls(setup, solids.fluid),
   };
+}
+
+/** nu0 of a box with gas, whose viscous force is explicit: neighbours overshoot beyond a kinematic viscosity of 1/6. */
+function sharedViscosity(liquid: Fluid, gas: Fluid): number {
+  for (const [name, { density, viscosity }] of Object.entries({ liquid, gas })) {
+    const nu = viscosity / density;
+    if (nu > NU_LIMIT) fail(`${name}.viscosity / ${name}.density is ${nu}; it must be at most ${NU_LIMIT} in a box with gas`);
+  }
+  return (NU0_SHARE * liquid.viscosity) / liquid.density;
 }
 
 function share(value: number): number {
@@ -131,9 +147,6 @@ function checkPair(nameA: string, a: Side, nameB: string, b: Side): void {
   if ((a === 'periodic') !== (b === 'periodic')) fail(`${nameA} and ${nameB} must both be periodic or neither`);
   for (const side of [a, b]) if (typeof side === 'object') finite(`speed of a moving wall`, side.speed);
 }
-
-/** Tangential speed of a side's wall. */
-export const wallSpeed = (side: Side): number => (typeof side === 'object' ? side.speed : 0);
 
 /** Uniform x-force of the drive for a mean velocity `now` that was `before` one step ago. */
 export function driveForce(drive: Drive | undefined, rhoLiquid: number, previousForce: number, now: number, before: number): number {

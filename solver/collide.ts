@@ -1,24 +1,19 @@
 /**
- * Both collisions of one cell, in raw moments. The form of the flow equation lives in `collideFlow` alone (and in
- * kernel/flow.ts): momentum-based, Liang, Xu, Chen, Wang, Chai & Shi 2018, Phys. Rev. E 97, 033309 (from memory).
+ * The collisions of one cell, in raw moments.
  *
- * Equilibrium moments: e00 = 0, e10 = rho ux, e20 = p + Jx ux, e11 = (Jx uy + Jy ux)/2, e21 = CS2 rho uy, e22 = CS2 (p + rho u^2).
- * Sources: zeroth u.grad rho, first F, second CS2 (u.grad rho I + u grad rho + grad rho u).
- * The two shear moments relax with omega = 1/(eta/(rho CS2) + 1/2); all others go to their equilibrium.
+ * One phase, `collideLiquid`: momentum-based. Equilibrium moments e00 = 0, e10 = rho ux, e20 = p + rho ux^2, e11 = rho ux uy,
+ * e21 = CS2 rho uy, e22 = CS2 (p + rho u^2); the two shear moments relax with omega = 1/(eta/(rho CS2) + 1/2), all others go to
+ * their equilibrium; half the force before, half after.
  *
- * What keeps it stable where bubbles pinch off, merge and meet fins (figures in DEVELOPERS.md):
- * - J is the mass flux of the interface equation, J = rho u - drho M (1 - theta/|grad phi|) grad phi, so that mass and
- *   momentum move together;
- * - phi is clipped to 0..1 where rho, eta, theta and the buoyancy are made from it;
- * - fast gas is thicker, nu + A (0.98 - phi)^8 u^4: the jets of a pinch-off would pass the lattice's sound speed, and break up at
- *   the size of a cell before that; the wall stress is read without it;
- * - gas that was faster than the limit c is held back, u / sqrt(1 + (1 - phi) (u^2/c^2 - 1)): a safety net, which takes momentum
- *   and would take a seventh of the buoyancy without the line above;
- * - velocities that change sign in every step lose 4 damping of themselves per step (a second difference in time, which
- *   leaves steady acceleration alone).
+ * With gas, `collideVelocity`: the populations carry the velocity u and s = 3 p/rhoLiquid, and no density at all. They stream velocity
+ * at the density of the liquid and with a small uniform viscosity nu0; forces.ts makes up for what differs from that.
+ * Equilibrium: moments of a product of two 1-D distributions, 1, u, CS2 + u^2 in each axis, with s for the 1 of the zeroth and
+ * P/rhoLiquid for its share of the second; the shear moments relax with 1/(3 nu0 + 1/2), in the frame of the flow. Gas that arrives
+ * faster than the limit c is held back, u / sqrt(1 + (1 - phi)^2 (m^2/c^2 - 1)): a safety net for the jets of a pinch-off.
  */
 import type { Box } from './box.ts';
 import { CS2 } from './constants.ts';
+import { share } from './forces.ts';
 
 /** One cell on its way through a collision: populations in and out, what the stages hand on. */
 export interface Cell {
@@ -29,20 +24,18 @@ export interface Cell {
   phi: number;
   phiX: number;
   phiY: number;
-  lapPhi: number;
-  driveX: number;
+  /** force per volume; with gas: what the velocity gains */
+  Fx: number;
+  Fy: number;
   /** what sound damping takes from ux */
   soundX: number;
-  /** share of the gas skimmed in this step */
+  /** skimmed share of this step */
   skim: number;
   ux: number;
   uy: number;
-  /** velocity one and two steps ago */
-  ux1: number;
-  uy1: number;
-  ux2: number;
-  uy2: number;
   p: number;
+  /** p with what damps sound, in the second moments */
+  P: number;
   /** theta/|grad phi| = (4/W) phi (1 - phi)/|grad phi|: 1 where the interface has its shape */
   sharpness: number;
   /** viscous shear stress eta (dux/dy + duy/dx) */
@@ -52,86 +45,70 @@ export interface Cell {
 export const newCell = (): Cell => ({
   f: new Float64Array(9),
   g: new Float64Array(9),
-  ...{ phi: 1, phiX: 0, phiY: 0, lapPhi: 0, driveX: 0, soundX: 0, skim: 0 },
-  ...{ ux: 0, uy: 0, ux1: 0, uy1: 0, ux2: 0, uy2: 0, p: 0, sharpness: 0, tauXY: 0 },
+  ...{ phi: 1, phiX: 0, phiY: 0, Fx: 0, Fy: 0, soundX: 0, skim: 0 },
+  ...{ ux: 0, uy: 0, p: 0, P: 0, sharpness: 0, tauXY: 0 },
 });
 
-/** gas that is not thickened: the liquid's side of an interface, and powers that would underflow there */
-const SKIN = 0.02;
+/** First moment of what arrives. */
+export const firstMoment = (f: ArrayLike<number>): [number, number] => [
+  f[1] - f[3] + f[5] - f[6] - f[7] + f[8],
+  f[2] - f[4] + f[5] + f[6] - f[7] - f[8],
+];
 
-const clip = (phi: number): number => Math.min(Math.max(phi, 0), 1);
-
-/** Flow collision: reads f, phi and its derivatives, earlier velocities; writes f, ux, uy, p, sharpness, tauXY. */
-export function collideFlow(box: Box, cell: Cell): void {
-  const { f, phi, phiX, phiY } = cell;
-  const dRho = box.rhoLiquid - box.rhoGas;
-  const inside = clip(phi);
-  const gas = 1 - inside;
-  const rho = box.rhoGas + inside * dRho;
-  const rhoX = dRho * phiX;
-  const rhoY = dRho * phiY;
-  const eta = 1 / (box.fluidityGas + inside * (box.fluidityLiquid - box.fluidityGas));
-  cell.sharpness = ((4 / box.W) * inside * gas) / Math.sqrt(phiX * phiX + phiY * phiY + 1e-12);
-
-  const mu = 4 * box.beta * phi * (phi - 1) * (phi - 0.5) - box.kappa * cell.lapPhi;
-  const Fx = mu * phiX - dRho * gas * box.gravityX + box.forceX + cell.driveX;
-  const Fy = mu * phiY - dRho * gas * box.gravityY + box.forceY;
-
-  const m10 = f[1] - f[3] + f[5] - f[6] - f[7] + f[8];
-  const m01 = f[2] - f[4] + f[5] + f[6] - f[7] - f[8];
+/** Flow collision of a box without gas: reads f, F, soundX; writes f, ux, uy, p, tauXY. */
+export function collideLiquid(box: Box, cell: Cell): void {
+  const { f, Fx, Fy } = cell;
+  const rho = box.rhoLiquid;
+  const [m10, m01] = firstMoment(f);
   const diagonals = f[5] + f[6] + f[7] + f[8];
   const m20 = f[1] + f[3] + diagonals;
   const m02 = f[2] + f[4] + diagonals;
   const m11 = f[5] - f[6] + f[7] - f[8];
-
-  const earlier2 = cell.ux1 ** 2 + cell.uy1 ** 2;
-  const held = 1 / Math.sqrt(1 + gas * Math.max(earlier2 * box.gasLimit - 1, 0));
-  let ux = ((m10 + 0.5 * Fx) / rho - cell.soundX) * held;
-  let uy = ((m01 + 0.5 * Fy) / rho) * held;
-  if (box.twoPhase) {
-    ux -= box.damping * (ux - 2 * cell.ux1 + cell.ux2);
-    uy -= box.damping * (uy - 2 * cell.uy1 + cell.uy2);
-  }
+  const ux = (m10 + 0.5 * Fx) / rho - cell.soundX;
+  const uy = (m01 + 0.5 * Fy) / rho;
   const u2 = ux * ux + uy * uy;
-  const uGradRho = ux * rhoX + uy * rhoY;
-  const p = 0.6 * (m20 + m02 - diagonals + 0.5 * uGradRho - (2 / 3) * rho * u2);
-
-  // skimming makes liquid of gas: u and p stay, momentum grows
-  const rhoAfter = rho + dRho * cell.skim * gas;
-  const jx = rhoAfter * ux;
-  const jy = rhoAfter * uy;
-  const diffusing = box.mobility * dRho * (1 - cell.sharpness);
-  const Jx = jx - diffusing * phiX;
-  const Jy = jy - diffusing * phiY;
-
-  // shear moments: relaxed
-  const nu = eta / rho;
-  const added = box.gasThickening * Math.max(gas - SKIN, 0) ** 8 * earlier2 * earlier2;
-  const omega = 1 / ((nu + added) / CS2 + 0.5);
-  const eDiff = Jx * ux - Jy * uy;
-  const e11 = 0.5 * (Jx * uy + Jy * ux);
-  const sDiff = 2 * CS2 * (ux * rhoX - uy * rhoY);
-  const s11 = CS2 * (ux * rhoY + uy * rhoX);
-  const dDiff = (1 - omega) * (m20 - m02 - eDiff) + (1 - 0.5 * omega) * sDiff;
-  const d11 = (1 - omega) * (m11 - e11) + (1 - 0.5 * omega) * s11;
-  cell.tauXY = (-(1 - 0.5 * omega) * (m11 - e11 + 0.5 * s11) * nu) / (nu + added);
-
-  // the others: equilibrium and half the source; third moments follow those of the shear that moves with the flow
-  const half00 = 0.5 * uGradRho;
-  const trace = 2 * p + Jx * ux + Jy * uy + 4 * CS2 * half00;
-  const q10 = jx + 0.5 * Fx;
-  const q01 = jy + 0.5 * Fy;
-  const q20 = 0.5 * (trace + eDiff + dDiff);
-  const q02 = 0.5 * (trace - eDiff - dDiff);
-  const k11 = d11 - 0.5 * s11;
-  const k20 = 0.5 * (dDiff - 0.5 * sDiff);
-  const q21 = CS2 * q01 + 2 * ux * k11 + uy * k20;
-  const q12 = CS2 * q10 + 2 * uy * k11 - ux * k20;
-  const q22 = CS2 * (p + rhoAfter * u2 + half00);
-  fromMoments(f, half00, q10, q01, q20, q02, e11 + d11, q21, q12, q22);
+  const p = 0.6 * (m20 + m02 - diagonals - (2 / 3) * rho * u2);
+  const omega = 1 / (1 / (box.fluidityLiquid * rho * CS2) + 0.5);
+  const [exx, eyy, e11] = [rho * ux * ux, rho * uy * uy, rho * ux * uy];
+  const d20 = 0.5 * (1 - omega) * (m20 - m02 - (exx - eyy));
+  const d11 = (1 - omega) * (m11 - e11);
+  cell.tauXY = -(1 - 0.5 * omega) * (m11 - e11);
+  const q10 = rho * ux + 0.5 * Fx;
+  const q01 = rho * uy + 0.5 * Fy;
+  const q21 = CS2 * q01 + 2 * ux * d11 + uy * d20;
+  const q12 = CS2 * q10 + 2 * uy * d11 - ux * d20;
+  fromMoments(f, 0, q10, q01, p + exx + d20, p + eyy - d20, e11 + d11, q21, q12, CS2 * (p + rho * u2));
   cell.ux = ux;
   cell.uy = uy;
   cell.p = p;
+}
+
+/** Flow collision of a box with gas: reads f, F, soundX, p, P; writes f, ux, uy. */
+export function collideVelocity(box: Box, cell: Cell): void {
+  const { f, Fx, Fy } = cell;
+  const [mx, my] = firstMoment(f);
+  const gas = 1 - share(cell.phi);
+  const held = 1 / Math.sqrt(1 + gas * gas * Math.max((mx * mx + my * my) * box.gasLimit - 1, 0));
+  const [u, v] = [(mx + Fx - cell.soundX) * held, (my + Fy) * held];
+  const keep = 1 - 1 / (box.nu0 / CS2 + 0.5);
+  const d11 = keep * (f[5] - f[6] + f[7] - f[8] - mx * my);
+  const d20 = 0.5 * keep * (f[1] + f[3] - f[2] - f[4] - (mx * mx - my * my));
+  velocityMoments(f, (3 * cell.p) / box.rhoLiquid, cell.P / box.rhoLiquid, u, v, d20, d11);
+  cell.ux = u;
+  cell.uy = v;
+}
+
+/**
+ * Populations with the zeroth moment s, the pressure share P of the second and the velocity u, v, off equilibrium by d20 (and
+ * -d20 in the other axis) and d11. What moves with the flow makes the higher moments.
+ */
+export function velocityMoments(f: Float64Array, s: number, P: number, u: number, v: number, d20: number, d11: number): void {
+  const [uu, vv] = [u * u, v * v];
+  const d21 = 2 * u * d11 + v * d20;
+  const d12 = 2 * v * d11 - u * d20;
+  const d22 = 2 * v * d21 - vv * d20 + 2 * u * d12 - 4 * u * v * d11 + uu * d20;
+  const q22 = CS2 * (P + uu + vv) + uu * vv + d22;
+  fromMoments(f, s, u, v, P + uu + d20, P + vv - d20, u * v + d11, v * (CS2 + uu) + d21, u * (CS2 + vv) + d12, q22);
 }
 
 /** Interface collision: reads g, phi, its gradient, sharpness, skim, ux, uy; writes g. All g are less w. */
@@ -147,7 +124,7 @@ export function collideInterface(box: Box, cell: Cell): void {
   const q10 = vx + (1 - box.omegaPhi) * (j10 - vx) + sharpen * phiX;
   const q01 = vy + (1 - box.omegaPhi) * (j01 - vy) + sharpen * phiY;
   const q22 = CS2 * (CS2 * z + vx * ux + vy * uy);
-  fromMoments(g, z, q10, q01, CS2 * z + vx * ux, CS2 * z + vy * uy, vx * uy, CS2 * vy, CS2 * vx, q22);
+  fromMoments(g, z, q10, q01, CS2 * z + vx * ux, CS2 * z + vy * uy, vx * uy, CS2 * q01, CS2 * q10, q22);
 }
 
 /** The nine populations from the nine raw moments. */

@@ -100,8 +100,8 @@ export class Compiled implements Simulation {
     };
     set(H.AT_PHI, phi);
     set(H.AT_Z, phi - 1);
-    for (const entry of [H.AT_UX, H.AT_UX_BEFORE]) set(entry, ux);
-    for (const entry of [H.AT_UY, H.AT_UY_BEFORE]) set(entry, uy);
+    set(H.AT_UX, ux);
+    set(H.AT_UY, uy);
     set(H.AT_P, p);
   }
 

@@ -1,7 +1,7 @@
 // The header of the kernel's memory: one f64 per entry, at byte 8 * entry. Literals only, compiled by both compilers.
 
 /** checked by the host against the kernel's own copy when it is loaded */
-export const VERSION = 3;
+export const VERSION = 5;
 /** bytes kept for the header */
 export const HEADER_BYTES = 1024;
 
@@ -21,7 +21,7 @@ export const AT_Z = 6;
 export const AT_UX = 7;
 export const AT_UY = 8;
 export const AT_P = 9;
-/** viscous shear stress of the rows next to the walls: two fields, of odd and of even steps */
+/** viscous shear stress, written in the rows next to the walls of a box without gas */
 export const AT_TAU = 10;
 /** 1 fluid, 0 solid or padding */
 export const AT_MASK = 11;
@@ -42,10 +42,8 @@ export const GHOSTS = 19;
 export const AT_SAMPLES = 20;
 /** samples in the buffer */
 export const SAMPLES = 21;
-/** phi, ux and uy of the last step and ux, uy one step before; phi and p are written in the last step of a call */
+/** phi, written in the last step of a call; so is p in a box without gas */
 export const AT_PHI = 22;
-export const AT_UX_BEFORE = 23;
-export const AT_UY_BEFORE = 48;
 
 // ---- sides: 0 periodic, 1 wall, 2 slip; speed of a moving wall
 export const SIDE_LEFT = 24;
@@ -75,15 +73,36 @@ export const SPEED_LIMIT = 45;
 /** 0 none, 1 loss, 2 upflow; the coefficient or the target */
 export const DRIVE_KIND = 46;
 export const DRIVE_VALUE = 47;
+export const SOUND_DAMPING = 49;
+/** viscosity that the populations carry in a box with gas */
+export const NU0 = 50;
 /** 1 / (gas speed limit)^2 */
-export const GAS_LIMIT = 49;
-export const DAMPING = 50;
-/** mobility M */
-export const MOBILITY = 51;
-export const GAS_THICKENING = 52;
-export const SOUND_DAMPING = 53;
+export const GAS_LIMIT = 51;
 /** three rows: the sums of ux and of gas over each section so far; what sound damping takes from ux in the next step */
 export const AT_SECTIONS = 54;
+
+// ---- boxes with gas: what arrives at each cell
+/** velocity, with ghosts */
+export const AT_MX = 55;
+export const AT_MY = 56;
+/** P, with two ghosts on each side */
+export const AT_PRESSURE = 57;
+/** 1 / rho, with ghosts */
+export const AT_LIGHT = 58;
+/** 1 where momentum passes, with ghosts */
+export const AT_OPEN = 59;
+/** sum of f; difference and mixed second moment of f less m m; first moment of g */
+export const AT_SUM = 60;
+export const AT_N20 = 61;
+export const AT_N11 = 62;
+export const AT_J10 = 63;
+export const AT_J01 = 75;
+/** nine i32 each: place x, y, direction; then the same of the stand-in of f and of that of g */
+export const AT_RETURNS = 76;
+export const RETURNS = 77;
+/** f64: place, n, then n times cell, cell behind, 1 if there is one, speed of the wall along x, along y; places in bytes from cell (0, 0) */
+export const AT_WALL_GHOSTS = 78;
+export const WALL_GHOSTS = 79;
 
 // ---- state
 export const STEP = 64;

@@ -1,13 +1,17 @@
-import { type Box, wallSpeed } from './box.ts';
+import type { Box } from './box.ts';
 import * as H from './header.ts';
 import type { Side } from './setup.ts';
+import { wallSpeed } from './walls.ts';
 
 /** First byte the host gives out: the header lies at 0, the kernel's own statics at 65536. */
 const FIRST = 131072;
 /** room for samples between two hand-overs */
 const SAMPLE_BYTES = 4 << 20;
 
-const FIELDS = [H.AT_PHI, H.AT_UX, H.AT_UY, H.AT_UX_BEFORE, H.AT_UY_BEFORE, H.AT_P, H.AT_MASK];
+const FIELDS = [H.AT_PHI, H.AT_UX, H.AT_UY, H.AT_P, H.AT_MASK, H.AT_TAU];
+/** in boxes with gas alone */
+const ARRIVING = [H.AT_SUM, H.AT_N20, H.AT_N11, H.AT_J10, H.AT_J01];
+const WITH_GHOSTS = [H.AT_Z, H.AT_MX, H.AT_MY, H.AT_LIGHT, H.AT_OPEN];
 
 /** What the host knows of the kernel's memory beside the header. */
 export interface MemoryMap {
@@ -27,7 +31,7 @@ export interface MemoryMap {
  *     | 16 bytes, the last number is ghost -1 | cells, padded to whole groups | 16 bytes |
  */
 export function layMemory(box: Box): MemoryMap {
-  const { nx, ny, geometry, setup } = box;
+  const { nx, ny, geometry, setup, walls } = box;
   const bytesPerNumber = setup.precision === 'f64' ? 8 : 4;
   const lanes = 16 / bytesPerNumber;
   const strideBytes = 32 + Math.ceil(nx / lanes) * 16;
@@ -43,15 +47,17 @@ export function layMemory(box: Box): MemoryMap {
   const neighbours = geometry.ghosts.reduce((n, ghost) => n + ghost.neighbours.length, 0);
   const entries: [number, number][] = [
     [H.AT_POPULATIONS, take(ring * 18 * strideBytes) + 16],
-    [H.AT_Z, take((ny + 2) * strideBytes) + 16 + strideBytes],
-    ...FIELDS.map((at): [number, number] => [at, take(ny * strideBytes) + 16]),
-    [H.AT_TAU, take(2 * ny * strideBytes) + 16],
+    [H.AT_PRESSURE, take((ny + 4) * strideBytes) + 16 + 2 * strideBytes],
+    ...WITH_GHOSTS.map((at): [number, number] => [at, take((ny + 2) * strideBytes) + 16 + strideBytes]),
+    ...[...FIELDS, ...(box.twoPhase ? ARRIVING : [])].map((at): [number, number] => [at, take(ny * strideBytes) + 16]),
     [H.AT_SKIM, take(strideBytes)],
     [H.AT_WEIGHTS, take(4 * strideBytes)],
     [H.AT_SECTIONS, take(3 * strideBytes)],
     [H.AT_LINKS, take(20 * geometry.links.length)],
     [H.AT_RUNS, take(12 * geometry.runs.length)],
     [H.AT_GHOSTS, take(24 * (geometry.ghosts.length + neighbours))],
+    [H.AT_RETURNS, take(36 * walls.returns.length)],
+    [H.AT_WALL_GHOSTS, take(8 * walls.ghosts.reduce((n, ghost) => n + 2 + 5 * ghost.faces.length, 0))],
     [H.AT_SAMPLES, take(sampleCapacity * sampleBytes)],
   ];
   const pages = Math.ceil(end / 65536);
@@ -66,6 +72,7 @@ export function layMemory(box: Box): MemoryMap {
   const map: MemoryMap = { memory, header, bytesPerNumber, stride: strideBytes / bytesPerNumber, sampleCapacity };
   writeNumbers(box, header);
   writeLists(box, map);
+  if (box.twoPhase) writeWalls(box, map);
   return map;
 }
 
@@ -99,9 +106,7 @@ function writeNumbers(box: Box, header: Float64Array): void {
   header[H.GRAVITY_Y] = box.gravityY;
   header[H.SPEED_LIMIT] = box.speedLimit;
   header[H.GAS_LIMIT] = box.gasLimit;
-  header[H.DAMPING] = box.damping;
-  header[H.MOBILITY] = box.mobility;
-  header[H.GAS_THICKENING] = box.gasThickening;
+  header[H.NU0] = box.nu0;
   header[H.SOUND_DAMPING] = box.soundDamping;
   header[H.DRIVE_KIND] = box.drive === undefined ? 0 : box.drive.kind === 'loss' ? 1 : 2;
   header[H.DRIVE_VALUE] = box.drive === undefined ? 0 : box.drive.kind === 'loss' ? box.drive.coefficient : box.drive.target;
@@ -130,6 +135,27 @@ function writeLists(box: Box, map: MemoryMap): void {
   numbers(map, header[H.AT_SKIM], nx).set(box.skim);
   for (let y = 0; y < ny; y++) {
     numbers(map, header[H.AT_MASK] + y * header[H.STRIDE], nx).set(geometry.fluid.subarray(y * nx, (y + 1) * nx));
+  }
+}
+
+function writeWalls(box: Box, map: MemoryMap): void {
+  const { nx, ny, walls } = box;
+  const { header, memory, bytesPerNumber } = map;
+  header[H.RETURNS] = walls.returns.length;
+  header[H.WALL_GHOSTS] = walls.ghosts.length;
+  const returns = new Int32Array(memory.buffer, header[H.AT_RETURNS], 9 * walls.returns.length);
+  walls.returns.forEach(({ x, y, k, flow: f, interface: g }, n) => {
+    returns.set([x, y, k, f.x, f.y, f.k, g.x, g.y, g.k], 9 * n);
+  });
+  const place = (at: { x: number; y: number }): number => at.y * header[H.STRIDE] + at.x * bytesPerNumber;
+  const ghosts = walls.ghosts.flatMap((ghost) => [
+    ...[place(ghost), ghost.faces.length],
+    ...ghost.faces.flatMap((face) => [place(face), place(face.behind ?? face), face.behind ? 1 : 0, face.ux, face.uy]),
+  ]);
+  new Float64Array(memory.buffer, header[H.AT_WALL_GHOSTS], ghosts.length).set(ghosts);
+  for (let y = -1; y <= ny; y++) {
+    const row = walls.open.subarray((y + 1) * (nx + 2), (y + 2) * (nx + 2));
+    numbers(map, header[H.AT_OPEN] + place({ x: -1, y }), nx + 2).set(row);
   }
 }
 

@@ -1,21 +1,23 @@
 /**
  * The method in plain f64 TypeScript: a text to read, and the oracle of the kernel's tests. One step, in order:
  *
- * 1. `fillGhosts` (ghosts.ts): populations leaving the box come back through its sides; solids return what met them.
- * 2. `interfacePass`: phi of every cell is the sum of the g that arrive; skimming; ghosts of phi carry the wetting.
- * 3. `cell`: gradients of phi, forces, velocity, pressure, wall stress; then both collisions (collide.ts).
+ * 1. Ghosts of the populations (ghosts.ts): those leaving the box come back through its sides; solids return what met them.
+ * 2. With gas: `arrivals`, phi of every cell as the sum of the g that arrive, the velocity and the divergence that the f bring;
+ *    ghosts of phi carry the wetting; `pressures` (forces.ts); ghosts of velocity and pressure.
+ * 3. `cells`: the force, velocity, wall stress; then the collisions (collide.ts).
  *
- * Layout: fields of shape (ny + 2, nx + 2), row-major, a ghost ring of one; populations one such field per direction,
+ * Layout: fields of shape (ny + 2, nx + 2), row-major, a ghost ring of one (P: of two); populations one such field per direction,
  * after collision, f as it is (it sums to about 0), g less w: both are deviations, which f32 keeps to more digits.
  */
 import ndarray from 'ndarray';
 import { type Box, driveForce, resolve } from './box.ts';
-import { type Cell, collideFlow, collideInterface, newCell } from './collide.ts';
+import { type Cell, collideInterface, collideLiquid, collideVelocity, firstMoment, newCell } from './collide.ts';
 import { Q } from './constants.ts';
-import { fillGhosts, indexOf } from './ghosts.ts';
+import { clip, coupling, type FlowFields, kick, pressureUpdate, share, viscosity, wideIndex } from './forces.ts';
+import { fillGhosts, fillPhiGhosts, fillReturns, fillWallGhosts, fillWide, indexOf } from './ghosts.ts';
 import { ex, ey } from './lattice.ts';
 import { Recorder } from './recorder.ts';
-import type { Setup, Side } from './setup.ts';
+import type { Setup } from './setup.ts';
 import type { Field, Samples, Simulation, Status } from './simulation.ts';
 import { equilibriumState, placeCircle } from './state.ts';
 
@@ -33,9 +35,9 @@ export class Reference implements Simulation {
   private g: Float64Array[];
   private fNext: Float64Array[];
   private gNext: Float64Array[];
-  private readonly fields: Record<'phi' | 'ux' | 'uy' | 'p' | 'ux2' | 'uy2', Float64Array>;
-  /** stress of the first and second row at either wall, of this step and the one before; shape (8, nx) */
-  private stress: Float64Array[];
+  private readonly fields: FlowFields & Record<'ux' | 'uy' | 'p', Float64Array>;
+  /** stress of the first and second row at either wall, of a box without gas; shape (4, nx) */
+  private readonly stress: Float64Array[];
   /** sums of ux and gas over each section, and what sound damping takes from ux in the next step; shape (nx) each */
   private readonly sections: Float64Array;
   private readonly sectionGas: Float64Array;
@@ -57,9 +59,12 @@ export class Reference implements Simulation {
     this.g = populations();
     this.fNext = populations();
     this.gNext = populations();
-    this.fields = { phi: field(), ux: field(), uy: field(), p: field(), ux2: field(), uy2: field() };
+    this.fields = {
+      ...{ phi: field(), mx: field(), my: field(), sum: field(), P: new Float64Array((nx + 4) * (ny + 4)) },
+      ...{ ux: field(), uy: field(), p: field() },
+    };
     this.fields.phi.fill(1);
-    this.stress = Array.from({ length: 8 }, () => new Float64Array(nx));
+    this.stress = Array.from({ length: 4 }, () => new Float64Array(nx));
     this.sections = new Float64Array(nx);
     this.sectionGas = new Float64Array(nx);
     this.sound = new Float64Array(nx);
@@ -99,16 +104,21 @@ export class Reference implements Simulation {
       this.g[k][i] = state.g[k];
     }
     this.fields.phi[i] = phi;
-    this.fields.ux[i] = this.fields.ux2[i] = ux;
-    this.fields.uy[i] = this.fields.uy2[i] = uy;
+    this.fields.ux[i] = ux;
+    this.fields.uy[i] = uy;
     this.fields.p[i] = p;
   }
 
   advance(steps: number, sampleEvery = 0): Status {
     for (let n = 0; n < steps; n++) {
-      fillGhosts(this.box, this.f, this.fields.phi);
-      if (this.box.twoPhase) fillGhosts(this.box, this.g, undefined);
-      if (this.box.twoPhase) this.interfacePass();
+      if (this.box.twoPhase) {
+        fillReturns(this.box, this.f, 'flow');
+        fillReturns(this.box, this.g, 'interface');
+        this.arrivals();
+        this.dampSound();
+        fillPhiGhosts(this.box, this.fields.phi);
+        this.pressures();
+      } else fillGhosts(this.box, this.f);
       const status = this.cells();
       [this.f, this.fNext] = [this.fNext, this.f];
       [this.g, this.gNext] = [this.gNext, this.g];
@@ -119,56 +129,51 @@ export class Reference implements Simulation {
     return { kind: 'ok', step: this.step };
   }
 
-  // ---- 2. phi
+  // ---- 2. phi, velocity and pressure as they arrive
 
-  private interfacePass(): void {
+  private arrivals(): void {
     const { nx, ny, skim, geometry } = this.box;
     const { phi } = this.fields;
     let gas = 0;
     let skimmed = 0;
+    this.sections.fill(0);
+    this.sectionGas.fill(0);
     for (let y = 0; y < ny; y++) {
       for (let x = 0; x < nx; x++) {
         const i = this.at(x, y);
         let z = 0;
-        for (let k = 0; k < Q; k++) z += this.g[k][i - ey[k] * this.S - ex[k]];
+        let sum = 0;
+        for (let k = 0; k < Q; k++) {
+          const from = i - ey[k] * this.S - ex[k];
+          z += this.g[k][from];
+          sum += this.f[k][from];
+          this.cell.f[k] = this.f[k][from];
+        }
         phi[i] = 1 + z;
+        this.fields.sum[i] = sum;
+        [this.fields.mx[i], this.fields.my[i]] = firstMoment(this.cell.f);
         if (geometry.fluid[y * nx + x] === 0) continue;
+        this.sections[x] += this.fields.mx[i];
+        this.sectionGas[x] += 1 - clip(1 + z);
         gas -= z * (1 - skim[x]);
         skimmed -= z * skim[x];
       }
     }
     this.totalsNow[3] = gas;
     this.totalsNow[4] += skimmed;
-    this.fillPhiGhosts();
   }
 
-  /** phi at a wall whose first cell holds `phi`, from d(phi)/dn = -(4/W) cos(theta) phi (1 - phi), and the ghost beyond it. */
-  private wettedGhost(phi: number): number {
-    const c = this.box.wetting;
-    const inside = Math.min(Math.max(phi, 0), 1);
-    const wall = (4 * inside) / (2 - c + Math.sqrt((2 - c) * (2 - c) + 8 * c * inside));
-    return phi + 2 * (wall - inside);
-  }
-
-  private fillPhiGhosts(): void {
-    const { nx, ny, setup, geometry } = this.box;
-    const { phi } = this.fields;
-    for (const ghost of geometry.ghosts) {
-      let mean = 0;
-      for (const n of ghost.neighbours) mean += n.weight * phi[this.at(n.x, n.y)];
-      phi[this.at(ghost.x, ghost.y)] = this.wettedGhost(mean);
+  private pressures(): void {
+    const { nx, ny } = this.box;
+    const { fields, box } = this;
+    for (let y = 0; y < ny; y++) {
+      for (let x = 0; x < nx; x++) {
+        const i = this.at(x, y);
+        [fields.p[i], fields.P[wideIndex(box, i)]] = pressureUpdate(box, fields, i, fields.p[i]);
+      }
     }
-    const beyond = (side: Side, inside: number, across: number): number =>
-      side === 'periodic' ? phi[across] : side === 'slip' ? phi[inside] : this.wettedGhost(phi[inside]);
-    const { left, right, bottom, top } = setup.sides;
-    for (let x = 0; x < nx; x++) {
-      phi[this.at(x, -1)] = beyond(left, this.at(x, 0), this.at(x, ny - 1));
-      phi[this.at(x, ny)] = beyond(right, this.at(x, ny - 1), this.at(x, 0));
-    }
-    for (let y = -1; y <= ny; y++) {
-      phi[this.at(-1, y)] = beyond(bottom, this.at(0, y), this.at(nx - 1, y));
-      phi[this.at(nx, y)] = beyond(top, this.at(nx - 1, y), this.at(0, y));
-    }
+    fillWallGhosts(box, fields);
+    fillWide(box, fields.P);
   }
 
   // ---- 3. collision
@@ -176,9 +181,8 @@ export class Reference implements Simulation {
   private cells(): Status | undefined {
     const { nx, ny, geometry, speedLimit } = this.box;
     const { f, g, S, cell, fields } = this;
-    this.sections.fill(0);
-    this.sectionGas.fill(0);
-    this.stress = [...this.stress.slice(4), ...this.stress.slice(0, 4)];
+    let upflow = 0;
+    if (!this.box.twoPhase) this.sections.fill(0);
     let bad: Status | undefined;
     for (let y = 0; y < ny; y++) {
       for (let x = 0; x < nx; x++) {
@@ -192,27 +196,21 @@ export class Reference implements Simulation {
           cell.f[k] = f[k][from];
           cell.g[k] = g[k][from];
         }
-        if (this.box.twoPhase) this.gradients(i);
-        cell.driveX = this.totalsNow[0];
+        cell.Fx = this.box.forceX + this.totalsNow[0];
+        cell.Fy = this.box.forceY;
         cell.soundX = this.sound[x];
-        cell.ux1 = fields.ux[i];
-        cell.uy1 = fields.uy[i];
-        cell.ux2 = fields.ux2[i];
-        cell.uy2 = fields.uy2[i];
         cell.skim = this.box.skim[x];
-        collideFlow(this.box, cell);
-        if (this.box.twoPhase) collideInterface(this.box, cell);
+        if (this.box.twoPhase) this.collideTwoPhase(i);
+        else collideLiquid(this.box, cell);
         for (let k = 0; k < Q; k++) {
           this.fNext[k][i] = cell.f[k];
           this.gNext[k][i] = cell.g[k];
         }
-        fields.ux2[i] = cell.ux1;
-        fields.uy2[i] = cell.uy1;
         fields.ux[i] = cell.ux;
         fields.uy[i] = cell.uy;
         fields.p[i] = cell.p;
-        this.sections[x] += cell.ux;
-        this.sectionGas[x] += 1 - Math.min(Math.max(cell.phi, 0), 1);
+        if (!this.box.twoPhase) this.sections[x] += cell.ux;
+        upflow += cell.ux;
         if (y < 2) this.stress[y][x] = cell.tauXY;
         if (y >= ny - 2) this.stress[2 + ny - 1 - y][x] = cell.tauXY;
         const speed = Math.hypot(cell.ux, cell.uy);
@@ -222,17 +220,21 @@ export class Reference implements Simulation {
       }
     }
     const before = this.totalsNow[1];
-    const now = this.sections.reduce((sum, ux) => sum + ux, 0) / (nx * ny);
-    this.dampSound();
+    const now = upflow / (nx * ny);
+    if (!this.box.twoPhase) this.dampSound();
     this.totalsNow[0] = driveForce(this.box.drive, this.box.rhoLiquid, this.totalsNow[0], now, before);
     this.totalsNow[1] = now;
     this.totalsNow[2] = before;
     return bad;
   }
 
-  /** What sound damping takes in the next step: sections without gas weigh 1, those with a fiftieth of it or more 0. */
+  /**
+   * What sound damping takes from ux: with gas in this very step, from what arrives, since what is taken a step late feeds velocities
+   * that change sign in every step; without gas in the next one. Sections without gas weigh 1, those with a fiftieth of it or more 0.
+   */
   private dampSound(): void {
     const { ny, soundDamping } = this.box;
+    if (soundDamping === 0) return;
     const weights = this.sectionGas.map((gas) => Math.max(0, 1 - (50 * gas) / ny));
     const all = weights.reduce((sum, weight) => sum + weight, 0);
     const reference = all > 0 ? weights.reduce((sum, weight, x) => sum + weight * this.sections[x], 0) / all : 0;
@@ -241,16 +243,30 @@ export class Reference implements Simulation {
     });
   }
 
-  /** Isotropic gradient (8 neighbours) and Laplacian (9 points) of phi. */
-  private gradients(i: number): void {
-    const { phi } = this.fields;
-    const { S, cell } = this;
-    const [E, N, Wst, Sth] = [phi[i + 1], phi[i + S], phi[i - 1], phi[i - S]];
+  /** Forces and both collisions of a cell of a box with gas. */
+  private collideTwoPhase(i: number): void {
+    const { box, cell, fields } = this;
+    const { phi, p, P } = fields;
+    const { S } = this;
+    const [E, N, W, So] = [phi[i + 1], phi[i + S], phi[i - 1], phi[i - S]];
     const [NE, NW, SW, SE] = [phi[i + S + 1], phi[i + S - 1], phi[i - S - 1], phi[i - S + 1]];
-    cell.phi = phi[i];
-    cell.phiX = (E - Wst) / 3 + (NE - NW + SE - SW) / 12;
-    cell.phiY = (N - Sth) / 3 + (NE - SE + NW - SW) / 12;
-    cell.lapPhi = (4 * (E + Wst + N + Sth) + NE + NW + SE + SW - 20 * phi[i]) / 6;
+    const a = phi[i];
+    cell.phi = a;
+    cell.phiX = (E - W) / 3 + (NE - NW + SE - SW) / 12;
+    cell.phiY = (N - So) / 3 + (NE - SE + NW - SW) / 12;
+    const laplacian = (4 * (E + W + N + So) + NE + NW + SE + SW - 20 * a) / 6;
+    const gas = 1 - clip(a);
+    cell.sharpness = ((4 / box.W) * (1 - gas) * gas) / Math.sqrt(cell.phiX ** 2 + cell.phiY ** 2 + 1e-12);
+    const mu = 4 * box.beta * a * (a - 1) * (a - 0.5) - box.kappa * laplacian;
+    const heavy = (1 - share(a)) * (box.rhoLiquid - box.rhoGas);
+    const forceX = mu * cell.phiX - heavy * box.gravityX + cell.Fx;
+    const forceY = mu * cell.phiY - heavy * box.gravityY + cell.Fy;
+    [cell.Fx, cell.Fy] = kick(box, fields, i, forceX, forceY);
+    cell.p = p[i];
+    cell.P = P[wideIndex(box, i)];
+    collideVelocity(box, cell);
+    cell.f[0] += coupling(box, fields, i);
+    collideInterface(box, cell);
   }
 
   // ---- samples, totals, changes from outside
@@ -260,16 +276,26 @@ export class Reference implements Simulation {
     const { phi } = this.fields;
     const [a0, a1] = geometry.wallWeights.left;
     const [b0, b1] = geometry.wallWeights.right;
-    // of two steps: what changes sign from one to the next is of the lattice, not of the flow
-    const mean = (row: number, x: number) =>
-      this.step === 1 ? this.stress[row][x] : 0.5 * (this.stress[row][x] + this.stress[row + 4][x]);
     const row = this.recorder.next(this.step, this.totalsNow[1], this.totalsNow[3], this.totalsNow[4]);
     for (let x = 0; x < nx; x++) {
-      row.shearLeft[x] = a0[x] * mean(0, x) + a1[x] * mean(1, x);
-      row.shearRight[x] = -(b0[x] * mean(2, x) + b1[x] * mean(3, x));
+      if (this.box.twoPhase) {
+        row.shearLeft[x] = this.friction(x, 0, -1);
+        row.shearRight[x] = this.friction(x, ny - 1, ny);
+      } else {
+        row.shearLeft[x] = a0[x] * this.stress[0][x] + a1[x] * this.stress[1][x];
+        row.shearRight[x] = -(b0[x] * this.stress[2][x] + b1[x] * this.stress[3][x]);
+      }
       row.phiLeft[x] = (phi[this.at(x, 0)] + phi[this.at(x, -1)]) / 2;
       row.phiRight[x] = (phi[this.at(x, ny - 1)] + phi[this.at(x, ny)]) / 2;
     }
+  }
+
+  /** The very force along x that the wall beyond a cell took from it in this step; 0 under a solid and on sides that are no wall. */
+  private friction(x: number, inside: number, beyond: number): number {
+    const { phi, mx } = this.fields;
+    const [i, j] = [this.at(x, inside), this.at(x, beyond)];
+    const { open } = this.box.walls;
+    return open[i] === 1 && open[j] === 0 ? viscosity(this.box, 0.5 * (phi[i] + phi[j])) * (mx[i] - mx[j]) : 0;
   }
 
   takeSamples(): Samples {

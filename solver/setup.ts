@@ -60,18 +60,14 @@ export interface Setup {
     velocity?: (x: number, y: number) => Vector;
     pressure?: (x: number, y: number) => number;
   };
-  /** speed above which gas, and gas alone, is held back smoothly; 0.15 by default, Infinity for none */
-  gasSpeedLimit?: number;
-  /** A of the viscosity A (0.98 - phi)^8 u^4 added where gas is fast, so that its jets stay smooth; 300 by default */
-  gasThickening?: number;
   /**
    * Share per step by which the mean of ux over a section that holds liquid alone is drawn to that of all such sections; 0 by
    * default. Between sides that let nothing through they are equal in a liquid that cannot be compressed: what this damps is
    * sound along x, and nothing else.
    */
   soundDamping?: number;
-  /** damping of velocities that change sign from step to step; 0.005 by default, in boxes with gas */
-  damping?: number;
+  /** speed above which gas, and gas alone, is held back smoothly: a safety net for its jets; 0.2 by default, Infinity for none */
+  gasSpeedLimit?: number;
   /** speed at which a run is stopped as too fast; 0.4 by default */
   speedLimit?: number;
   /** f32 by default; f64 serves validation */

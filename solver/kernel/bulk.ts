@@ -1,10 +1,12 @@
 // The flow collision of one row of a box that holds liquid alone: flow.ts with phi = 1 and no gradients.
 // Reads f of rows y - 1, y, y + 1 and mask; writes f over row y - 2, ux and uy, and on demand p and tau.
 import * as H from '../header';
-import { address, entry, fieldRow, nx, row, stride, tauRow } from './rows';
+import { address, entry, fieldRow, nx, row, stride } from './rows';
 import { tremble } from './tremble';
-import { add, atLeast, get, largest, mad, mul, nmad, put, splat, sub } from './vector';
-import { FIELDS, STRESS } from './flow';
+import { add, get, largest, mad, max, mul, nmad, put, splat, sub } from './vector';
+
+export const FIELDS: i32 = 1;
+export const STRESS: i32 = 2;
 
 export let bulkTopU2: f64 = 0;
 
@@ -26,7 +28,7 @@ export function bulkRow<T>(y: i32, flags: i32): void {
   const uxOut = fieldRow(H.AT_UX, y);
   const uyOut = fieldRow(H.AT_UY, y);
   const pOut = fieldRow(H.AT_P, y);
-  const tauOut = tauRow(y);
+  const tauOut = fieldRow(H.AT_TAU, y);
 
   const density = entry(H.RHO_LIQUID);
   const omegaNumber = 1 / (3 / (density * entry(H.FLUIDITY_LIQUID)) + 0.5);
@@ -45,7 +47,6 @@ export function bulkRow<T>(y: i32, flags: i32): void {
   const halfFx = splat<T>(0.5 * driveX + tremble<T>(driveX));
   const halfFy = splat<T>(0.5 * driveY + tremble<T>(driveY));
   let top = splat<T>(0);
-  let energy = splat<T>(0);
 
   const end = <usize>nx * size;
   let i: usize = 0;
@@ -78,8 +79,7 @@ export function bulkRow<T>(y: i32, flags: i32): void {
     const rhoU2 = add<T>(xx, yy);
     const u2 = mad<T>(ux, ux, mul<T>(uy, uy));
     put(sections + i, add<T>(get(sections + i), ux));
-    top = atLeast<T>(top, u2);
-    energy = add<T>(energy, u2);
+    top = max<T>(top, u2);
     const moving = add<T>(add<T>(x13, y24), add<T>(b57, b86));
     const p = mul<T>(splat<T>(0.6), nmad<T>(twoThirds, rhoU2, moving));
 
@@ -121,5 +121,5 @@ export function bulkRow<T>(y: i32, flags: i32): void {
     if (flags & STRESS) put(tauOut + i, mul<T>(toStress, n11));
     i += 16;
   } while (i < end);
-  bulkTopU2 = largest<T>(top, energy);
+  bulkTopU2 = largest<T>(top);
 }

@@ -1,110 +1,96 @@
-// Both collisions of one row, f and g: the formulas of collide.ts, whose text explains them, in lanes along x.
-// Form of the flow equation: momentum-based (Liang et al. 2018, Phys. Rev. E 97, 033309; from memory). It lives here alone.
-// Reads f and g of rows y - 1, y, y + 1, z and its ghosts, mask, skim, the velocities of the last two steps; writes f and g over
-// row y - 2, ux and uy, on demand phi and p (flag FIELDS) and tau (flag STRESS). Adds ux
-// and gas to the sums of the sections and leaves the largest u^2 of the row in `topU2`.
+// Force and both collisions of one row of a box with gas: the formulas of forces.ts and collide.ts, whose texts explain them, in
+// lanes along x. Reads what arrive.ts and pressure.ts left, with ghosts; writes f and g of the row in place, ux and uy, on demand phi
+// (flag FIELDS). Adds ux and gas to the sums of the sections and leaves the largest u^2 of the row in `topU2`.
 import * as H from '../header';
-import { address, entry, fieldRow, nx, row, stride, tauRow, zRow } from './rows';
+import { FIELDS } from './bulk';
+import { address, entry, fieldRow, nx, row, stride, zRow } from './rows';
 import { tremble } from './tremble';
-import { add, atLeast, atMost, div, get, largest, mad, mul, nmad, put, root, splat, sub } from './vector';
+import { add, atLeast, atMost, div, get, largest, mad, max, mul, nmad, noneBelow, PURE, put, root, share, splat, sub } from './vector';
 
-export const FIELDS: i32 = 1;
-export const STRESS: i32 = 2;
+const COUPLING: f64 = 0.25;
 
 export let topU2: f64 = 0;
 
+/** eta at the face between two cells */
+// @ts-ignore: decorator
+@inline function thickness<T>(z: v128, other: v128, gas: v128, more: v128): v128 {
+  return div<T>(splat<T>(1), mad<T>(share<T>(mul<T>(splat<T>(0.5), add<T>(z, other))), more, gas));
+}
+
+/** share of one face in the coupling: weight times (3 (P' - P) - (P'' - P behind)) */
+// @ts-ignore: decorator
+@inline function part<T>(weight: v128, beyond: v128, own: v128, far: v128, behind: v128): v128 {
+  return mul<T>(weight, sub<T>(mul<T>(splat<T>(3), sub<T>(beyond, own)), sub<T>(far, behind)));
+}
+
 export function collideRow<T>(y: i32, flags: i32): void {
   const size = sizeof<T>();
-  const south = row(y - 1);
-  const here = row(y);
-  const north = row(y + 1);
-  const f1 = here + stride - size;
-  const f2 = south + 2 * stride;
-  const f3 = here + 3 * stride + size;
-  const f4 = north + 4 * stride;
-  const f5 = south + 5 * stride - size;
-  const f6 = south + 6 * stride + size;
-  const f7 = north + 7 * stride + size;
-  const f8 = north + 8 * stride - size;
-  const o0 = row(y - 2);
-  const o1 = o0 + stride;
-  const o2 = o1 + stride;
-  const o3 = o2 + stride;
-  const o4 = o3 + stride;
-  const o5 = o4 + stride;
-  const o6 = o5 + stride;
-  const o7 = o6 + stride;
-  const o8 = o7 + stride;
-  const g1 = f1 + 9 * stride;
-  const g2 = f2 + 9 * stride;
-  const g3 = f3 + 9 * stride;
-  const g4 = f4 + 9 * stride;
-  const g5 = f5 + 9 * stride;
-  const g6 = f6 + 9 * stride;
-  const g7 = f7 + 9 * stride;
-  const g8 = f8 + 9 * stride;
-  const r0 = o8 + stride;
-  const r1 = r0 + stride;
-  const r2 = r1 + stride;
-  const r3 = r2 + stride;
-  const r4 = r3 + stride;
-  const r5 = r4 + stride;
-  const r6 = r5 + stride;
-  const r7 = r6 + stride;
-  const r8 = r7 + stride;
-  const zS = zRow(y - 1);
+  const o0 = row(y);
+  const r0 = o0 + 9 * stride;
   const zC = zRow(y);
-  const zN = zRow(y + 1);
+  const zS = zC - stride;
+  const zN = zC + stride;
+  const mxC = fieldRow(H.AT_MX, y);
+  const mxS = mxC - stride;
+  const mxN = mxC + stride;
+  const myC = fieldRow(H.AT_MY, y);
+  const myS = myC - stride;
+  const myN = myC + stride;
+  const PC = fieldRow(H.AT_PRESSURE, y);
+  const PS = PC - stride;
+  const PN = PC + stride;
+  const lightC = fieldRow(H.AT_LIGHT, y);
+  const openC = fieldRow(H.AT_OPEN, y);
+  const pC = fieldRow(H.AT_P, y);
+  const n20C = fieldRow(H.AT_N20, y);
+  const n11C = fieldRow(H.AT_N11, y);
+  const j10C = fieldRow(H.AT_J10, y);
+  const j01C = fieldRow(H.AT_J01, y);
   const mask = fieldRow(H.AT_MASK, y);
   const skim = address(H.AT_SKIM);
   const uxAt = fieldRow(H.AT_UX, y);
   const uyAt = fieldRow(H.AT_UY, y);
-  const uxBefore = fieldRow(H.AT_UX_BEFORE, y);
-  const uyBefore = fieldRow(H.AT_UY_BEFORE, y);
   const phiOut = fieldRow(H.AT_PHI, y);
-  const pOut = fieldRow(H.AT_P, y);
-  const tauOut = tauRow(y);
+  const sections = address(H.AT_SECTIONS);
+  const sound = sections + 2 * stride;
 
-  const drho = entry(H.RHO_LIQUID) - entry(H.RHO_GAS);
+  const rhoLiquid = entry(H.RHO_LIQUID);
+  const drho = rhoLiquid - entry(H.RHO_GAS);
   const omegaPhi = entry(H.OMEGA_PHI);
   const zero = splat<T>(0);
   const half = splat<T>(0.5);
   const quarter = splat<T>(0.25);
   const one = splat<T>(1);
+  const two = splat<T>(2);
   const third = splat<T>(1.0 / 3.0);
-  const twoThirds = splat<T>(2.0 / 3.0);
   const twelfth = splat<T>(1.0 / 12.0);
-  const rhoGas = splat<T>(entry(H.RHO_GAS));
-  const dRho = splat<T>(drho);
   const fluidityGas = splat<T>(entry(H.FLUIDITY_GAS));
   const dFluidity = splat<T>(entry(H.FLUIDITY_LIQUID) - entry(H.FLUIDITY_GAS));
   const beta4 = splat<T>(4 * entry(H.BETA));
   const kappaSixth = splat<T>(entry(H.KAPPA) / 6);
   const driveX = entry(H.FORCE_X) + entry(H.DRIVE_FORCE);
   const driveY = entry(H.FORCE_Y);
-  // the same on both, so that it falls to nothing in gas, whose momentum lies on a finer grid
-  const trembleX = 2 * tremble<T>(driveX);
-  const trembleY = 2 * tremble<T>(driveY);
+  // the same on both, so that it falls to nothing in gas
+  const trembleX = rhoLiquid * tremble<T>(driveX);
+  const trembleY = rhoLiquid * tremble<T>(driveY);
   const forceX = splat<T>(driveX + trembleX);
   const forceY = splat<T>(driveY + trembleY);
   const heavyX = splat<T>(drho * entry(H.GRAVITY_X) + trembleX);
   const heavyY = splat<T>(drho * entry(H.GRAVITY_Y) + trembleY);
+  const liquidLight = splat<T>(1 / rhoLiquid);
+  const toSum = splat<T>(3 / rhoLiquid);
+  const nuLiquid = splat<T>(1 / (rhoLiquid * entry(H.FLUIDITY_LIQUID)));
+  const pure = splat<T>(-PURE);
+  const nu0 = splat<T>(entry(H.NU0));
+  const keepF = splat<T>(1 - 1 / (3 * entry(H.NU0) + 0.5));
+  const coupled = splat<T>(0.25 * COUPLING);
   const keepPhi = splat<T>(1 - omegaPhi);
   const slope = splat<T>(4 / entry(H.WIDTH));
   const sharp = splat<T>((1 - 0.5 * omegaPhi) / 3);
-  const diffusion = splat<T>(drho * entry(H.MOBILITY));
-  const damping = splat<T>(entry(H.DAMPING));
   const gasLimit = splat<T>(entry(H.GAS_LIMIT));
-  const thickening = splat<T>(entry(H.GAS_THICKENING));
-  const sections = address(H.AT_SECTIONS);
-  const sectionGas = sections + stride;
-  const sound = sections + 2 * stride;
-  const skin = splat<T>(0.02);
-  const three = splat<T>(3);
   const tiny = splat<T>(1e-12);
   const notDenormal = splat<T>(1e-20);
   let top = zero;
-  let energy = zero;
 
   const end = <usize>nx * size;
   let i: usize = 0;
@@ -129,189 +115,173 @@ export function collideRow<T>(y: i32, flags: i32): void {
     const phi = add<T>(one, z);
     const inside = atMost<T>(atLeast<T>(phi, zero), one);
     const gas = sub<T>(one, inside);
-    const well = mul<T>(inside, gas);
-
-    // density, forces
-    const rho = mad<T>(inside, dRho, rhoGas);
-    const rhoX = mul<T>(dRho, phiX);
-    const rhoY = mul<T>(dRho, phiY);
-    const mu = sub<T>(mul<T>(mul<T>(beta4, mul<T>(phi, z)), sub<T>(phi, half)), mul<T>(kappaSixth, lap6));
-    const Fx = mad<T>(mu, phiX, nmad<T>(gas, heavyX, forceX));
-    const Fy = mad<T>(mu, phiY, nmad<T>(gas, heavyY, forceY));
-
-    // moments that arrive
-    const v1 = get(f1 + i);
-    const v2 = get(f2 + i);
-    const v3 = get(f3 + i);
-    const v4 = get(f4 + i);
-    const v5 = get(f5 + i);
-    const v6 = get(f6 + i);
-    const v7 = get(f7 + i);
-    const v8 = get(f8 + i);
-    const a57 = sub<T>(v5, v7);
-    const a86 = sub<T>(v8, v6);
-    const b57 = add<T>(v5, v7);
-    const b86 = add<T>(v8, v6);
-    const m10 = add<T>(sub<T>(v1, v3), add<T>(a57, a86));
-    const m01 = add<T>(sub<T>(v2, v4), sub<T>(a57, a86));
-    const m11 = sub<T>(b57, b86);
-    const x13 = add<T>(v1, v3);
-    const y24 = add<T>(v2, v4);
-    const diagonals = add<T>(b57, b86);
-
-    // one division for 1/rho, omega and 1/|grad phi|; fluid = rho / eta, thicker = added / (eta / rho)
-    const fluid = mul<T>(rho, mad<T>(inside, dFluidity, fluidityGas));
-    const ux1 = get(uxAt + i);
-    const uy1 = get(uyAt + i);
-    const earlier2 = mad<T>(ux1, ux1, mul<T>(uy1, uy1));
-    const core = atLeast<T>(sub<T>(gas, skin), zero);
-    const core2 = mul<T>(core, core);
-    const core4 = mul<T>(core2, core2);
-    const core4u2 = mul<T>(core4, earlier2);
-    const thicker = mul<T>(mul<T>(thickening, fluid), mul<T>(core4u2, core4u2));
-    const below = mad<T>(three, thicker, mad<T>(half, fluid, three));
     const steep = root<T>(mad<T>(phiX, phiX, mad<T>(phiY, phiY, tiny)));
-    const excess = atLeast<T>(sub<T>(mul<T>(earlier2, gasLimit), one), zero);
-    const holding = root<T>(mad<T>(gas, excess, one));
-    const steepBelow = mul<T>(steep, below);
-    const heavy = mul<T>(rho, holding);
-    const all = div<T>(one, mul<T>(heavy, steepBelow));
-    const lighter = mul<T>(all, steepBelow);
-    const shared = mul<T>(all, heavy);
-    const sharpness = mul<T>(mul<T>(slope, well), mul<T>(shared, below));
-    const omega = mul<T>(fluid, mul<T>(shared, steep));
+    const sharpness = div<T>(mul<T>(slope, mul<T>(inside, gas)), steep);
 
-    // velocity: what arrives, damped, gas held back
-    const fluidHere = get(mask + i);
-    const live = mul<T>(lighter, fluidHere);
-    const uxRaw = mul<T>(nmad<T>(rho, get(sound + i), mad<T>(half, Fx, m10)), live);
-    const uyRaw = mul<T>(mad<T>(half, Fy, m01), live);
-    const bendX = add<T>(sub<T>(uxRaw, add<T>(ux1, ux1)), get(uxBefore + i));
-    const bendY = add<T>(sub<T>(uyRaw, add<T>(uy1, uy1)), get(uyBefore + i));
-    const ux = nmad<T>(damping, bendX, uxRaw);
-    const uy = nmad<T>(damping, bendY, uyRaw);
-    put(uxBefore + i, ux1);
-    put(uyBefore + i, uy1);
-    put(uxAt + i, ux);
-    put(uyAt + i, uy);
-    const u2 = mad<T>(ux, ux, mul<T>(uy, uy));
-    put(sections + i, add<T>(get(sections + i), ux));
-    put(sectionGas + i, mad<T>(gas, fluidHere, get(sectionGas + i)));
-    top = atLeast<T>(top, u2);
-    energy = add<T>(energy, u2);
+    // forces
+    const mu = sub<T>(mul<T>(mul<T>(beta4, mul<T>(phi, z)), sub<T>(phi, half)), mul<T>(kappaSixth, lap6));
+    let accelX = mad<T>(mu, phiX, forceX);
+    let accelY = mad<T>(mu, phiY, forceY);
 
-    const uxRhoX = mul<T>(ux, rhoX);
-    const uyRhoY = mul<T>(uy, rhoY);
-    const half00 = mul<T>(half, add<T>(uxRhoX, uyRhoY));
-    const moving = add<T>(add<T>(x13, y24), diagonals);
-    const p = mul<T>(splat<T>(0.6), nmad<T>(mul<T>(twoThirds, rho), u2, add<T>(moving, half00)));
-
-    // mass flux; skimming makes liquid of gas
-    const skimmed = get(skim + i);
-    const rhoAfter = mad<T>(mul<T>(dRho, skimmed), gas, rho);
-    const jx = mul<T>(rhoAfter, ux);
-    const jy = mul<T>(rhoAfter, uy);
-    const diffusing = mul<T>(diffusion, sub<T>(one, sharpness));
-    const Jx = nmad<T>(diffusing, phiX, jx);
-    const Jy = nmad<T>(diffusing, phiY, jy);
-
-    // shear moments
-    const keep = sub<T>(one, omega);
-    const half1 = nmad<T>(half, omega, one);
-    const xx = mul<T>(Jx, ux);
-    const yy = mul<T>(Jy, uy);
-    const eDiff = sub<T>(xx, yy);
-    const e11 = mul<T>(half, mad<T>(Jx, uy, mul<T>(Jy, ux)));
-    const n11 = sub<T>(m11, e11);
-    const s11 = mul<T>(third, mad<T>(ux, rhoY, mul<T>(uy, rhoX)));
-    const d11 = mad<T>(keep, n11, mul<T>(half1, s11));
-    const sDiff = mul<T>(twoThirds, sub<T>(uxRhoX, uyRhoY));
-    const dDiff = mad<T>(keep, sub<T>(sub<T>(x13, y24), eDiff), mul<T>(half1, sDiff));
-
-    // moments that leave
-    const trace = add<T>(add<T>(add<T>(p, p), add<T>(xx, yy)), mul<T>(splat<T>(4.0 / 3.0), half00));
-    const difference = add<T>(eDiff, dDiff);
-    const q10 = mad<T>(half, Fx, jx);
-    const q01 = mad<T>(half, Fy, jy);
-    const q20 = mul<T>(half, add<T>(trace, difference));
-    const q02 = mul<T>(half, sub<T>(trace, difference));
-    const q11 = add<T>(e11, d11);
-    const k11 = nmad<T>(half, s11, d11);
-    const twice11 = add<T>(k11, k11);
-    const k20 = mul<T>(half, nmad<T>(half, sDiff, dDiff));
-    const q21 = mad<T>(third, q01, mad<T>(ux, twice11, mul<T>(uy, k20)));
-    const q12 = mad<T>(third, q10, nmad<T>(ux, k20, mul<T>(uy, twice11)));
-    const q22 = mul<T>(third, add<T>(mad<T>(rhoAfter, u2, p), half00));
-
-    put(o0 + i, sub<T>(add<T>(half00, q22), add<T>(q20, q02)));
-    const evenX = mul<T>(half, sub<T>(q20, q22));
-    const oddX = mul<T>(half, sub<T>(q10, q12));
-    put(o1 + i, add<T>(evenX, oddX));
-    put(o3 + i, sub<T>(evenX, oddX));
-    const evenY = mul<T>(half, sub<T>(q02, q22));
-    const oddY = mul<T>(half, sub<T>(q01, q21));
-    put(o2 + i, add<T>(evenY, oddY));
-    put(o4 + i, sub<T>(evenY, oddY));
-    const even57 = mul<T>(quarter, add<T>(q22, q11));
-    const odd57 = mul<T>(quarter, add<T>(q12, q21));
-    put(o5 + i, add<T>(even57, odd57));
-    put(o7 + i, sub<T>(even57, odd57));
-    const even68 = mul<T>(quarter, sub<T>(q22, q11));
-    const odd68 = mul<T>(quarter, sub<T>(q12, q21));
-    put(o6 + i, sub<T>(even68, odd68));
-    put(o8 + i, add<T>(even68, odd68));
-
-    if (flags != 0) {
-      if (flags & FIELDS) {
-        put(phiOut + i, phi);
-        put(pOut + i, p);
-      }
-      if (flags & STRESS) put(tauOut + i, div<T>(mul<T>(sub<T>(zero, half1), mad<T>(half, s11, n11)), add<T>(one, thicker)));
+    // what sets gas and interface apart from liquid: gradient of P, weight, viscosity of the faces, coupling of pressure
+    const P = get(PC + i);
+    const openE = get(openC + i + size);
+    const openW = get(openC + i - size);
+    const openN = get(openC + stride + i);
+    const openS = get(openC - stride + i);
+    const lowest = atMost<T>(atMost<T>(zE, zW), atMost<T>(atMost<T>(zNorth, zSouth), z));
+    let etaE = nuLiquid;
+    let etaW = nuLiquid;
+    let etaN = nuLiquid;
+    let etaS = nuLiquid;
+    let coupling = zero;
+    let held = one;
+    const mx = get(mxC + i);
+    const my = get(myC + i);
+    if (noneBelow<T>(lowest, pure)) {
+      accelX = mul<T>(liquidLight, accelX);
+      accelY = mul<T>(liquidLight, accelY);
+    } else {
+      const PE = get(PC + i + size);
+      const PW = get(PC + i - size);
+      const PNorth = get(PN + i);
+      const PSouth = get(PS + i);
+      const PA = sub<T>(get(PN + i + size), get(PS + i - size));
+      const PB = sub<T>(get(PS + i + size), get(PN + i - size));
+      const Px = mad<T>(sub<T>(PE, PW), third, mul<T>(add<T>(PA, PB), twelfth));
+      const Py = mad<T>(sub<T>(PNorth, PSouth), third, mul<T>(sub<T>(PA, PB), twelfth));
+      const light = get(lightC + i);
+      const lighter = sub<T>(light, liquidLight);
+      const heavy = sub<T>(one, share<T>(z));
+      accelX = nmad<T>(lighter, Px, mul<T>(light, nmad<T>(heavy, heavyX, accelX)));
+      accelY = nmad<T>(lighter, Py, mul<T>(light, nmad<T>(heavy, heavyY, accelY)));
+      etaE = mul<T>(light, thickness<T>(z, zE, fluidityGas, dFluidity));
+      etaW = mul<T>(light, thickness<T>(z, zW, fluidityGas, dFluidity));
+      etaN = mul<T>(light, thickness<T>(z, zNorth, fluidityGas, dFluidity));
+      etaS = mul<T>(light, thickness<T>(z, zSouth, fluidityGas, dFluidity));
+      const weightE = mul<T>(openE, atMost<T>(lighter, sub<T>(get(lightC + i + size), liquidLight)));
+      const weightW = mul<T>(openW, atMost<T>(lighter, sub<T>(get(lightC + i - size), liquidLight)));
+      const weightN = mul<T>(openN, atMost<T>(lighter, sub<T>(get(lightC + stride + i), liquidLight)));
+      const weightS = mul<T>(openS, atMost<T>(lighter, sub<T>(get(lightC - stride + i), liquidLight)));
+      const couplingX = add<T>(part<T>(weightE, PE, P, get(PC + i + 2 * size), PW), part<T>(weightW, PW, P, get(PC + i - 2 * size), PE));
+      const couplingY = add<T>(part<T>(weightN, PNorth, P, get(PN + stride + i), PSouth), part<T>(weightS, PSouth, P, get(PS - stride + i), PNorth));
+      coupling = mul<T>(coupled, add<T>(couplingX, couplingY));
+      const excess = atLeast<T>(sub<T>(mul<T>(mad<T>(mx, mx, mul<T>(my, my)), gasLimit), one), zero);
+      held = div<T>(one, root<T>(mad<T>(mul<T>(heavy, heavy), excess, one)));
     }
 
+    // viscous force over the four faces
+    const cE = nmad<T>(nu0, openE, etaE);
+    const cW = nmad<T>(nu0, openW, etaW);
+    const cN = nmad<T>(nu0, openN, etaN);
+    const cS = nmad<T>(nu0, openS, etaS);
+    const mxE = get(mxC + i + size);
+    const mxW = get(mxC + i - size);
+    const mxNorth = get(mxN + i);
+    const mxSouth = get(mxS + i);
+    const myE = get(myC + i + size);
+    const myW = get(myC + i - size);
+    const myNorth = get(myN + i);
+    const mySouth = get(myS + i);
+    const alongX = sub<T>(myE, myW);
+    const alongXN = mul<T>(quarter, add<T>(alongX, sub<T>(get(myN + i + size), get(myN + i - size))));
+    const alongXS = mul<T>(quarter, add<T>(alongX, sub<T>(get(myS + i + size), get(myS + i - size))));
+    const alongY = sub<T>(mxNorth, mxSouth);
+    const alongYE = mul<T>(quarter, add<T>(alongY, sub<T>(get(mxN + i + size), get(mxS + i + size))));
+    const alongYW = mul<T>(quarter, add<T>(alongY, sub<T>(get(mxN + i - size), get(mxS + i - size))));
+    const stretchX = sub<T>(mul<T>(cE, sub<T>(mxE, mx)), mul<T>(cW, sub<T>(mx, mxW)));
+    const stretchY = sub<T>(mul<T>(cN, sub<T>(myNorth, my)), mul<T>(cS, sub<T>(my, mySouth)));
+    const shearX = sub<T>(mul<T>(cN, add<T>(sub<T>(mxNorth, mx), alongXN)), mul<T>(cS, add<T>(sub<T>(mx, mxSouth), alongXS)));
+    const shearY = sub<T>(mul<T>(cE, add<T>(sub<T>(myE, my), alongYE)), mul<T>(cW, add<T>(sub<T>(my, myW), alongYW)));
+    const Fx = add<T>(accelX, mad<T>(two, stretchX, shearX));
+    const Fy = add<T>(accelY, mad<T>(two, stretchY, shearY));
+
+    // velocity
+    const fluid = mul<T>(get(mask + i), held);
+    const ux = mul<T>(add<T>(sub<T>(mx, get(sound + i)), Fx), fluid);
+    const uy = mul<T>(add<T>(my, Fy), fluid);
+    put(uxAt + i, ux);
+    put(uyAt + i, uy);
+    const xx = mul<T>(ux, ux);
+    const yy = mul<T>(uy, uy);
+    const u2 = add<T>(xx, yy);
+    put(sections + i, add<T>(get(sections + i), ux));
+    top = max<T>(top, u2);
+
+    // the flow
+    const s = mul<T>(toSum, get(pC + i));
+    const specific = mul<T>(liquidLight, P);
+    const d20 = mul<T>(mul<T>(half, keepF), get(n20C + i));
+    const d11 = mul<T>(keepF, get(n11C + i));
+    const twice11 = add<T>(d11, d11);
+    const q20 = add<T>(add<T>(specific, xx), d20);
+    const q02 = sub<T>(add<T>(specific, yy), d20);
+    const uv = mul<T>(ux, uy);
+    const q11 = add<T>(uv, d11);
+    const d21 = mad<T>(ux, twice11, mul<T>(uy, d20));
+    const d12 = nmad<T>(ux, d20, mul<T>(uy, twice11));
+    const q21 = mad<T>(uy, add<T>(third, xx), d21);
+    const q12 = mad<T>(ux, add<T>(third, yy), d12);
+    const d22a = mul<T>(two, mad<T>(uy, d21, mul<T>(ux, d12)));
+    const d22 = nmad<T>(mul<T>(splat<T>(4), uv), d11, mad<T>(sub<T>(xx, yy), d20, d22a));
+    const q22 = add<T>(mad<T>(third, add<T>(specific, u2), mul<T>(xx, yy)), d22);
+    const f0 = o0 + i;
+    put(f0, add<T>(sub<T>(add<T>(s, q22), add<T>(q20, q02)), coupling));
+    const evenX = mul<T>(half, sub<T>(q20, q22));
+    const oddX = mul<T>(half, sub<T>(ux, q12));
+    put(f0 + stride, add<T>(evenX, oddX));
+    put(f0 + 3 * stride, sub<T>(evenX, oddX));
+    const evenY = mul<T>(half, sub<T>(q02, q22));
+    const oddY = mul<T>(half, sub<T>(uy, q21));
+    put(f0 + 2 * stride, add<T>(evenY, oddY));
+    put(f0 + 4 * stride, sub<T>(evenY, oddY));
+    const even57 = mul<T>(quarter, add<T>(q22, q11));
+    const odd57 = mul<T>(quarter, add<T>(q12, q21));
+    put(f0 + 5 * stride, add<T>(even57, odd57));
+    put(f0 + 7 * stride, sub<T>(even57, odd57));
+    const even68 = mul<T>(quarter, sub<T>(q22, q11));
+    const odd68 = mul<T>(quarter, sub<T>(q12, q21));
+    put(f0 + 6 * stride, sub<T>(even68, odd68));
+    put(f0 + 8 * stride, add<T>(even68, odd68));
+    if (flags & FIELDS) put(phiOut + i, phi);
+
     // the interface
-    const w5 = get(g5 + i);
-    const w6 = get(g6 + i);
-    const w7 = get(g7 + i);
-    const w8 = get(g8 + i);
-    const c57 = sub<T>(w5, w7);
-    const c86 = sub<T>(w8, w6);
-    const j10 = add<T>(sub<T>(get(g1 + i), get(g3 + i)), add<T>(c57, c86));
-    const j01 = add<T>(sub<T>(get(g2 + i), get(g4 + i)), sub<T>(c57, c86));
+    const skimmed = get(skim + i);
     const zAfter = add<T>(nmad<T>(z, skimmed, z), notDenormal);
     const phiAfter = add<T>(one, zAfter);
     const sharpen = mul<T>(sharp, sharpness);
     const vx = mul<T>(phiAfter, ux);
     const vy = mul<T>(phiAfter, uy);
-    const h10 = mad<T>(sharpen, phiX, mad<T>(keepPhi, sub<T>(j10, vx), vx));
-    const h01 = mad<T>(sharpen, phiY, mad<T>(keepPhi, sub<T>(j01, vy), vy));
+    const h10 = mad<T>(sharpen, phiX, mad<T>(keepPhi, sub<T>(get(j10C + i), vx), vx));
+    const h01 = mad<T>(sharpen, phiY, mad<T>(keepPhi, sub<T>(get(j01C + i), vy), vy));
     const zThird = mul<T>(third, zAfter);
     const vxx = mul<T>(vx, ux);
     const vyy = mul<T>(vy, uy);
     const h20 = add<T>(zThird, vxx);
     const h02 = add<T>(zThird, vyy);
     const h11 = mul<T>(vx, uy);
-    const h21 = mul<T>(third, vy);
-    const h12 = mul<T>(third, vx);
+    const h21 = mul<T>(third, h01);
+    const h12 = mul<T>(third, h10);
     const h22 = mul<T>(third, add<T>(zThird, add<T>(vxx, vyy)));
-    put(r0 + i, sub<T>(add<T>(zAfter, h22), add<T>(h20, h02)));
+    const g0 = r0 + i;
+    put(g0, sub<T>(add<T>(zAfter, h22), add<T>(h20, h02)));
     const gEvenX = mul<T>(half, sub<T>(h20, h22));
     const gOddX = mul<T>(half, sub<T>(h10, h12));
-    put(r1 + i, add<T>(gEvenX, gOddX));
-    put(r3 + i, sub<T>(gEvenX, gOddX));
+    put(g0 + stride, add<T>(gEvenX, gOddX));
+    put(g0 + 3 * stride, sub<T>(gEvenX, gOddX));
     const gEvenY = mul<T>(half, sub<T>(h02, h22));
     const gOddY = mul<T>(half, sub<T>(h01, h21));
-    put(r2 + i, add<T>(gEvenY, gOddY));
-    put(r4 + i, sub<T>(gEvenY, gOddY));
+    put(g0 + 2 * stride, add<T>(gEvenY, gOddY));
+    put(g0 + 4 * stride, sub<T>(gEvenY, gOddY));
     const gEven57 = mul<T>(quarter, add<T>(h22, h11));
     const gOdd57 = mul<T>(quarter, add<T>(h12, h21));
-    put(r5 + i, add<T>(gEven57, gOdd57));
-    put(r7 + i, sub<T>(gEven57, gOdd57));
+    put(g0 + 5 * stride, add<T>(gEven57, gOdd57));
+    put(g0 + 7 * stride, sub<T>(gEven57, gOdd57));
     const gEven68 = mul<T>(quarter, sub<T>(h22, h11));
     const gOdd68 = mul<T>(quarter, sub<T>(h12, h21));
-    put(r6 + i, sub<T>(gEven68, gOdd68));
-    put(r8 + i, add<T>(gEven68, gOdd68));
+    put(g0 + 6 * stride, sub<T>(gEven68, gOdd68));
+    put(g0 + 8 * stride, add<T>(gEven68, gOdd68));
     i += 16;
   } while (i < end);
-  topU2 = largest<T>(top, energy);
+  topU2 = largest<T>(top);
 }

@@ -6,7 +6,7 @@
 // In a corner of two sides that are not periodic the diagonal goes straight back, with what both walls add.
 import * as H from '../header';
 import { W1, W2 } from '../constants';
-import { address, entry, nx, ny, zRow, row, stride } from './rows';
+import { address, entry, nx, ny, row, stride } from './rows';
 
 const PERIODIC: i32 = 0;
 const SLIP: i32 = 2;
@@ -27,27 +27,43 @@ const SLIP: i32 = 2;
 // @ts-ignore: decorator
 @inline function mirrorY(k: i32): i32 { return k == 2 ? 4 : k == 4 ? 2 : k == 5 ? 8 : k == 8 ? 5 : k == 6 ? 7 : k == 7 ? 6 : k; }
 
-export function fillGhosts<T>(sets: i32): void {
-  fillLinks<T>(sets);
+/** Of a box without gas. */
+export function fillGhosts<T>(): void {
+  fillLinks<T>();
   const periodicX = <i32>entry(H.SIDE_BOTTOM) == PERIODIC;
   const periodicY = <i32>entry(H.SIDE_LEFT) == PERIODIC;
-  for (let set = 0; set < sets; set++) {
-    if (periodicX) wrapColumns<T>(9 * set);
-    else {
-      reflectColumn<T>(9 * set, 0, 1, H.SIDE_BOTTOM, H.SPEED_BOTTOM, periodicY);
-      reflectColumn<T>(9 * set, nx - 1, -1, H.SIDE_TOP, H.SPEED_TOP, periodicY);
-    }
-    if (periodicY) wrapRows<T>(9 * set, periodicX);
-    else {
-      reflectRow<T>(9 * set, 0, 1, H.SIDE_LEFT, H.SPEED_LEFT, periodicX);
-      reflectRow<T>(9 * set, ny - 1, -1, H.SIDE_RIGHT, H.SPEED_RIGHT, periodicX);
-    }
+  if (periodicX) wrapColumns<T>(0);
+  else {
+    reflectColumn<T>(0, 1, H.SIDE_BOTTOM, H.SPEED_BOTTOM, periodicY);
+    reflectColumn<T>(nx - 1, -1, H.SIDE_TOP, H.SPEED_TOP, periodicY);
   }
-  clearPadding<T>(9 * sets);
+  if (periodicY) wrapRows<T>(0, periodicX);
+  else {
+    reflectRow<T>(0, 1, H.SIDE_LEFT, H.SPEED_LEFT, periodicX);
+    reflectRow<T>(ny - 1, -1, H.SIDE_RIGHT, H.SPEED_RIGHT, periodicX);
+  }
+  clearPadding<T>(9);
+}
+
+/** Of a box with gas: periodic sides wrap, all walls return what walls.ts lists. */
+export function fillReturns<T>(): void {
+  const periodicX = <i32>entry(H.SIDE_BOTTOM) == PERIODIC;
+  const periodicY = <i32>entry(H.SIDE_LEFT) == PERIODIC;
+  for (let set = 0; set < 18; set += 9) {
+    if (periodicX) wrapColumns<T>(set);
+    if (periodicY) wrapRows<T>(set, periodicX);
+  }
+  clearPadding<T>(18);
+  let item = address(H.AT_RETURNS);
+  for (let n = <i32>entry(H.RETURNS); n > 0; n--, item += 36) {
+    const to = at<T>(load<i32>(item), load<i32>(item, 4), load<i32>(item, 8));
+    store<T>(to, load<T>(at<T>(load<i32>(item, 12), load<i32>(item, 16), load<i32>(item, 20))));
+    store<T>(to + 9 * stride, load<T>(at<T>(load<i32>(item, 24), load<i32>(item, 28), 9 + load<i32>(item, 32))));
+  }
 }
 
 /** Bounce-back of solids: each link's slot in the solid cell takes what left the fluid cell towards it. */
-function fillLinks<T>(sets: i32): void {
+function fillLinks<T>(): void {
   const count = <i32>entry(H.LINKS);
   let link = address(H.AT_LINKS);
   for (let n = 0; n < count; n++, link += 20) {
@@ -55,7 +71,6 @@ function fillLinks<T>(sets: i32): void {
     const to = at<T>(load<i32>(link), load<i32>(link, 4), k);
     const from = at<T>(load<i32>(link, 12), load<i32>(link, 16), opposite(k));
     store<T>(to, load<T>(from));
-    if (sets == 2) store<T>(to + 9 * stride, load<T>(from + 9 * stride));
   }
 }
 
@@ -104,32 +119,29 @@ function wrapRows<T>(first: i32, periodicX: bool): void {
 
 /** What a wall moving at `speed` along e adds to what it sends back. */
 // @ts-ignore: decorator
-@inline function push<T>(first: i32, k: i32, along: i32, speed: f64, x: i32, y: i32): f64 {
-  if (speed == 0 || first != 0) return 0;
-  const phi = 1 + <f64>load<T>(zRow(y) + <usize>(x * <i32>sizeof<T>()));
-  const rho = entry(H.RHO_GAS) + phi * (entry(H.RHO_LIQUID) - entry(H.RHO_GAS));
-  return 6 * (k < 5 ? W1 : W2) * rho * <f64>along * speed;
+@inline function push(k: i32, along: i32, speed: f64): f64 {
+  return 6 * (k < 5 ? W1 : W2) * entry(H.RHO_LIQUID) * <f64>along * speed;
 }
 
-function reflectColumn<T>(first: i32, edge: i32, inward: i32, sideAt: i32, speedAt: i32, periodicY: bool): void {
+function reflectColumn<T>(edge: i32, inward: i32, sideAt: i32, speedAt: i32, periodicY: bool): void {
   const slip = <i32>entry(sideAt) == SLIP;
   const speed = entry(speedAt);
   for (let k = 1; k < 9; k++) {
     if (ex(k) != inward) continue;
     for (let y = 0; y < ny; y++) {
       const source = y - ey(k);
-      const ghost = at<T>(edge - inward, source, first + k);
+      const ghost = at<T>(edge - inward, source, k);
       if (slip && (periodicY || (source >= 0 && source < ny))) {
-        store<T>(ghost, load<T>(at<T>(edge, (source + ny) % ny, first + mirrorX(k))));
+        store<T>(ghost, load<T>(at<T>(edge, (source + ny) % ny, mirrorX(k))));
       } else {
-        const back = <f64>load<T>(at<T>(edge, y, first + opposite(k)));
-        store<T>(ghost, <T>(back + push<T>(first, k, ey(k), speed, edge, y)));
+        const back = <f64>load<T>(at<T>(edge, y, opposite(k)));
+        store<T>(ghost, <T>(back + push(k, ey(k), speed)));
       }
     }
   }
 }
 
-function reflectRow<T>(first: i32, edge: i32, inward: i32, sideAt: i32, speedAt: i32, periodicX: bool): void {
+function reflectRow<T>(edge: i32, inward: i32, sideAt: i32, speedAt: i32, periodicX: bool): void {
   const slip = <i32>entry(sideAt) == SLIP;
   const speed = entry(speedAt);
   for (let k = 1; k < 9; k++) {
@@ -140,21 +152,21 @@ function reflectRow<T>(first: i32, edge: i32, inward: i32, sideAt: i32, speedAt:
       for (let x = 0; x < nx; x++) {
         const source = x - ex(k);
         const corner = !periodicX && (source < 0 || source >= nx);
-        const from = corner ? at<T>(x, edge, first + opposite(k)) : at<T>((source + nx) % nx, edge, first + mirrorY(k));
-        store<T>(at<T>(source, edge - inward, first + k), load<T>(from));
+        const from = corner ? at<T>(x, edge, opposite(k)) : at<T>((source + nx) % nx, edge, mirrorY(k));
+        store<T>(at<T>(source, edge - inward, k), load<T>(from));
       }
     } else if (speed == 0) {
-      memory.copy(at<T>(-ex(k), edge - inward, first + k), at<T>(0, edge, first + opposite(k)), bytes);
+      memory.copy(at<T>(-ex(k), edge - inward, k), at<T>(0, edge, opposite(k)), bytes);
     } else {
       for (let x = 0; x < nx; x++) {
-        const back = <f64>load<T>(at<T>(x, edge, first + opposite(k)));
-        store<T>(at<T>(x - ex(k), edge - inward, first + k), <T>(back + push<T>(first, k, ex(k), speed, x, edge)));
+        const back = <f64>load<T>(at<T>(x, edge, opposite(k)));
+        store<T>(at<T>(x - ex(k), edge - inward, k), <T>(back + push(k, ex(k), speed)));
       }
     }
     if (periodicX || ex(k) == 0) continue;
     const x = ex(k) > 0 ? 0 : nx - 1;
-    const corner = at<T>(x - ex(k), edge - inward, first + k);
+    const corner = at<T>(x - ex(k), edge - inward, k);
     const end = entry(ex(k) > 0 ? H.SPEED_BOTTOM : H.SPEED_TOP);
-    store<T>(corner, <T>(<f64>load<T>(corner) + push<T>(first, k, ey(k), end, x, edge)));
+    store<T>(corner, <T>(<f64>load<T>(corner) + push(k, ey(k), end)));
   }
 }

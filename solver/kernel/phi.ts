@@ -1,51 +1,8 @@
-// The interface variable of every cell as z = phi - 1, the sum of the g that arrive (each less its w), and its ghosts:
+// Ghosts of the interface variable z = phi - 1:
 //   wall:    d(phi)/dn = -(4/W) cos(theta) phi (1 - phi), n into the fluid, solved for the value on the wall
 //   solid:   the same from the weighted mean of its fluid neighbours
-// Reads g, mask, skim; writes z and its ghost ring; adds up the gas area and the gas that the collision will skim.
 import * as H from '../header';
-import { address, entry, fieldRow, nx, ny, row, setEntry, stride, zRow } from './rows';
-import { add, get, mad, mul, put, splat, total } from './vector';
-
-export function phiPass<T>(): void {
-  let less: f64 = 0;
-  let skimmed: f64 = 0;
-  for (let y = 0; y < ny; y++) {
-    const size = sizeof<T>();
-    const south = row(y - 1) + 9 * stride;
-    const here = row(y) + 9 * stride;
-    const north = row(y + 1) + 9 * stride;
-    const g1 = here + stride - size;
-    const g2 = south + 2 * stride;
-    const g3 = here + 3 * stride + size;
-    const g4 = north + 4 * stride;
-    const g5 = south + 5 * stride - size;
-    const g6 = south + 6 * stride + size;
-    const g7 = north + 7 * stride + size;
-    const g8 = north + 8 * stride - size;
-    const out = zRow(y);
-    const mask = fieldRow(H.AT_MASK, y);
-    const skim = address(H.AT_SKIM);
-    let gasLanes = splat<T>(0);
-    let skimLanes = splat<T>(0);
-    const end = <usize>nx * size;
-    let i: usize = 0;
-    do {
-      const axes = add<T>(add<T>(get(g1 + i), get(g3 + i)), add<T>(get(g2 + i), get(g4 + i)));
-      const diagonals = add<T>(add<T>(get(g5 + i), get(g7 + i)), add<T>(get(g6 + i), get(g8 + i)));
-      const z = add<T>(add<T>(get(here + i), axes), diagonals);
-      put(out + i, z);
-      const counted = mul<T>(z, get(mask + i));
-      gasLanes = add<T>(gasLanes, counted);
-      skimLanes = mad<T>(counted, get(skim + i), skimLanes);
-      i += 16;
-    } while (i < end);
-    less += total<T>(gasLanes);
-    skimmed += total<T>(skimLanes);
-  }
-  setEntry(H.GAS_AREA, skimmed - less);
-  setEntry(H.SKIMMED, entry(H.SKIMMED) - skimmed);
-  fillPhiGhosts<T>();
-}
+import { address, entry, nx, ny, zRow } from './rows';
 
 /** z beyond a wall whose first cell holds `z`. */
 // @ts-ignore: decorator
@@ -55,7 +12,7 @@ export function phiPass<T>(): void {
   return z + 2 * (wall - inside);
 }
 
-function fillPhiGhosts<T>(): void {
+export function fillPhiGhosts<T>(): void {
   const c = entry(H.WETTING);
   const size = <i32>sizeof<T>();
   let ghost = address(H.AT_GHOSTS);

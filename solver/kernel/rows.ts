@@ -4,7 +4,8 @@
 //   ring slot:   row -1 | row 0 | row 1 | ... | row ny | spare
 //   in a slot:   f0 [. ghost | cells ... | ghost, padding .] f1 [...] ... f8, g0 ... g8
 //
-// A step writes its new row y over the old row y - 2, which no later row pulls from, and then turns the ring by two slots.
+// Without gas a step writes its new row y over the old row y - 2, which no later row pulls from, and then turns the ring by two
+// slots. With gas all that arrives is taken in before anything is written, and each row stays in its place.
 import * as H from '../header';
 
 /** Entry of the header. */
@@ -50,11 +51,9 @@ export function turn(): void {
 
 /** z = phi - 1 at (0, y), y from -1 to ny. */
 // @ts-ignore: decorator
-@inline export function zRow(y: i32): usize { return z + <usize>((y + 1) * <i32>stride) - stride; }
+@inline export function zRow(y: i32): usize { return z + <usize>(y * <i32>stride); }
 
-/** A field without ghost rows, at (0, y). */
+/** A field at (0, y); y from -1 to ny where it has ghosts. */
 // @ts-ignore: decorator
-@inline export function fieldRow(at: i32, y: i32): usize { return address(at) + <usize>y * stride; }
+@inline export function fieldRow(at: i32, y: i32): usize { return address(at) + <usize>(y * <i32>stride); }
 
-/** Stress at (0, y) of the running step; that of the step before lies in the other of the two fields. */
-export function tauRow(y: i32): usize { return fieldRow(H.AT_TAU, y) + (<i32>entry(H.STEP) & 1 ? <usize>ny * stride : 0); }

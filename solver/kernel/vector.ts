@@ -1,6 +1,9 @@
 // The verbs of the kernel: one 16-byte group of lanes of T (four f32, two f64). v128 takes no operators, and a class around
 // it would live on the heap; inlined functions cost nothing.
 
+/** phi this close to 0 or 1 is pure, see forces.ts */
+export const PURE: f64 = 0.002;
+
 // @ts-ignore: decorator
 @inline export function add<T>(a: v128, b: v128): v128 { return v128.add<T>(a, b); }
 // @ts-ignore: decorator
@@ -17,10 +20,12 @@
 @inline export function nmad<T>(a: v128, b: v128, c: v128): v128 { return v128.sub<T>(c, v128.mul<T>(a, b)); }
 // @ts-ignore: decorator
 @inline export function root<T>(a: v128): v128 { return v128.sqrt<T>(a); }
-/** b where a < b, else a: one instruction, where `v128.max` takes seven for its care of what is not a number */
+/** the larger of two that are not negative, not a number where one is not: the bits of such numbers are in their order */
+// @ts-ignore: decorator
+@inline export function max<T>(a: v128, b: v128): v128 { return sizeof<T>() == 4 ? v128.max<u32>(a, b) : v128.max<T>(a, b); }
+/** a, or b where that is beyond it: one instruction where `max` takes many; a b that is no number counts for nothing */
 // @ts-ignore: decorator
 @inline export function atLeast<T>(a: v128, b: v128): v128 { return v128.pmax<T>(a, b); }
-/** b where b < a, else a */
 // @ts-ignore: decorator
 @inline export function atMost<T>(a: v128, b: v128): v128 { return v128.pmin<T>(a, b); }
 // @ts-ignore: decorator
@@ -30,6 +35,20 @@
 // @ts-ignore: decorator
 @inline export function put(at: usize, a: v128): void { v128.store(at, a); }
 
+/** every lane of a at least that of b */
+// @ts-ignore: decorator
+@inline export function noneBelow<T>(a: v128, b: v128): bool {
+  const yes = v128.ge<T>(a, b);
+  return sizeof<T>() == 8 ? i64x2.all_true(yes) : i32x4.all_true(yes);
+}
+
+/** Share of liquid at z = phi - 1, see forces.ts. */
+// @ts-ignore: decorator
+@inline export function share<T>(z: v128): v128 {
+  const one = splat<T>(1);
+  return atMost<T>(atLeast<T>(mad<T>(z, splat<T>(1 / (1 - 2 * PURE)), splat<T>((1 - PURE) / (1 - 2 * PURE))), splat<T>(0)), one);
+}
+
 /** Sum of the lanes. */
 export function total<T>(a: v128): f64 {
   let sum: f64 = <f64>v128.extract_lane<T>(a, 0) + <f64>v128.extract_lane<T>(a, 1);
@@ -37,9 +56,9 @@ export function total<T>(a: v128): f64 {
   return sum;
 }
 
-/** Largest lane of `top`; not a number where a lane of `sum`, which such numbers stick to, is none. */
-export function largest<T>(top: v128, sum: v128): f64 {
-  let most = f64.max(<f64>v128.extract_lane<T>(top, 0), <f64>v128.extract_lane<T>(top, 1));
-  if (sizeof<T>() == 4) most = f64.max(most, f64.max(<f64>v128.extract_lane<T>(top, 2), <f64>v128.extract_lane<T>(top, 3)));
-  return most + 0 * total<T>(sum);
+/** Largest lane; not a number where one is not. */
+export function largest<T>(a: v128): f64 {
+  let top = f64.max(<f64>v128.extract_lane<T>(a, 0), <f64>v128.extract_lane<T>(a, 1));
+  if (sizeof<T>() == 4) top = f64.max(top, f64.max(<f64>v128.extract_lane<T>(a, 2), <f64>v128.extract_lane<T>(a, 3)));
+  return top;
 }

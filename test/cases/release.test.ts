@@ -51,7 +51,7 @@ describe('the supply', () => {
   it('lets bubbles in at the rate of the supply over the area of a bubble', () => {
     const { derived } = layOut(read('gas.bubble.spread=0 %'));
     const { times_s } = schedule(read('gas.bubble.spread=0 %'), 100);
-    // METHOD section 6; counting to the last bubble leaves one of about 885 open
+    // counting to the last bubble leaves one of about 885 open
     expect(Math.abs(times_s.length / 100 / derived.bubblesPerSecond - 1)).toBeLessThan(0.003);
   });
 

@@ -90,7 +90,7 @@ describe('the lattice box of a case', () => {
   });
 
   it('supplies gas for the membranes it serves', () => {
-    // METHOD section 6: 0.4 m3/(m2 h), one membrane, 1 m served, 8 mm: 14 mm/s
+    // 0.4 m3/(m2 h), one membrane, 1 m served, 8 mm: 14 mm/s
     expect(layOut(read()).derived.gasVelocity_m_s).toBeCloseTo(0.4 / 3600 / 0.008, 12);
     expect(layOut(read('channel.membranes=[left, right]')).derived.gasVelocity_m_s).toBeCloseTo((2 * 0.4) / 3600 / 0.008, 12);
   });

@@ -18,7 +18,7 @@ describe('warnings', () => {
   });
 
   it('name a gap below 1.694 capillary lengths, 4.62 mm in water at 20 C, and none above', () => {
-    // REFERENCES section 2: derived there from Bretherton 1961, plane form
+    // derived there from Bretherton 1961, plane form
     expect(warningsOf(...SOUND, 'channel.gap=4.5 mm', 'gas.bubble.diameter=3 mm', 'gas.start=[]').join('\n')).toContain(
       'gap 4.5 mm is below 4.62 mm',
     );

@@ -9,7 +9,7 @@ function series(limit: number, factor: number, order: number, cells: Triple): Tr
 }
 
 describe('the published table', () => {
-  // Celik, Ghia, Roache, Freitas, Coleman & Raad 2008, J. Fluids Eng. 130, 078001, table 1; REFERENCES section 9, mark V.
+  // Celik, Ghia, Roache, Freitas, Coleman & Raad 2008, J. Fluids Eng. 130, 078001, table 1, mark V.
   // Every printed digit must come out: order to 0.005, extrapolated value to half of its last digit, shares to 0.05 %. The ratio printed
   // as 1.333 is taken as 4/3: with 1.333 itself the first order is 1.537, not 1.53.
   const rows: { r21: number; r32: number; phi: Triple; p: number; ext: number; digits: number; change: number; index: number }[] = [

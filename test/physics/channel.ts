@@ -5,7 +5,7 @@ export const CHANNEL: Setup['sides'] = { left: 'wall', right: 'wall', bottom: 'p
 export const PERIODIC: Setup['sides'] = { left: 'periodic', right: 'periodic', bottom: 'periodic', top: 'periodic' };
 export const CLOSED: Setup['sides'] = { left: 'wall', right: 'wall', bottom: 'wall', top: 'wall' };
 
-/** Air beside water of density 1 and the given viscosity, 832:1 and 55:1 (REFERENCES section 5, 20 C). */
+/** Air beside water of density 1 and the given viscosity, 832:1 and 55:1 (20 C). */
 export const airBeside = (viscosity: number): { density: number; viscosity: number } => ({ density: 1 / 832, viscosity: viscosity / 55 });
 
 /** Equilibrium profile of the interface, `distance` into the liquid. */

@@ -39,7 +39,7 @@ channel: {gap: ${gap} mm, height: 80 mm, tilt: ${between(-45, 45)} deg, wetting:
 ${fins}liquid: {kind: water, temperature: ${between(8, 35)} degC}
 gas: {supply: ${between(0.1, 1)} m3/(m2 h), serves: 1 m, bubble: {diameter: ${Number(bubble.toPrecision(3))} mm, spread: ${between(0, 25)} %}, across: ${
     random() < 0.5 ? 'middle' : 'even'
-  }, seed: ${seed}, softened: {density: 20 kg/m3, viscosity: 2e-4 Pa s}}
+  }, seed: ${seed}}
 grid: {across: ${across}, speed: 0.3 m/s}
 record: {settle: 0 s, span: 0.5 s, every: 5 ms}
 swept: {above: 0.5 Pa, within: 0.1 s}

@@ -11,14 +11,12 @@ describe('two layers in a channel', () => {
   });
 
   // Density and viscosity ratio, precision; limits on the balance of forces, the liquid's and the gas's wall shear.
-  // The balance is the gate (1 %); 6e-6 in f64 and 1.2e-5 in f32 were seen. The shear of each wall is a record of how far the
-  // momentum form lies from the 1-D equation: where density and viscosity fall alike it follows it, where the kinematic viscosity
-  // jumps by 15 it does not yet (liquid 3.4 % above, gas 9.7 % below; 0.1 % and 0.3 % at equal ratios).
+  // What the balance lacks is the share of viscosity that the populations carry, 1 %, and goes with it. Seen: 4e-4 in all three.
   it.each([
-    [50, 50, 'f64', { balance: 5e-5, liquid: 0.005, gas: 0.01 }],
-    [50, 50, 'f32', { balance: 1e-4, liquid: 0.005, gas: 0.01 }],
-    [832, 55, 'f64', { balance: 5e-5, liquid: 0.05, gas: 0.14 }],
-    [832, 55, 'f32', { balance: 1e-4, liquid: 0.05, gas: 0.14 }],
+    [50, 50, 'f64', { balance: 2e-3, liquid: 3e-3, gas: 3e-3 }],
+    [50, 50, 'f32', { balance: 2e-3, liquid: 3e-3, gas: 3e-3 }],
+    [832, 55, 'f64', { balance: 2e-3, liquid: 3e-3, gas: 3e-3 }],
+    [832, 55, 'f32', { balance: 2e-3, liquid: 3e-3, gas: 3e-3 }],
   ] as const)(
     'pull at the walls with the force that drives them, at %d:1 in density and %d:1 in viscosity, in %s',
     async (density, viscosity, precision, limit) => {

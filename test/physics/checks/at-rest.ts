@@ -6,7 +6,7 @@ import { createSimulation } from '../../../solver/index.ts';
 import { advance, airBeside, CLOSED, fastest, profile } from '../channel.ts';
 import { type Check, row } from '../row.ts';
 
-const [W, SIGMA, VISCOSITY] = [5, 0.0032, 0.1];
+const [W, SIGMA, VISCOSITY] = [5, 0.0032, 0.01];
 
 /** Greatest speed in N x N cells after so many steps; gravity turned by the tilt, strong enough for rho g N^2/sigma = 4. */
 export async function leftover(N: number, tilt_deg: number, steps: number): Promise<number> {

@@ -1,6 +1,6 @@
 /**
  * Capillary wave between two deep fluids of equal kinematic viscosity, a0 k = 0.06, w0^2 = sigma k^3/(rho1 + rho2): amplitude over
- * a0 at w0 t. Prosperetti 1981, Phys. Fluids 24, 1217 [V], REFERENCES section 3.
+ * a0 at w0 t. Prosperetti 1981, Phys. Fluids 24, 1217 [V].
  * Viscosity kept, time with the square of the cells a wave: the same wave on finer grids, only its interface gets thinner.
  */
 import { createSimulation, type Simulation } from '../../../solver/index.ts';
@@ -42,7 +42,7 @@ export const SETS: readonly WaveSet[] = [
   },
 ];
 
-const [W, NU, MOBILITY] = [5, 0.05, 0.05];
+const [W, NU, MOBILITY] = [5, 0.02, 0.05];
 
 /** Height of phi = 1/2 at the crest (x between the two middle cells) above the mean level. */
 function crest(s: Simulation, level: number): number {

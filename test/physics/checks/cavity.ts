@@ -1,6 +1,6 @@
 /**
- * Lid-driven square cavity, N x N cells, against u on the line x = 1/2 (Ghia, Ghia & Shin 1982, J. Comput. Phys. 48, 387 [L],
- * REFERENCES section 4). The lid is the right side and slides along +x. Lid speed with 1/N, viscosity kept: compressibility falls
+ * Lid-driven square cavity, N x N cells, against u on the line x = 1/2 (Ghia, Ghia & Shin 1982, J. Comput. Phys. 48, 387
+ * [L]). The lid is the right side and slides along +x. Lid speed with 1/N, viscosity kept: compressibility falls
  * with the square as the grid gets finer.
  */
 import { createSimulation, type Simulation } from '../../../solver/index.ts';

@@ -1,6 +1,6 @@
 /**
  * A liquid drop on a straight wall, let go as a half disc of radius R: at rest it is a circle's segment that meets the wall at theta,
- * theta = 2 arctan(2 height / base). REFERENCES section 3 [V].
+ * theta = 2 arctan(2 height / base) [V].
  */
 import { createSimulation } from '../../../solver/index.ts';
 import { CHANNEL, crossings, profile, settle } from '../channel.ts';
@@ -8,7 +8,7 @@ import { type Check, row } from '../row.ts';
 
 const [W, SIGMA] = [4, 0.01];
 
-/** Height over base of the segment at 30, 60, 90, 120, 150 degrees. REFERENCES section 3 [V]. */
+/** Height over base of the segment at 30, 60, 90, 120, 150 degrees [V]. */
 export const SEGMENTS: readonly [number, number][] = [
   [30, 0.13397],
   [60, 0.28868],

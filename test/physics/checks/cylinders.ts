@@ -1,6 +1,6 @@
 /**
  * Slow flow through a square array of cylinders: drag per length over (eta U), U the mean velocity over the whole cell of the array,
- * against the solid fraction c. Sangani & Acrivos 1982, Int. J. Multiphase Flow 8, 193 [M], REFERENCES section 3.
+ * against the solid fraction c. Sangani & Acrivos 1982, Int. J. Multiphase Flow 8, 193 [M].
  * The force on the liquid stands for a pressure gradient, so the drag is that times the whole cell. The cylinders are staircases.
  */
 import { createSimulation } from '../../../solver/index.ts';

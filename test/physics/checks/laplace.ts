@@ -1,5 +1,5 @@
 /**
- * A bubble of radius R at rest in water, 832:1 and 55:1. Laplace, plane: dp = sigma/R (REFERENCES section 3 [V]). Surface tension
+ * A bubble of radius R at rest in water, 832:1 and 55:1. Laplace, plane: dp = sigma/R [V]. Surface tension
  * as in an 8 mm gap of 80 cells at a lattice velocity of 0.02 for 0.3 m/s: 0.0727 N/m / (998 kg/m3 * 0.1 mm * (15 m/s)^2) = 0.0032.
  */
 import { createSimulation, type Setup, type Simulation } from '../../../solver/index.ts';
@@ -31,7 +31,7 @@ function jump(s: Simulation): number {
  * gives way to sound, with a period of some 2500 steps at R = 20, over which the mean of the jump is taken.
  */
 export async function resting(R: number, settling: number): Promise<{ jump: number; capillary: number }> {
-  const viscosity = 0.05;
+  const viscosity = 0.01;
   const s = await bubble(R, viscosity);
   const unit = Math.round((R * R) / 400);
   advance(s, settling * Math.max(unit, 1));

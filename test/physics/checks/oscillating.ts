@@ -1,6 +1,6 @@
 /**
  * Channel of half width h under a pressure gradient P cos(w t): wall shear Re{P h tanh(lam h)/(lam h) e^(iwt)}, lam = sqrt(i w/nu),
- * for Womersley numbers Wo = h sqrt(w/nu) of 1, 2, 4. REFERENCES section 3 [V].
+ * for Womersley numbers Wo = h sqrt(w/nu) of 1, 2, 4 [V].
  *
  * The flow is linear, so one run answers for every frequency: a steady force set on at rest gives the wall shear s(t) of a step,
  * and the shear under P cos(w t) has the complex amplitude P int_0^inf s'(t) e^(-iwt) dt (Duhamel).

@@ -1,6 +1,6 @@
 /**
  * Plane Poiseuille flow between halfway walls N cells apart under a force G: wall shear G N/2, velocity G/(2 eta) s (N - s) at the
- * distance s from the wall. REFERENCES section 3 (textbook solution).
+ * distance s from the wall. Textbook solution.
  */
 import { createSimulation, type Samples } from '../../../solver/index.ts';
 import { CHANNEL, meanOf, settle } from '../channel.ts';
@@ -35,7 +35,7 @@ export const velocityError = ({ excess }: Poiseuille): number =>
   Math.sqrt(excess.reduce((sum, e) => sum + e * e, 0) / excess.length) / 0.02;
 
 /**
- * u - u_exact = u_max (16 L/3 - 1)/N^2, REFERENCES section 3 [V]. The odd moments relax with rate 1 and the shear with 1/tau, so
+ * u - u_exact = u_max (16 L/3 - 1)/N^2 [V]. The odd moments relax with rate 1 and the shear with 1/tau, so
  * L = (tau - 1/2)(1 - 1/2).
  */
 export const slipLaw = (tau: number, N: number): number => (0.02 * ((16 * (tau - 0.5)) / 6 - 1)) / N ** 2;

@@ -1,6 +1,6 @@
 /**
  * Rising bubble, case 1 of Hysing, Turek, Kuzmin, Parolini, Burman, Ganesan & Tobiska 2009, Int. J. Numer. Meth. Fluids 60, 1259
- * [L], REFERENCES section 1: box 1 x 2, radius 0.25 at (0.5, 0.5), no slip below and above, free slip at the sides; liquid
+ * [L]: box 1 x 2, radius 0.25 at (0.5, 0.5), no slip below and above, free slip at the sides; liquid
  * 1000 and 10, bubble 100 and 1, g 0.98, sigma 24.5; t = 0..3. N cells across the box.
  */
 import { createSimulation, type Simulation } from '../../../solver/index.ts';

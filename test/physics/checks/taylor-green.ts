@@ -1,6 +1,6 @@
 /**
  * Taylor-Green vortices in a box of N cells: u = -u0 cos(kx) sin(ky), v = u0 sin(kx) cos(ky), p = -rho u0^2/4 (cos 2kx + cos 2ky),
- * velocity decays with exp(-2 nu k^2 t). REFERENCES section 3 (textbook solution).
+ * velocity decays with exp(-2 nu k^2 t). Textbook solution.
  * Viscosity kept, u0 with 1/N, time with N^2: the same flow on finer grids, compressibility falling with the square as well.
  */
 import { createSimulation } from '../../../solver/index.ts';

@@ -1,12 +1,12 @@
 /**
  * Liquid of thickness H at the left wall, as much gas at the right one, under the same force G per volume.
- * REFERENCES section 3: compare first with the 1-D equation (eta(phi) u')' = -G, then with two sharp layers [V].
+ * compare first with the 1-D equation (eta(phi) u')' = -G, then with two sharp layers [V].
  */
 import { createSimulation } from '../../../solver/index.ts';
 import { CHANNEL, meanOf, profile, settle } from '../channel.ts';
 import { type Check, row } from '../row.ts';
 
-export const [ETA, G] = [0.1, 1e-6];
+export const [ETA, G] = [0.01, 1e-7];
 const W = 5;
 
 /**
@@ -55,7 +55,7 @@ export const check: Check = {
   name: 'two-layer',
   async run() {
     const rows = [];
-    for (const eta of [ETA, 0.02]) {
+    for (const eta of [ETA, 0.004]) {
       const flows: (TwoLayers & { cells: number })[] = [];
       for (const cells of [10, 20, 40]) flows.push({ cells, ...(await twoLayers(cells, 832, 55, 'f32', eta)) });
       const of = (value: 'balance' | 'liquid' | 'gas') => flows.map((flow) => ({ cells: flow.cells, value: flow[value] }));

@@ -1,0 +1,124 @@
+// Pressure of a box with gas from the sum of f, as forces.ts says; 1/rho beside it; then the ghosts of velocity, P and 1/rho.
+// Reads the sum of f, z and its ghosts, p; writes p, P, 1/rho, and ghosts.
+import * as H from '../header';
+import { address, entry, fieldRow, nx, ny, stride, zRow } from './rows';
+import { add, atMost, div, get, mad, mul, nmad, put, share, splat } from './vector';
+
+const SOUND_FRICTION: f64 = 0.2;
+
+export function press<T>(): void {
+  for (let y = 0; y < ny; y++) pressRow<T>(y);
+  fillWallGhosts<T>();
+  fillImages<T>(address(H.AT_MX), -1, 1);
+  fillImages<T>(address(H.AT_MY), 1, -1);
+  fillImages<T>(address(H.AT_PRESSURE), 1, 1);
+  fillImages<T>(address(H.AT_LIGHT), 1, 1);
+  fillWide<T>(address(H.AT_PRESSURE));
+}
+
+function pressRow<T>(y: i32): void {
+  const size = sizeof<T>();
+  const zS = zRow(y - 1);
+  const zC = zRow(y);
+  const zN = zRow(y + 1);
+  const sumAt = fieldRow(H.AT_SUM, y);
+  const pAt = fieldRow(H.AT_P, y);
+  const out = fieldRow(H.AT_PRESSURE, y);
+  const lightOut = fieldRow(H.AT_LIGHT, y);
+  const zero = splat<T>(0);
+  const one = splat<T>(1);
+  const rhoGas = splat<T>(entry(H.RHO_GAS));
+  const dRho = splat<T>(entry(H.RHO_LIQUID) - entry(H.RHO_GAS));
+  const third = splat<T>(1.0 / 3.0);
+  const toSum = splat<T>(3 / entry(H.RHO_LIQUID));
+  const friction = splat<T>(SOUND_FRICTION);
+  const end = <usize>nx * size;
+  let i: usize = 0;
+  do {
+    const z = get(zC + i);
+    const south = atMost<T>(atMost<T>(atMost<T>(zero, get(zS + i - size)), get(zS + i)), get(zS + i + size));
+    const here = atMost<T>(atMost<T>(atMost<T>(south, get(zC + i - size)), z), get(zC + i + size));
+    const least = atMost<T>(atMost<T>(atMost<T>(here, get(zN + i - size)), get(zN + i)), get(zN + i + size));
+    const lowest = mad<T>(share<T>(least), dRho, rhoGas);
+    const p = get(pAt + i);
+    const change = mul<T>(mul<T>(lowest, third), nmad<T>(toSum, p, get(sumAt + i)));
+    const inside = share<T>(z);
+    const square = mul<T>(inside, inside);
+    const now = add<T>(p, change);
+    put(pAt + i, now);
+    put(out + i, mad<T>(mul<T>(friction, nmad<T>(square, square, one)), change, now));
+    put(lightOut + i, div<T>(one, mad<T>(inside, dRho, rhoGas)));
+    i += 16;
+  } while (i < end);
+}
+
+/** In walls and solids: velocity -2 m1 + m2/3 + 8/3 U (-m1 + 2 U where only one cell lies before it), P in a straight line. */
+function fillWallGhosts<T>(): void {
+  const mx = address(H.AT_MX);
+  const my = address(H.AT_MY);
+  const P = address(H.AT_PRESSURE);
+  let ghost = address(H.AT_WALL_GHOSTS);
+  for (let n = <i32>entry(H.WALL_GHOSTS); n > 0; n--) {
+    const to = <usize><i32>load<f64>(ghost);
+    const faces = load<f64>(ghost, 8);
+    ghost += 16;
+    let u: f64 = 0;
+    let v: f64 = 0;
+    let p: f64 = 0;
+    for (let face = <i32>faces; face > 0; face--, ghost += 40) {
+      const i = <usize><i32>load<f64>(ghost);
+      const j = <usize><i32>load<f64>(ghost, 8);
+      const two = load<f64>(ghost, 16) != 0;
+      const wall = two ? 8.0 / 3.0 : 2;
+      const own = two ? -2.0 : -1.0;
+      const behind = two ? 1.0 / 3.0 : 0;
+      u += wall * load<f64>(ghost, 24) + own * <f64>load<T>(mx + i) + behind * <f64>load<T>(mx + j);
+      v += wall * load<f64>(ghost, 32) + own * <f64>load<T>(my + i) + behind * <f64>load<T>(my + j);
+      p += 2 * <f64>load<T>(P + i) - <f64>load<T>(P + j);
+    }
+    store<T>(mx + to, <T>(u / faces));
+    store<T>(my + to, <T>(v / faces));
+    store<T>(P + to, <T>(p / faces));
+  }
+}
+
+/** Ghosts of a field beyond periodic sides (copies) and slip sides (images; its sign turns across x by signX, across y by signY). */
+function fillImages<T>(field: usize, signX: f64, signY: f64): void {
+  imageRow<T>(field, -1, H.SIDE_LEFT, 0, ny - 1, signY);
+  imageRow<T>(field, ny, H.SIDE_RIGHT, ny - 1, 0, signY);
+  const bottom = <i32>entry(H.SIDE_BOTTOM);
+  const top = <i32>entry(H.SIDE_TOP);
+  for (let y = -1; y <= ny; y++) {
+    const first = field + <usize>(y * <i32>stride);
+    const last = first + <usize>(nx - 1) * sizeof<T>();
+    if (bottom == 0) store<T>(first - sizeof<T>(), load<T>(last));
+    if (bottom == 2) store<T>(first - sizeof<T>(), <T>signX * load<T>(first));
+    if (top == 0) store<T>(last + sizeof<T>(), load<T>(first));
+    if (top == 2) store<T>(last + sizeof<T>(), <T>signX * load<T>(last));
+  }
+}
+
+function imageRow<T>(field: usize, ghost: i32, sideAt: i32, inside: i32, across: i32, sign: f64): void {
+  const side = <i32>entry(sideAt);
+  if (side == 1) return;
+  const to = field + <usize>(ghost * <i32>stride) - sizeof<T>();
+  const from = field + <usize>((side == 0 ? across : inside) * <i32>stride) - sizeof<T>();
+  const factor = side == 0 ? <T>1 : <T>sign;
+  const end = <usize>(nx + 2) * sizeof<T>();
+  for (let i: usize = 0; i < end; i += sizeof<T>()) store<T>(to + i, factor * load<T>(from + i));
+}
+
+/** Second ghosts, which only the coupling across a periodic or slip side reads. */
+function fillWide<T>(field: usize): void {
+  const size = <i32>sizeof<T>();
+  const acrossY = <i32>entry(H.SIDE_LEFT) == 0;
+  const acrossX = <i32>entry(H.SIDE_BOTTOM) == 0;
+  const bytes = <usize>(nx * size);
+  memory.copy(field - 2 * stride, field + <usize>((acrossY ? ny - 2 : 1) * <i32>stride), bytes);
+  memory.copy(field + <usize>((ny + 1) * <i32>stride), field + <usize>((acrossY ? 1 : ny - 2) * <i32>stride), bytes);
+  for (let y = 0; y < ny; y++) {
+    const at = field + <usize>(y * <i32>stride);
+    store<T>(at - 2 * sizeof<T>(), load<T>(at + <usize>((acrossX ? nx - 2 : 1) * size)));
+    store<T>(at + <usize>((nx + 1) * size), load<T>(at + <usize>((acrossX ? 1 : nx - 2) * size)));
+  }
+}
