@@ -8,8 +8,8 @@
  * With gas, `collideVelocity`: the populations carry the velocity u and s = 3 p/rhoLiquid, and no density at all. They stream velocity
  * at the density of the liquid and with a small uniform viscosity nu0; forces.ts makes up for what differs from that.
  * Equilibrium: moments of a product of two 1-D distributions, 1, u, CS2 + u^2 in each axis, with s for the 1 of the zeroth and
- * P/rhoLiquid for its share of the second; the shear moments relax with 1/(3 nu0 + 1/2), in the frame of the flow. Gas that arrives
- * faster than the limit c is held back, u / sqrt(1 + (1 - phi)^2 (m^2/c^2 - 1)): a safety net for the jets of a pinch-off.
+ * P/rhoLiquid for its share of the second; the shear moments relax with 1/(3 nu0 + 1/2), in the frame of the flow. Gas faster
+ * than the limit c is held back, u / sqrt(1 + (1 - phi) (u^2/c^2 - 1)): a safety net for the jets of a pinch-off.
  */
 import type { Box } from './box.ts';
 import { CS2 } from './constants.ts';
@@ -88,8 +88,9 @@ export function collideVelocity(box: Box, cell: Cell): void {
   const { f, Fx, Fy } = cell;
   const [mx, my] = firstMoment(f);
   const gas = 1 - share(cell.phi);
-  const held = 1 / Math.sqrt(1 + gas * gas * Math.max((mx * mx + my * my) * box.gasLimit - 1, 0));
-  const [u, v] = [(mx + Fx - cell.soundX) * held, (my + Fy) * held];
+  const [fastX, fastY] = [mx + Fx - cell.soundX, my + Fy];
+  const held = 1 / Math.sqrt(1 + gas * Math.max((fastX * fastX + fastY * fastY) * box.gasLimit - 1, 0));
+  const [u, v] = [fastX * held, fastY * held];
   const keep = 1 - 1 / (box.nu0 / CS2 + 0.5);
   const d11 = keep * (f[5] - f[6] + f[7] - f[8] - mx * my);
   const d20 = 0.5 * keep * (f[1] + f[3] - f[2] - f[4] - (mx * mx - my * my));

@@ -135,10 +135,10 @@ export function collideRow<T>(y: i32, flags: i32): void {
     let etaN = nuLiquid;
     let etaS = nuLiquid;
     let coupling = zero;
-    let held = one;
     const mx = get(mxC + i);
     const my = get(myC + i);
-    if (noneBelow<T>(lowest, pure)) {
+    const liquidAlone = noneBelow<T>(lowest, pure);
+    if (liquidAlone) {
       accelX = mul<T>(liquidLight, accelX);
       accelY = mul<T>(liquidLight, accelY);
     } else {
@@ -166,8 +166,6 @@ export function collideRow<T>(y: i32, flags: i32): void {
       const couplingX = add<T>(part<T>(weightE, PE, P, get(PC + i + 2 * size), PW), part<T>(weightW, PW, P, get(PC + i - 2 * size), PE));
       const couplingY = add<T>(part<T>(weightN, PNorth, P, get(PN + stride + i), PSouth), part<T>(weightS, PSouth, P, get(PS - stride + i), PNorth));
       coupling = mul<T>(coupled, add<T>(couplingX, couplingY));
-      const excess = atLeast<T>(sub<T>(mul<T>(mad<T>(mx, mx, mul<T>(my, my)), gasLimit), one), zero);
-      held = div<T>(one, root<T>(mad<T>(mul<T>(heavy, heavy), excess, one)));
     }
 
     // viscous force over the four faces
@@ -197,9 +195,15 @@ export function collideRow<T>(y: i32, flags: i32): void {
     const Fy = add<T>(accelY, mad<T>(two, stretchY, shearY));
 
     // velocity
-    const fluid = mul<T>(get(mask + i), held);
-    const ux = mul<T>(add<T>(sub<T>(mx, get(sound + i)), Fx), fluid);
-    const uy = mul<T>(add<T>(my, Fy), fluid);
+    const fluid = get(mask + i);
+    let ux = mul<T>(add<T>(sub<T>(mx, get(sound + i)), Fx), fluid);
+    let uy = mul<T>(add<T>(my, Fy), fluid);
+    if (!liquidAlone) {
+      const excess = atLeast<T>(sub<T>(mul<T>(mad<T>(ux, ux, mul<T>(uy, uy)), gasLimit), one), zero);
+      const held = div<T>(one, root<T>(mad<T>(sub<T>(one, share<T>(z)), excess, one)));
+      ux = mul<T>(ux, held);
+      uy = mul<T>(uy, held);
+    }
     put(uxAt + i, ux);
     put(uyAt + i, uy);
     const xx = mul<T>(ux, ux);
