@@ -12,13 +12,11 @@ const COUPLING: f64 = 0.25;
 export let topU2: f64 = 0;
 
 /** eta at the face between two cells */
-// @ts-ignore: decorator
 @inline function thickness<T>(z: v128, other: v128, gas: v128, more: v128): v128 {
   return div<T>(splat<T>(1), mad<T>(share<T>(mul<T>(splat<T>(0.5), add<T>(z, other))), more, gas));
 }
 
 /** share of one face in the coupling: weight times (3 (P' - P) - (P'' - P behind)) */
-// @ts-ignore: decorator
 @inline function part<T>(weight: v128, beyond: v128, own: v128, far: v128, behind: v128): v128 {
   return mul<T>(weight, sub<T>(mul<T>(splat<T>(3), sub<T>(beyond, own)), sub<T>(far, behind)));
 }

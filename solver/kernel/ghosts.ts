@@ -12,19 +12,13 @@ const PERIODIC: i32 = 0;
 const SLIP: i32 = 2;
 
 /** Address of population n (0..8 f, 9..17 g) of cell (x, y). */
-// @ts-ignore: decorator
 @inline function at<T>(x: i32, y: i32, n: i32): usize { return row(y) + <usize>n * stride + <usize>(x * <i32>sizeof<T>()); }
 
-// @ts-ignore: decorator
 @inline function opposite(k: i32): i32 { return k == 0 ? 0 : k < 5 ? ((k + 1) & 3) + 1 : ((k - 3) & 3) + 5; }
-// @ts-ignore: decorator
 @inline function ex(k: i32): i32 { return k == 1 || k == 5 || k == 8 ? 1 : k == 3 || k == 6 || k == 7 ? -1 : 0; }
-// @ts-ignore: decorator
 @inline function ey(k: i32): i32 { return k == 2 || k == 5 || k == 6 ? 1 : k == 4 || k == 7 || k == 8 ? -1 : 0; }
 /** the direction with the sign of ex turned, of ey turned */
-// @ts-ignore: decorator
 @inline function mirrorX(k: i32): i32 { return k == 1 ? 3 : k == 3 ? 1 : k == 5 ? 6 : k == 6 ? 5 : k == 7 ? 8 : k == 8 ? 7 : k; }
-// @ts-ignore: decorator
 @inline function mirrorY(k: i32): i32 { return k == 2 ? 4 : k == 4 ? 2 : k == 5 ? 8 : k == 8 ? 5 : k == 6 ? 7 : k == 7 ? 6 : k; }
 
 /** Of a box without gas. */
@@ -118,7 +112,6 @@ function wrapRows<T>(first: i32, periodicX: bool): void {
 }
 
 /** What a wall moving at `speed` along e adds to what it sends back. */
-// @ts-ignore: decorator
 @inline function push(k: i32, along: i32, speed: f64): f64 {
   return 6 * (k < 5 ? W1 : W2) * entry(H.RHO_LIQUID) * <f64>along * speed;
 }

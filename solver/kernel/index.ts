@@ -102,7 +102,6 @@ function dampSound<T>(): void {
 }
 
 /** 1 for a section without gas, 0 for one with a fiftieth or more of it. */
-// @ts-ignore: decorator
 @inline function liquidWeight(gas: f64): f64 { return Math.max(0, 1 - 50 * gas / <f64>ny); }
 
 function drive(upflow: f64): void {

@@ -5,7 +5,6 @@ import * as H from '../header';
 import { address, entry, nx, ny, zRow } from './rows';
 
 /** z beyond a wall whose first cell holds `z`. */
-// @ts-ignore: decorator
 @inline function wettedGhost(z: f64, c: f64): f64 {
   const inside = Math.min(Math.max(1 + z, 0), 1);
   const wall = (4 * inside) / (2 - c + Math.sqrt((2 - c) * (2 - c) + 8 * c * inside));
@@ -41,7 +40,6 @@ export function fillPhiGhosts<T>(): void {
 }
 
 /** Ghost value beyond a side: periodic 0, wall 1, slip 2. */
-// @ts-ignore: decorator
 @inline function beyond<T>(side: i32, inside: usize, across: usize, c: f64): T {
   if (side == 0) return load<T>(across);
   return side == 2 ? load<T>(inside) : <T>wettedGhost(<f64>load<T>(inside), c);

@@ -9,11 +9,8 @@
 import * as H from '../header';
 
 /** Entry of the header. */
-// @ts-ignore: decorator
 @inline export function entry(n: i32): f64 { return load<f64>(<usize>n << 3); }
-// @ts-ignore: decorator
 @inline export function address(n: i32): usize { return <usize>load<f64>(<usize>n << 3); }
-// @ts-ignore: decorator
 @inline export function setEntry(n: i32, value: f64): void { store<f64>(<usize>n << 3, value); }
 
 export let nx: i32 = 0;
@@ -50,10 +47,8 @@ export function turn(): void {
 }
 
 /** z = phi - 1 at (0, y), y from -1 to ny. */
-// @ts-ignore: decorator
 @inline export function zRow(y: i32): usize { return z + <usize>(y * <i32>stride); }
 
 /** A field at (0, y); y from -1 to ny where it has ghosts. */
-// @ts-ignore: decorator
 @inline export function fieldRow(at: i32, y: i32): usize { return address(at) + <usize>(y * <i32>stride); }
 

@@ -4,46 +4,31 @@
 /** phi this close to 0 or 1 is pure, see forces.ts */
 export const PURE: f64 = 0.002;
 
-// @ts-ignore: decorator
 @inline export function add<T>(a: v128, b: v128): v128 { return v128.add<T>(a, b); }
-// @ts-ignore: decorator
 @inline export function sub<T>(a: v128, b: v128): v128 { return v128.sub<T>(a, b); }
-// @ts-ignore: decorator
 @inline export function mul<T>(a: v128, b: v128): v128 { return v128.mul<T>(a, b); }
-// @ts-ignore: decorator
 @inline export function div<T>(a: v128, b: v128): v128 { return v128.div<T>(a, b); }
 /** a b + c */
-// @ts-ignore: decorator
 @inline export function mad<T>(a: v128, b: v128, c: v128): v128 { return v128.add<T>(v128.mul<T>(a, b), c); }
 /** c - a b */
-// @ts-ignore: decorator
 @inline export function nmad<T>(a: v128, b: v128, c: v128): v128 { return v128.sub<T>(c, v128.mul<T>(a, b)); }
-// @ts-ignore: decorator
 @inline export function root<T>(a: v128): v128 { return v128.sqrt<T>(a); }
 /** the larger of two that are not negative, not a number where one is not: the bits of such numbers are in their order */
-// @ts-ignore: decorator
 @inline export function max<T>(a: v128, b: v128): v128 { return sizeof<T>() == 4 ? v128.max<u32>(a, b) : v128.max<T>(a, b); }
 /** a, or b where that is beyond it: one instruction where `max` takes many; a b that is no number counts for nothing */
-// @ts-ignore: decorator
 @inline export function atLeast<T>(a: v128, b: v128): v128 { return v128.pmax<T>(a, b); }
-// @ts-ignore: decorator
 @inline export function atMost<T>(a: v128, b: v128): v128 { return v128.pmin<T>(a, b); }
-// @ts-ignore: decorator
 @inline export function splat<T>(a: f64): v128 { return v128.splat<T>(<T>a); }
-// @ts-ignore: decorator
 @inline export function get(at: usize): v128 { return v128.load(at); }
-// @ts-ignore: decorator
 @inline export function put(at: usize, a: v128): void { v128.store(at, a); }
 
 /** every lane of a at least that of b */
-// @ts-ignore: decorator
 @inline export function noneBelow<T>(a: v128, b: v128): bool {
   const yes = v128.ge<T>(a, b);
   return sizeof<T>() == 8 ? i64x2.all_true(yes) : i32x4.all_true(yes);
 }
 
 /** Share of liquid at z = phi - 1, see forces.ts. */
-// @ts-ignore: decorator
 @inline export function share<T>(z: v128): v128 {
   const one = splat<T>(1);
   return atMost<T>(atLeast<T>(mad<T>(z, splat<T>(1 / (1 - 2 * PURE)), splat<T>((1 - PURE) / (1 - 2 * PURE))), splat<T>(0)), one);

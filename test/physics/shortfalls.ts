@@ -2,7 +2,7 @@ import type { Row } from './row.ts';
 
 const STAIRCASE = 'the cylinders are staircases, whose drag falls unevenly with the grid; interpolated walls are to come';
 const BENT = 'far from 90 deg the angle comes out more extreme than asked, on any grid';
-const SOUND = 'the bubble starts with its Laplace pressure alone; the sound of the first moments swings through the speed';
+const SOUND = 'the bubble starts with its Laplace pressure alone; sound of the first moments probably swings through the speed';
 const LINE = 'beside the wall where the interface meets it; flow reflects there like a mirror and the interface straight back';
 
 /** Gates not held yet: check, words the quantity begins with, why, and the figure that was seen. */
