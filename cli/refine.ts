@@ -1,6 +1,6 @@
 import { join } from 'node:path';
 import { type Case, type Derived, layOut } from '../cases/index.ts';
-import { type GridRun, gridFolder, openRefinement, type Refinement, readAnswers, refinement, writeRefinement } from '../output/index.ts';
+import { type GridRun, gridFolder, openRefinement, type Refinement, readRefined, refinement, writeRefinement } from '../output/index.ts';
 import { CaseError, UsageError } from '../solver/index.ts';
 import { count, percent, plain } from './numbers.ts';
 import { run } from './run.ts';
@@ -76,7 +76,7 @@ async function runGrid({ across, sets, panel, derived }: Grid, path: string, opt
   const out = join(path, folder);
   try {
     const exit = await run({ ...options, sets, out, frames: 0, partial: true });
-    return exit === 0 ? { panel, derived, folder, answers: await readAnswers(out) } : exit;
+    return exit === 0 ? { panel, derived, folder, answers: await readRefined(out) } : exit;
   } catch (error) {
     process.stderr.write(`the run with ${across} cells across failed; finished ones are kept:\n`);
     throw error;
@@ -118,10 +118,9 @@ function gridOf({ word, sets, grids }: RefineOptions, across: number): Grid {
 }
 
 function page({ title, within, swept, grids, measures, notes }: Refinement, path: string): string {
-  const heads = ['measure', 'where', ...grids.map(({ across }) => `${across} across`), 'order', 'extrapolated', 'change', 'index'];
-  const rows = measures.map(({ name, place, values, convergence: found }) => [
+  const heads = ['measure', ...grids.map(({ across }) => `${across} across`), 'order', 'extrapolated', 'change', 'index'];
+  const rows = measures.map(({ name, values, convergence: found }) => [
     name,
-    place,
     ...values.map((value) => plain(value)),
     plain(found?.order, 2),
     plain(found?.extrapolated),

@@ -21,6 +21,7 @@ export function summary(recording: Recording, measures: Measures): string {
   const content = {
     title: recording.case.title,
     complete: measures.complete,
+    answers: Object.fromEntries(measures.answers.map(({ name, value, low, high }) => [name, { value, low, high }])),
     recorded: measures.recorded,
     swept: measures.swept,
     walls: { left: wallSummary(left), right: wallSummary(right) },

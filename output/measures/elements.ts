@@ -64,7 +64,7 @@ export function elementRows(recording: Recording, surface: Surface): ElementRow[
     row.meanAbs_Pa = absSum / samples;
     row.mean_Pa = sum / samples;
     row.rms_Pa = Math.sqrt(ops.norm2squared(shear) / samples);
-    row.p95_Pa = quantile(ascending(magnitudes), 0.95);
+    row.p95_Pa = quantile([ascending(magnitudes)], 0.95);
     row.max_Pa = ops.norminf(shear);
     row.shareAbove = felt.above / samples;
     row.events_1_s = watched_s > 0 ? felt.rises / watched_s : null;

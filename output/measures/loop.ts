@@ -1,4 +1,5 @@
 import type { History, Recording } from '../../cases/index.ts';
+import { byMean, type Estimate } from './estimate.ts';
 
 /** How gas and liquid went round, from the history; null where it holds nothing after the settling time. */
 export interface LoopMeasures {
@@ -19,20 +20,35 @@ export interface LoopMeasures {
 /** Means of the loop's history after settling, and its gas balance since the start. Entries of the history count alike. */
 export function loopMeasures(recording: Recording): LoopMeasures {
   const { history } = recording;
-  const found = history.time_s.findIndex((time_s) => time_s >= recording.case.record.settle_s);
-  const first = found < 0 ? history.time_s.length : found;
+  const first = firstSettled(recording);
   const middle = Math.floor((first + history.time_s.length) / 2);
   const early = mean(history.upflow_m_s.slice(first, middle));
   const late = mean(history.upflow_m_s.slice(middle));
   return {
-    holdup: mean(history.holdup.slice(first)),
-    upflow_m_s: mean(history.upflow_m_s.slice(first)),
+    holdup: holdup(recording).value,
+    upflow_m_s: upflow(recording).value,
     upflowDrift_m_s: early === null || late === null ? null : late - early,
     released_m2: history.released_m2.at(-1) ?? null,
     skimmed_m2: history.skimmed_m2.at(-1) ?? null,
     present_m2: history.present_m2.at(-1) ?? null,
     balanceError: balanceError(history),
   };
+}
+
+/** Mean after settling of the share of the channel's free area that is gas, bands and fins' surroundings included. */
+export function holdup(recording: Recording): Estimate {
+  return byMean(Float64Array.from(recording.history.holdup.slice(firstSettled(recording))));
+}
+
+/** Mean after settling of the superficial velocity of the loop, m/s, upward; of liquid and gas together. */
+export function upflow(recording: Recording): Estimate {
+  return byMean(Float64Array.from(recording.history.upflow_m_s.slice(firstSettled(recording))));
+}
+
+/** Entries of the history before the settling time is over. */
+function firstSettled({ history, case: { record } }: Recording): number {
+  const found = history.time_s.findIndex((time_s) => time_s >= record.settle_s);
+  return found < 0 ? history.time_s.length : found;
 }
 
 function balanceError({ released_m2, skimmed_m2, present_m2 }: History): number | null {

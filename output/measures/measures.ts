@@ -1,8 +1,9 @@
 import type { Recording, WallSide } from '../../cases/index.ts';
+import { type Answer, answersOf, type Places } from './answers.ts';
 import { type ElementRow, elementRows } from './elements.ts';
+import { type Felt, felt } from './felt.ts';
 import { type Histogram, shearHistogram } from './histogram.ts';
 import { type LoopMeasures, loopMeasures } from './loop.ts';
-import { ascending } from './order.ts';
 import { type ShearStatistics, shearStatistics } from './shear.ts';
 import { clip, layWall, type Surface } from './surface.ts';
 import { type Swept, sweptFraction, sweptTogether, windowSamples } from './swept.ts';
@@ -11,6 +12,8 @@ import { type Swept, sweptFraction, sweptTogether, windowSamples } from './swept
 export interface Measures {
   /** false while the asked span is not fully recorded */
   complete: boolean;
+  /** headline measures with their 95 % intervals; the same names in every run */
+  answers: Answer[];
   recorded: { samples: number; from_s: number | null; to_s: number | null; every_s: number };
   /** what swept means here */
   swept: { above_Pa: number; within_s: number };
@@ -39,11 +42,13 @@ export interface WallMeasures {
 export function measure(recording: Recording): Measures {
   const asked = recording.case.swept;
   const surfaces = { left: layWall(recording, 'left'), right: layWall(recording, 'right') };
-  const walls = { left: measureWall(recording, surfaces.left), right: measureWall(recording, surfaces.right) };
+  const places = placesOf(recording, surfaces);
+  const walls = { left: measureWall(recording, places.left[0]), right: measureWall(recording, places.right[0]) };
   const { membranes } = recording.case.channel;
   const times = recording.times_s;
   return {
     complete: recording.complete,
+    answers: answersOf(recording, places),
     recorded: {
       samples: times.length,
       from_s: times.length === 0 ? null : times[0],
@@ -59,15 +64,20 @@ export function measure(recording: Recording): Measures {
   };
 }
 
-function measureWall(recording: Recording, wall: Surface): WallMeasures {
-  const surface = clip(wall, recording.membrane);
-  const sorted_Pa = ascending(surface.magnitude_Pa.data);
+function placesOf(recording: Recording, surfaces: Record<WallSide, Surface>): Places {
+  const between = (side: WallSide): Felt => felt(clip(surfaces[side], recording.membrane));
+  const walls = { left: between('left'), right: between('right') };
+  return { left: [walls.left], right: [walls.right], together: recording.case.channel.membranes.map((side) => walls[side]) };
+}
+
+function measureWall({ case: { swept } }: Recording, wall: Felt): WallMeasures {
+  const { membrane, elements, covered } = wall.surface;
   return {
-    membrane: surface.membrane,
-    elements: { open: surface.elements.length, underFin: surface.covered },
-    shear: shearStatistics(surface, recording.case.swept.above_Pa, sorted_Pa),
-    histogram: shearHistogram(sorted_Pa),
-    swept: sweptFraction(surface, recording.case.swept),
+    membrane,
+    elements: { open: elements.length, underFin: covered },
+    shear: shearStatistics(wall, swept),
+    histogram: shearHistogram(wall.sorted_Pa()),
+    swept: sweptFraction(wall.surface, swept),
   };
 }
 

@@ -1,58 +1,28 @@
-import { join } from 'node:path';
 import { OutputError } from '../../solver/index.ts';
-import { readWhole } from '../folder/files.ts';
+import { readAnswers } from '../folder/answers.ts';
 
-/** One measure that grids are compared by. */
-export interface Refined {
-  /** as in the tables; ends in its SI unit, a share has none */
-  name: string;
-  /** which wall; `together`: all membrane walls; `channel`: the whole section */
-  place: 'left' | 'right' | 'together' | 'channel';
-  /** where it stands in summary.json */
-  path: readonly string[];
-  /** values it can have */
-  range: { least: number; most: number };
-}
-
-const SHARE = { least: 0, most: 1 };
-const SIZE = { least: 0, most: Number.POSITIVE_INFINITY };
-const ANY = { least: Number.NEGATIVE_INFINITY, most: Number.POSITIVE_INFINITY };
-
-/** The measures of a refinement, in the order of its table. */
-export const REFINED: readonly Refined[] = [
-  ...(['left', 'right'] as const).map((place) => ({ name: 'swept', place, path: ['walls', place, 'swept', 'within'], range: SHARE })),
-  { name: 'swept', place: 'together', path: ['together', 'within'], range: SHARE },
-  ...(['left', 'right'] as const).flatMap((place) => [
-    { name: 'mean_abs_Pa', place, path: ['walls', place, 'shear', 'meanAbs_Pa'], range: SIZE },
-    { name: 'rms_Pa', place, path: ['walls', place, 'shear', 'rms_Pa'], range: SIZE },
-    { name: 'p95_Pa', place, path: ['walls', place, 'shear', 'percentiles_Pa', 'p95'], range: SIZE },
-    { name: 'share_above', place, path: ['walls', place, 'shear', 'shareAbove'], range: SHARE },
+/** The answers of a refinement, in the order of its table: those that a designer decides by. */
+export const REFINED: readonly string[] = [
+  ...['left', 'right', 'together'].map((place) => `swept_${place}`),
+  ...['left', 'right'].flatMap((place) => [
+    `mean_shear_${place}_Pa`,
+    `rms_shear_${place}_Pa`,
+    `p95_shear_${place}_Pa`,
+    `share_above_${place}`,
   ]),
-  { name: 'holdup', place: 'channel', path: ['loop', 'holdup'], range: SHARE },
-  { name: 'upflow_m_s', place: 'channel', path: ['loop', 'upflow_m_s'], range: ANY },
+  'holdup',
+  'upflow_m_s',
 ];
 
 /**
- * The values of {@link REFINED} that stand in the summary.json of a finished run, in that order; null where the run has none.
- * @throws OutputError no summary, or not one of ours
+ * The values of {@link REFINED} of a finished run, in that order; null where the run has none.
+ * @throws OutputError no summary, not one of ours, or one without such an answer
  */
-export async function readAnswers(folder: string): Promise<(number | null)[]> {
-  const path = join(folder, 'summary.json');
-  const bytes = await readWhole(path);
-  if (bytes === undefined) throw new OutputError(path, `${path}: there is no such file; run the case in this folder to its end.`);
-  let content: unknown;
-  try {
-    content = JSON.parse(bytes.toString('utf8'));
-  } catch (cause) {
-    throw new OutputError(path, `${path}: this is no JSON; run the case anew (--again).`, { cause });
-  }
-  return REFINED.map((measure) => {
-    const value = measure.path.reduce<unknown>((inner, key) => entry(inner, key), content);
-    if (value === null || (typeof value === 'number' && Number.isFinite(value))) return value;
-    throw new OutputError(path, `${path}: ${measure.path.join('.')} is no number; run the case anew (--again).`);
+export async function readRefined(folder: string): Promise<(number | null)[]> {
+  const answers = await readAnswers(folder);
+  return REFINED.map((name) => {
+    const answer = answers.get(name);
+    if (answer === undefined) throw new OutputError(folder, `${folder}: the run has no answer ${name}; run the case anew (--again).`);
+    return answer.value;
   });
-}
-
-function entry(inner: unknown, key: string): unknown {
-  return typeof inner === 'object' && inner !== null && key in inner ? (inner as Record<string, unknown>)[key] : undefined;
 }

@@ -69,12 +69,11 @@ export async function writeRefinement(path: string, refinement: Refinement): Pro
  */
 function table({ grids, measures }: Refinement): string {
   const across = ['coarse', 'middle', 'fine'].map((grid) => `${grid}_across`);
-  const header = ['measure', 'place', ...across, 'coarse', 'middle', 'fine', 'order', 'extrapolated', 'change', 'index', 'error'];
-  const rows = measures.map(({ name, place, values, convergence, verdict }): Cell[] => {
+  const header = ['measure', ...across, 'coarse', 'middle', 'fine', 'order', 'extrapolated', 'change', 'index', 'error'];
+  const rows = measures.map(({ name, values, convergence, verdict }): Cell[] => {
     const { order = null, extrapolated = null, change = null, index = null } = convergence ?? {};
     return [
       name,
-      place,
       ...grids.map((grid) => grid.across),
       ...values,
       order,
@@ -96,9 +95,8 @@ function report({ title, within, swept, grids, measures, notes }: Refinement): o
     within,
     swept,
     grids,
-    measures: measures.map(({ name, place, values, convergence, verdict }) => ({
+    measures: measures.map(({ name, values, convergence, verdict }) => ({
       measure: name,
-      place,
       coarse: values[0],
       middle: values[1],
       fine: values[2],

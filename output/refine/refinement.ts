@@ -1,5 +1,6 @@
 import type { Case, Derived } from '../../cases/index.ts';
-import { REFINED, type Refined } from './answers.ts';
+import { rangeOf } from '../measures/answers.ts';
+import { REFINED } from './answers.ts';
 import { type Convergence, gridConvergence, type Triple } from './convergence.ts';
 import { BELIEVED_ORDER, type Verdict, verdictOn } from './verdict.ts';
 
@@ -18,8 +19,8 @@ export interface GridRun {
 
 /** One measure on three grids. */
 interface RefinedMeasure {
-  name: Refined['name'];
-  place: Refined['place'];
+  /** of the answer */
+  name: string;
   /** one per grid, the coarsest first */
   values: (number | null)[];
   /** undefined where some grid has no value */
@@ -48,11 +49,11 @@ export interface Refinement {
 export function refinement(runs: readonly [GridRun, GridRun, GridRun], within: number): Refinement {
   const [coarse, middle, fine] = runs;
   const cells: Triple = [fine.derived.dx_m, middle.derived.dx_m, coarse.derived.dx_m];
-  const measures = REFINED.map(({ name, place, range }, i): RefinedMeasure => {
+  const measures = REFINED.map((name, i): RefinedMeasure => {
     const values = runs.map(({ answers }) => answers[i]);
     const [c, m, f] = values;
     const convergence = c === null || m === null || f === null ? undefined : gridConvergence([f, m, c], cells);
-    return { name, place, values, convergence, verdict: verdictOn(convergence, { within, ratio21: cells[1] / cells[0], range }) };
+    return { name, values, convergence, verdict: verdictOn(convergence, { within, ratio21: cells[1] / cells[0], range: rangeOf(name) }) };
   });
   return {
     title: fine.panel.title,

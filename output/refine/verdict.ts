@@ -1,3 +1,4 @@
+import type { Range } from '../measures/estimate.ts';
 import { type Convergence, gridIndex } from './convergence.ts';
 
 /** Highest order that is believed: the method is of second order, more is chance and would make the index too small. */
@@ -20,7 +21,7 @@ export interface Question {
   /** h2 / h1 of the two finer grids */
   ratio21: number;
   /** values that the measure can have */
-  range: { least: number; most: number };
+  range: Range;
 }
 
 /** A plain verdict on the convergence of one measure; undefined: some grid has no value. */

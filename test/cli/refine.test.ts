@@ -20,9 +20,9 @@ describe('a refinement from end to end', () => {
   it('runs three grids, the coarsest first, and prints a verdict for each measure with what the index does not know', () => {
     expect(ended.error).toMatch(/^grid 1 of 3: 12 across, 648 cells.*\ngrid 2 of 3: 16 across.*\ngrid 3 of 3: 24 across.*of the work\n$/);
     expect(ended.exit).toBe(0);
-    const heads = /^measure +where +12 across +16 across +24 across +order +extrapolated +change +index +verdict$/m;
+    const heads = /^measure +12 across +16 across +24 across +order +extrapolated +change +index +verdict$/m;
     expect(ended.out).toMatch(heads);
-    for (const row of ['swept +left', 'swept +together', 'mean_abs_Pa +right', 'p95_Pa +left', 'holdup +channel', 'upflow_m_s +channel'])
+    for (const row of ['swept_left', 'swept_together', 'mean_shear_right_Pa', 'p95_shear_left_Pa', 'holdup', 'upflow_m_s'])
       expect(ended.out).toMatch(new RegExp(`^${row} +[\\d.]+ +[\\d.]+ +[\\d.]+ .*(converged|not yet|oscillating|same|agree)`, 'm'));
     expect(ended.out).toContain('A bubble flow is chaotic');
     expect(ended.out).toContain('not for design');
@@ -54,7 +54,7 @@ describe('a refinement from end to end', () => {
   });
 
   it('writes the values of the three runs', () => {
-    const row = csvParse(table).find(({ measure, place }) => measure === 'rms_Pa' && place === 'right');
+    const row = csvParse(table).find(({ measure }) => measure === 'rms_shear_right_Pa');
     const rms = [12, 16, 24].map((across) => {
       const { walls } = bench.json(`runs/tiny-refine/across-${across}/summary.json`) as {
         walls: { right: { shear: { rms_Pa: number } } };

@@ -5,7 +5,7 @@ import { csvParse } from 'd3-dsv';
 import { afterAll, describe, expect, it } from 'vitest';
 import type { Derived } from '../../cases/index.ts';
 import { summary } from '../../output/folder/summary.ts';
-import { type GridRun, measure, openRefinement, readAnswers, refinement, writeRefinement } from '../../output/index.ts';
+import { type GridRun, measure, openRefinement, readRefined, refinement, writeRefinement } from '../../output/index.ts';
 import { REFINED } from '../../output/refine/answers.ts';
 import { makeRecording } from './recordings.ts';
 
@@ -24,7 +24,7 @@ function gridRun(across: number, answer: number | null, changed: Partial<Derived
 function verdicts(coarse: number | null, middle: number | null, fine: number | null) {
   const { measures } = refinement([gridRun(20, coarse), gridRun(30, middle), gridRun(45, fine)], 0.05);
   const at = (name: string) => measures.find((row) => row.name === name)?.verdict ?? expect.fail(`no ${name}`);
-  return { shear: at('mean_abs_Pa'), share: at('swept') };
+  return { shear: at('mean_shear_left_Pa'), share: at('swept_left') };
 }
 
 describe('the verdict on three grids', () => {
@@ -120,27 +120,30 @@ describe('the answers of a run', () => {
     const folder = join(root, 'run');
     mkdirSync(folder);
     writeFileSync(join(folder, 'summary.json'), summary(recording, measures));
-    const answers = await readAnswers(folder);
-    const row = (name: string, place: string) => answers[REFINED.findIndex((one) => one.name === name && one.place === place)];
-    expect(row('swept', 'left')).toBe(measures.walls.left.swept.within);
-    expect(row('swept', 'together')).toBe(measures.together.within);
-    expect(row('mean_abs_Pa', 'right')).toBe(measures.walls.right.shear.meanAbs_Pa);
-    expect(row('rms_Pa', 'left')).toBe(measures.walls.left.shear.rms_Pa);
-    expect(row('p95_Pa', 'right')).toBe(measures.walls.right.shear.percentiles_Pa.p95);
-    expect(row('share_above', 'left')).toBe(measures.walls.left.shear.shareAbove);
-    expect(row('holdup', 'channel')).toBe(measures.loop.holdup);
-    expect(row('upflow_m_s', 'channel')).toBe(measures.loop.upflow_m_s);
+    const answers = await readRefined(folder);
+    const row = (name: string) => answers[REFINED.indexOf(name)];
+    expect(row('swept_left')).toBe(measures.answers.find(({ name }) => name === 'swept_left')?.value);
+    expect(row('swept_left')).toBeCloseTo(measures.walls.left.swept.within ?? Number.NaN, 12);
+    expect(row('swept_together')).toBeCloseTo(measures.together.within ?? Number.NaN, 12);
+    expect(row('mean_shear_right_Pa')).toBe(measures.walls.right.shear.meanAbs_Pa);
+    expect(row('rms_shear_left_Pa')).toBe(measures.walls.left.shear.rms_Pa);
+    expect(row('p95_shear_right_Pa')).toBe(measures.walls.right.shear.percentiles_Pa.p95);
+    expect(row('share_above_left')).toBe(measures.walls.left.shear.shareAbove);
+    expect(row('holdup')).toBe(measures.loop.holdup);
+    expect(row('upflow_m_s')).toBe(measures.loop.upflow_m_s);
     expect(answers).toHaveLength(13);
   });
 
   it('are refused where the file is missing, cut short or without a measure', async () => {
     const folder = join(root, 'broken');
     mkdirSync(folder);
-    await expect(readAnswers(folder)).rejects.toThrow(/summary\.json: there is no such file/);
+    await expect(readRefined(folder)).rejects.toThrow(/summary\.json: there is no such file/);
     writeFileSync(join(folder, 'summary.json'), '{"walls": {');
-    await expect(readAnswers(folder)).rejects.toThrow(/summary\.json: this is no JSON/);
-    writeFileSync(join(folder, 'summary.json'), '{"walls": {"left": {"swept": {"within": "much"}}}}');
-    await expect(readAnswers(folder)).rejects.toThrow(/walls\.left\.swept\.within is no number/);
+    await expect(readRefined(folder)).rejects.toThrow(/summary\.json: this is no JSON/);
+    writeFileSync(join(folder, 'summary.json'), '{"answers": {"swept_left": {"value": "much"}}}');
+    await expect(readRefined(folder)).rejects.toThrow(/answers\.swept_left\.value is not as this version writes it/);
+    writeFileSync(join(folder, 'summary.json'), '{"answers": {}}');
+    await expect(readRefined(folder)).rejects.toThrow(/the run has no answer swept_left/);
   });
 });
 
@@ -156,12 +159,7 @@ describe('the folder of a refinement', () => {
     expect(grids.map((grid: { across: number }) => grid.across)).toEqual([20, 30, 45]);
     expect(rows).toHaveLength(measures.length);
     rows.forEach((row, i) => {
-      expect([row.measure, row.place, row.verdict, row.says]).toEqual([
-        measures[i].measure,
-        measures[i].place,
-        measures[i].verdict,
-        measures[i].says,
-      ]);
+      expect([row.measure, row.verdict, row.says]).toEqual([measures[i].measure, measures[i].verdict, measures[i].says]);
       for (const key of ['coarse', 'middle', 'fine', 'order', 'extrapolated', 'change', 'index', 'error'])
         expect(Number(row[key])).toBeCloseTo(measures[i][key], 5);
     });

@@ -1,0 +1,84 @@
+import type { Recording, WallSide } from '../../cases/index.ts';
+import { shareAbove } from './above.ts';
+import { ANY, type Estimate, type Range, SHARE } from './estimate.ts';
+import { events } from './events.ts';
+import type { Felt } from './felt.ts';
+import { halfWidth } from './interval.ts';
+import { holdup, upflow } from './loop.ts';
+import { meanShear, steadyShear } from './mean.ts';
+import { percentiles } from './percentiles.ts';
+import { reversal } from './reversal.ts';
+import { rmsShear } from './rms.ts';
+import { underGas } from './undergas.ts';
+import type { WallMeasure } from './wallmeasure.ts';
+import { sweptWithin, touchedWithin } from './windows.ts';
+
+/** One headline measure of a recording. */
+export interface Answer {
+  /** ends in its SI unit; a share has none */
+  name: string;
+  value: number | null;
+  /** ends of its 95 % interval (interval.ts); null: cannot be told from this recording */
+  low: number | null;
+  high: number | null;
+}
+
+/** A wall, or `together`: all membrane walls as one surface. */
+type Place = WallSide | 'together';
+
+/** The walls of each place, each wall made once. */
+export type Places = Record<Place, readonly Felt[]>;
+
+const PLACES: readonly Place[] = ['left', 'right', 'together'];
+
+/** Headline measures of walls, in the order of every list. */
+const WALL_MEASURES: readonly WallMeasure[] = [
+  sweptWithin,
+  touchedWithin,
+  meanShear,
+  steadyShear,
+  rmsShear,
+  ...percentiles,
+  shareAbove,
+  events,
+  reversal,
+  underGas,
+];
+
+interface Headline {
+  name: string;
+  range: Range;
+  estimate(recording: Recording, places: Places): Estimate;
+}
+
+/** Every headline measure by name: the one list that summaries, grids, comparisons and sweeps go by. */
+const HEADLINES: readonly Headline[] = [
+  ...WALL_MEASURES.flatMap(({ stem, unit, range, estimate }) =>
+    PLACES.map((place) => ({
+      name: [stem, place, unit].filter((part) => part !== '').join('_'),
+      range,
+      estimate: ({ case: { swept } }: Recording, places: Places) => estimate(places[place], swept),
+    })),
+  ),
+  { name: 'holdup', range: SHARE, estimate: holdup },
+  { name: 'upflow_m_s', range: ANY, estimate: upflow },
+];
+
+/** Values that an answer can have. */
+export function rangeOf(name: string): Range {
+  const headline = HEADLINES.find((one) => one.name === name);
+  if (headline === undefined) throw new Error(`no answer is called ${name}`);
+  return headline.range;
+}
+
+/** All answers of a recording, in the order of {@link HEADLINES}. */
+export function answersOf(recording: Recording, places: Places): Answer[] {
+  return HEADLINES.map(({ name, range, estimate }) => answer(name, range, estimate(recording, places)));
+}
+
+function answer(name: string, range: Range, { value, series, shifted }: Estimate): Answer {
+  const half = value === null ? null : halfWidth(series);
+  if (half === null) return { name, value, low: null, high: null };
+  const within = (end: number): number => Math.min(range.most, Math.max(range.least, end));
+  return { name, value, low: within(shifted(-half)), high: within(shifted(half)) };
+}
