@@ -1,11 +1,10 @@
 /** How long a step is, how long a run, and which ends of the channel serve to let gas in and take it out. */
 import type { Case } from './case.ts';
+import { fitting_m } from './gas.ts';
+import { WIDEST_DRAW } from './mixture.ts';
 
 /** Lattice velocity at which `grid.speed` stands (it held at 0.02 and below). */
 const LATTICE_SPEED = 0.02;
-
-/** Bubbles are drawn within this many standard deviations of the mean diameter. */
-export const WIDEST_DRAW = 2;
 
 /** Speed a bubble is taken to enter the skim band with, and e-foldings of its gas on the way through. */
 const SKIM_SPEED_m_s = 0.5;
@@ -34,10 +33,10 @@ export function stepsOf({ record, ...sized }: Pick<Case, 'channel' | 'grid' | 'r
   return { sampleEvery, settle: whole(record.settle_s), span: Math.max(sampleEvery, whole(record.span_s)) };
 }
 
-/** Diameter of the largest bubble that is let in: two standard deviations above the mean, two cells clear of either wall. */
+/** Diameter of the largest bubble that is let in: two standard deviations above the mean of its kind, two cells clear of either wall. */
 export function largestBubble_m({ channel, gas, grid }: Sized): number {
-  const fits = channel.gap_m - (4 * channel.gap_m) / grid.across;
-  return Math.min(gas.bubble.diameter_m * (1 + WIDEST_DRAW * gas.bubble.spread), fits);
+  const largest_m = Math.max(...gas.bubble.kinds.map(({ diameter_m, spread }) => diameter_m * (1 + WIDEST_DRAW * spread)));
+  return Math.min(largest_m, fitting_m({ channel, grid }));
 }
 
 /**

@@ -18,13 +18,16 @@ export interface Case {
   /** at membranes and fins, measured in the liquid */
   contactAngle_rad: number;
   gas: {
-    /** per membrane area: m3/(m2 s) */
+    /** per membrane area: m3/(m2 s); while the air is on */
     supply_m_s: number;
+    /** air on and off in turn, from the start; always on without it */
+    pulse?: { on_s: number; off_s: number };
     /** membrane height this air serves */
     serves_m: number;
-    bubble: { diameter_m: number /** relative standard deviation */; spread: number };
-    /** centre of release across the gap, or drawn evenly */
-    across: { at_m: number } | 'even';
+    /** mean diameter of all bubbles let in, and the kinds there are */
+    bubble: { diameter_m: number; kinds: BubbleKind[] };
+    /** centres of release across the gap, drawn from evenly; anywhere across it; or as near to a wall as may be */
+    across: { at_m: number[] } | 'even' | WallSide;
     /** bubbles that are there at the start, [across, along] */
     start: { across_m: number; along_m: number; diameter_m: number }[];
     seed: number;
@@ -43,6 +46,16 @@ export interface Case {
   };
   record: { settle_s: number; span_s: number; every_s: number };
   swept: { above_Pa: number; within_s: number };
+}
+
+/** Bubbles with normally distributed diameters. */
+export interface BubbleKind {
+  /** mean */
+  diameter_m: number;
+  /** standard deviation over the mean */
+  spread: number;
+  /** of the number of bubbles let in; all kinds together 1 */
+  share: number;
 }
 
 export type WallSide = 'left' | 'right';

@@ -4,7 +4,7 @@ import type { Case } from './case.ts';
 import type { PlacedFinding } from './faults.ts';
 import { finFindings } from './fincheck.ts';
 import type { PlacedFin } from './fins.ts';
-import { distanceTo } from './polygon.ts';
+import { gasFindings, startFindings } from './gascheck.ts';
 import type { CaseEntries } from './schema.ts';
 import { mm } from './units.ts';
 
@@ -57,30 +57,6 @@ function recordFindings({ record, swept }: Case): PlacedFinding[] {
   return found;
 }
 
-function gasFindings(entries: CaseEntries, panel: Case): PlacedFinding[] {
-  const { gas, channel, liquid } = panel;
-  const found: PlacedFinding[] = [];
-  if (gas.softened && (gas.density_kg_m3 < gas.airDensity_kg_m3 || gas.density_kg_m3 >= liquid.density_kg_m3)) {
-    const air = Number(gas.airDensity_kg_m3.toPrecision(4));
-    found.push({ path: ['gas', 'softened', 'density'], problem: 'is lighter than air', allowed: `${air} kg/m3 to 200 kg/m3` });
-  }
-  if (gas.supply_m_s === 0) return found;
-  const clear_m = 2 * gridOf(panel).dx_m;
-  const fits_m = channel.gap_m - 2 * clear_m;
-  if (gas.bubble.diameter_m > fits_m) {
-    const remedy =
-      'A bubble is let in as a circle and needs two cells of liquid beside it; larger ones form in the channel where bubbles merge';
-    found.push({ path: ['gas', 'bubble', 'diameter'], problem: 'does not fit into the gap', allowed: `at most ${mm(fits_m)}`, remedy });
-  } else if (gas.across !== 'even' && typeof entries.gas.across === 'number') {
-    const nearest_m = gas.bubble.diameter_m / 2 + clear_m;
-    if (gas.across.at_m < nearest_m - 1e-12 || gas.across.at_m > channel.gap_m - nearest_m + 1e-12) {
-      const allowed = `${mm(nearest_m)} to ${mm(channel.gap_m - nearest_m)}`;
-      found.push({ path: ['gas', 'across'], problem: 'puts a bubble of the mean diameter into a wall', allowed });
-    }
-  }
-  return found;
-}
-
 function sizeFindings(panel: Case): PlacedFinding[] {
   const { nx, ny, dx_m, dt_s } = gridOf(panel);
   const { span, sampleEvery } = stepsOf(panel);
@@ -128,36 +104,4 @@ function bandFindings(panel: Case): PlacedFinding[] {
       remedy: 'Make the channel higher, the bubbles smaller or grid.speed larger',
     },
   ];
-}
-
-function startFindings(panel: Case): PlacedFinding[] {
-  const { gas, channel, fins } = panel;
-  const { skim } = bandsOf(panel);
-  const clear_m = 2 * gridOf(panel).dx_m;
-  return gas.start.flatMap((bubble, i): PlacedFinding[] => {
-    const path = ['gas', 'start', i];
-    const reach_m = bubble.diameter_m / 2 + clear_m;
-    if (2 * reach_m > channel.gap_m + 1e-12) {
-      return [{ path: [...path, 'diameter'], problem: 'does not fit into the gap', allowed: `at most ${mm(channel.gap_m - 2 * clear_m)}` }];
-    }
-    if (bubble.across_m < reach_m - 1e-12 || bubble.across_m > channel.gap_m - reach_m + 1e-12) {
-      return [
-        { path: [...path, 'across'], problem: 'puts the bubble into a wall', allowed: `${mm(reach_m)} to ${mm(channel.gap_m - reach_m)}` },
-      ];
-    }
-    if (bubble.along_m < reach_m || bubble.along_m > skim.from_m - reach_m) {
-      const allowed = `${mm(reach_m)} to ${mm(skim.from_m - reach_m)}`;
-      return [
-        { path: [...path, 'along'], problem: 'puts the bubble outside the channel or into the band where gas is taken out', allowed },
-      ];
-    }
-    const fin = fins.findIndex((outline) => distanceTo(outline, bubble.across_m, bubble.along_m) < bubble.diameter_m / 2);
-    if (fin >= 0) return [{ path, problem: `lies on fin ${fin + 1}`, remedy: 'Move the bubble or make it smaller' }];
-    const other = gas.start.findIndex((b, j) => j < i && apart(b, bubble) < (b.diameter_m + bubble.diameter_m) / 2);
-    return other < 0 ? [] : [{ path, problem: `overlaps the bubble of entry ${other + 1}`, remedy: 'Move one of them' }];
-  });
-}
-
-function apart(a: { across_m: number; along_m: number }, b: { across_m: number; along_m: number }): number {
-  return Math.hypot(a.across_m - b.across_m, a.along_m - b.along_m);
 }

@@ -72,11 +72,11 @@ function within(issue: Issue, path: Path): Issue {
   return { ...issue, path: [...path, ...issue.path] } as Issue;
 }
 
-/** The alternative with the fewest keys that do not belong to it is the one that was meant. */
+/** The alternative with the fewest keys that do not belong to it is the one that was meant; one of another shape altogether is not. */
 function likelyBranch(branches: readonly Issue[][], value: unknown): Issue[] {
   if (typeof value !== 'object' || value === null) return branches[0] as Issue[];
-  const strangers = (issues: Issue[]) =>
-    issues.reduce((sum, issue) => sum + (issue.code === 'unrecognized_keys' && issue.path.length === 0 ? issue.keys.length : 0), 0);
+  const strange = (issue: Issue): number => (issue.code === 'unrecognized_keys' ? issue.keys.length : 1000);
+  const strangers = (issues: Issue[]) => issues.reduce((sum, issue) => sum + (issue.path.length === 0 ? strange(issue) : 0), 0);
   return [...branches].sort((a, b) => strangers(a) - strangers(b))[0] as Issue[];
 }
 

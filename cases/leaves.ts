@@ -125,3 +125,8 @@ export function wordOrLength<T extends string>(words: readonly T[], range: Range
   const schema = leaf(read, { type: 'string', description: `${range.says}; ${allowed}`, examples: words }, allowed);
   return range.default === undefined ? schema : schema.prefault(range.default);
 }
+
+/** A part of the table that may be left out: `written` is read in its place. The cast: zod counts keys with a default as required here. */
+export function leftOut<T extends z.ZodType>(part: T, written: unknown = {}) {
+  return part.prefault(written as z.input<T> & z.core.util.NoUndefined<z.input<T>>);
+}

@@ -4,7 +4,8 @@ import type { Case, Outline } from './case.ts';
 import { contradictions } from './checks.ts';
 import { findings, placed } from './faults.ts';
 import { groupOutlines, type PlacedFin } from './fins.ts';
-import { airDensity_kg_m3, airViscosity_Pa_s, waterDensity_kg_m3, waterSurfaceTension_N_m, waterViscosity_Pa_s } from './fluids.ts';
+import { waterDensity_kg_m3, waterSurfaceTension_N_m, waterViscosity_Pa_s } from './fluids.ts';
+import { gasOf } from './gas.ts';
 import { type CaseEntries, caseTable } from './schema.ts';
 import { parseTree, plain } from './text.ts';
 
@@ -34,9 +35,8 @@ function finsOf({ fins, channel }: CaseEntries): PlacedFin[] {
 }
 
 function resolve(entries: CaseEntries, fins: readonly PlacedFin[]): Case {
-  const { title, channel, gas, grid, record, swept } = entries;
+  const { title, channel, grid, record, swept } = entries;
   const { loss, upflow } = channel.return;
-  const { temperature: temperature_K } = entries.liquid;
   return {
     title,
     channel: {
@@ -49,18 +49,7 @@ function resolve(entries: CaseEntries, fins: readonly PlacedFin[]): Case {
     fins: fins.map(({ outline }) => outline),
     ...liquidOf(entries),
     contactAngle_rad: channel.wetting,
-    gas: {
-      supply_m_s: gas.supply,
-      serves_m: gas.serves ?? channel.height,
-      bubble: { diameter_m: gas.bubble.diameter, spread: gas.bubble.spread },
-      across: gas.across === 'even' ? 'even' : { at_m: gas.across === 'middle' ? channel.gap / 2 : gas.across },
-      start: gas.start.map(({ across, along, diameter }) => ({ across_m: across, along_m: along, diameter_m: diameter })),
-      seed: gas.seed,
-      density_kg_m3: gas.softened?.density ?? airDensity_kg_m3(temperature_K),
-      viscosity_Pa_s: gas.softened?.viscosity ?? airViscosity_Pa_s(temperature_K),
-      airDensity_kg_m3: airDensity_kg_m3(temperature_K),
-      softened: gas.softened !== undefined,
-    },
+    gas: gasOf(entries),
     grid: { across: grid.across, speed_m_s: grid.speed },
     record: { settle_s: record.settle, span_s: record.span, every_s: record.every },
     swept: { above_Pa: swept.above, within_s: swept.within ?? Math.min(1, record.span) },

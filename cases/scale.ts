@@ -3,6 +3,9 @@ import type { Setup } from '../solver/index.ts';
 import { bandsOf, gridOf, skimRates, stepsOf } from './bands.ts';
 import type { Case } from './case.ts';
 import { solidCells } from './fins.ts';
+import { fitting_m } from './gas.ts';
+import { meanArea_m2 } from './mixture.ts';
+import { onShare } from './pulse.ts';
 
 /** Sizes and numbers that follow from a case; all the conversion factors there are. */
 export interface Derived {
@@ -16,12 +19,15 @@ export interface Derived {
   tauLiquid: number;
   tauGas: number;
   densityRatio: number;
-  /** of the release diameter and the expected rise speed */
+  /** of the mean diameter of the bubbles let in and the expected rise speed */
   Re: number;
   Eo: number;
   Mo: number;
+  /** means over the times with air and without: air per membrane area (m3/(m2 s)), bubbles let in, superficial gas velocity */
+  meanSupply_m_s: number;
   bubblesPerSecond: number;
   gasVelocity_m_s: number;
+  /** cells across a bubble of the mean diameter, of the smallest kind */
   cellsPerBubble: number;
   /** SI value of one lattice unit */
   unit: { velocity_m_s: number; stress_Pa: number; area_m2: number };
@@ -103,7 +109,9 @@ function derive(panel: Case): Derived {
   const tau = (eta_Pa_s: number, density_kg_m3: number): number => 0.5 + (3 * (eta_Pa_s / density_kg_m3) * dt_s) / dx_m ** 2;
   const diameter_m = gas.bubble.diameter_m;
   const difference_kg_m3 = liquid.density_kg_m3 - gas.airDensity_kg_m3;
-  const gasVelocity_m_s = (gas.supply_m_s * channel.membranes.length * gas.serves_m) / channel.gap_m;
+  const meanSupply_m_s = gas.supply_m_s * onShare(gas);
+  const gasVelocity_m_s = (meanSupply_m_s * channel.membranes.length * gas.serves_m) / channel.gap_m;
+  const area_m2 = gas.bubble.kinds.reduce((sum, kind) => sum + kind.share * meanArea_m2(kind, fitting_m(panel)), 0);
   return {
     nx,
     ny,
@@ -117,9 +125,10 @@ function derive(panel: Case): Derived {
     Re: (liquid.density_kg_m3 * riseSpeed_m_s(panel) * diameter_m) / liquid.viscosity_Pa_s,
     Eo: (difference_kg_m3 * GRAVITY_m_s2 * diameter_m ** 2) / surfaceTension_N_m,
     Mo: (GRAVITY_m_s2 * liquid.viscosity_Pa_s ** 4 * difference_kg_m3) / (liquid.density_kg_m3 ** 2 * surfaceTension_N_m ** 3),
-    bubblesPerSecond: (gasVelocity_m_s * channel.gap_m) / ((Math.PI * diameter_m ** 2) / 4),
+    meanSupply_m_s,
+    bubblesPerSecond: (gasVelocity_m_s * channel.gap_m) / area_m2,
     gasVelocity_m_s,
-    cellsPerBubble: diameter_m / dx_m,
+    cellsPerBubble: Math.min(...gas.bubble.kinds.map((kind) => kind.diameter_m)) / dx_m,
     unit: { velocity_m_s: dx_m / dt_s, stress_Pa: liquid.density_kg_m3 * (dx_m / dt_s) ** 2, area_m2: dx_m ** 2 },
     ...bandsOf(panel),
   };

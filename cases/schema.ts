@@ -4,12 +4,8 @@
  * not of what is sensible to build.
  */
 import { z } from 'zod';
-import { choice, flag, line, plainNumber, quantity, wordOrLength } from './leaves.ts';
-
-/** A part of the table that may be left out: `written` is read in its place. The cast: zod counts keys with a default as required here. */
-function leftOut<T extends z.ZodType>(part: T, written: unknown = {}) {
-  return part.prefault(written as z.input<T> & z.core.util.NoUndefined<z.input<T>>);
-}
+import { gasKeys } from './gaskeys.ts';
+import { choice, flag, leftOut, line, plainNumber, quantity } from './leaves.ts';
 
 const membranes = z
   .array(choice(['left', 'right'], 'a wall that carries a membrane'))
@@ -84,53 +80,6 @@ const custom = z.strictObject({
   temperature: quantity('temperature', { unit: 'degC', least: 1, most: 60, default: '20 degC', says: 'of the air' }),
 });
 
-const gas = z.strictObject({
-  supply: quantity('supply', { unit: 'm3/(m2 h)', least: 0, most: 20, says: 'air per membrane area and time; 0 for none' }),
-  serves: quantity('length', {
-    unit: 'mm',
-    least: 10,
-    most: 10000,
-    says: "membrane height this air serves; the channel's by default",
-  }).optional(),
-  bubble: leftOut(
-    z.strictObject({
-      diameter: quantity('length', { unit: 'mm', least: 0.5, most: 90, default: '5 mm', says: 'mean diameter of the bubbles let in' }),
-      spread: quantity('share', {
-        unit: '%',
-        least: 0,
-        most: 40,
-        default: '15 %',
-        says: 'standard deviation of the diameter over its mean',
-      }),
-    }),
-  ),
-  across: wordOrLength(['middle', 'even'], {
-    unit: 'mm',
-    least: 0,
-    most: 100,
-    default: 'middle',
-    says: 'where in the gap bubbles are let in',
-  }),
-  start: z
-    .array(
-      z.strictObject({
-        across: quantity('length', { unit: 'mm', least: 0, most: 100, says: 'centre, from the left wall' }),
-        along: quantity('length', { unit: 'mm', least: 0, most: 3000, says: 'centre, from the bottom' }),
-        diameter: quantity('length', { unit: 'mm', least: 0.5, most: 90, says: 'of the bubble' }),
-      }),
-    )
-    .prefault([])
-    .meta({ description: 'bubbles that are there at the start' }),
-  seed: plainNumber({ least: 0, most: 4294967295, whole: true, default: '1', says: 'of the random releases' }),
-  softened: z
-    .strictObject({
-      density: quantity('density', { unit: 'kg/m3', least: 1, most: 200, says: 'of the gas as computed; buoyancy keeps that of air' }),
-      viscosity: quantity('viscosity', { unit: 'mPa s', least: 0.01, most: 10, says: 'dynamic viscosity of the gas as computed' }),
-    })
-    .optional()
-    .meta({ description: 'a gas heavier and thicker than air, where true air is more than the method carries' }),
-});
-
 const grid = z.strictObject({
   across: plainNumber({ least: 12, most: 400, whole: true, default: '40', says: 'cells across the gap' }),
   speed: quantity('speed', {
@@ -168,7 +117,7 @@ export const caseTable = z
       .prefault([])
       .meta({ description: 'groups of straight fins, and free outlines' }),
     liquid: leftOut(z.discriminatedUnion('kind', [water, custom]), { kind: 'water' }),
-    gas,
+    gas: gasKeys,
     grid: leftOut(grid),
     record: leftOut(record),
     swept: leftOut(swept),

@@ -36,6 +36,10 @@ function forecastOf(panel: Case, derived: Derived, { updatesPerSecond, memory_by
   return { cells, steps: derived.steps, updates, updatesPerSecond, wallTime_s: updates / updatesPerSecond, memory_bytes: memory };
 }
 
+function pulseText({ pulse }: Case['gas']): string {
+  return pulse === undefined ? '' : `; air on ${plain(pulse.on_s)} s and off ${plain(pulse.off_s)} s in turn, which these are means over`;
+}
+
 function page(panel: Case, derived: Derived, forecast: Forecast, bites: string[]): string {
   const { channel, record, gas } = panel;
   const mm = (length_m: number): string => `${plain(1000 * length_m)} mm`;
@@ -47,7 +51,7 @@ function page(panel: Case, derived: Derived, forecast: Forecast, bites: string[]
     ],
     [
       'bubbles',
-      `${mm(gas.bubble.diameter_m)}, ${plain(derived.bubblesPerSecond)} per second, gas velocity ${plain(1000 * derived.gasVelocity_m_s)} mm/s`,
+      `${gas.bubble.kinds.map((kind) => mm(kind.diameter_m)).join(' and ')}, ${plain(derived.bubblesPerSecond)} per second, gas velocity ${plain(1000 * derived.gasVelocity_m_s)} mm/s${pulseText(gas)}`,
     ],
     ['numbers', `Re ${plain(derived.Re)}, Eo ${plain(derived.Eo)}, Mo ${plain(derived.Mo)}`],
     [

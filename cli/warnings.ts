@@ -17,9 +17,14 @@ const FEW_BUBBLES = 20;
 
 /** What bites in a case: each warning names the value, the limit and what to change. Empty for a sound case. */
 export function warnings(panel: Case, derived: Derived): string[] {
-  return [stalled(panel), coarse(panel, derived), softened(panel, derived), shortRecord(panel), fewBubbles(panel, derived)].filter(
-    (text) => text !== undefined,
-  );
+  return [
+    stalled(panel),
+    coarse(panel, derived),
+    softened(panel, derived),
+    shortRecord(panel),
+    brokenPulse(panel),
+    fewBubbles(panel, derived),
+  ].filter((text) => text !== undefined);
 }
 
 function stalled({ channel, liquid, gas, surfaceTension_N_m }: Case): string | undefined {
@@ -36,7 +41,7 @@ function coarse({ grid, gas }: Case, { cellsPerBubble }: Derived): string | unde
   if (cellsPerBubble >= LEAST_CELLS) return undefined;
   const across = Math.ceil((grid.across * LEAST_CELLS) / cellsPerBubble);
   return (
-    `a bubble of ${plain(1000 * gas.bubble.diameter_m)} mm has ${plain(cellsPerBubble)} cells, fewer than ${LEAST_CELLS}: its shape and rise are ` +
+    `a bubble of ${plain(1000 * Math.min(...gas.bubble.kinds.map((kind) => kind.diameter_m)))} mm has ${plain(cellsPerBubble)} cells, fewer than ${LEAST_CELLS}: its shape and rise are ` +
     `not resolved and small parts dissolve. Set grid.across to ${across} or more`
   );
 }
@@ -54,6 +59,20 @@ function shortRecord({ record, swept }: Case): string | undefined {
   return (
     `record.span ${plain(record.span_s)} s holds fewer than two separate windows of swept.within ${plain(swept.within_s)} s: ` +
     'the swept fraction rests on one. Record longer, or ask for a shorter time'
+  );
+}
+
+/** Part of a period, relative, by which a recording may miss whole ones. */
+const PERIOD_MISS = 0.01;
+
+function brokenPulse({ record, gas }: Case): string | undefined {
+  if (gas.pulse === undefined || gas.supply_m_s === 0) return undefined;
+  const period_s = gas.pulse.on_s + gas.pulse.off_s;
+  const periods = record.span_s / period_s;
+  if (Math.round(periods) > 0 && Math.abs(periods - Math.round(periods)) <= PERIOD_MISS) return undefined;
+  return (
+    `record.span ${plain(record.span_s)} s is no whole number of periods of gas.pulse (${plain(period_s)} s): times with and without air do not ` +
+    `count in the means as they come. Set record.span to ${plain(period_s * Math.max(1, Math.round(periods)))} s`
   );
 }
 

@@ -3,6 +3,7 @@ import { type Case, layOut, readCase } from '../../cases/index.ts';
 import { next, nextNormal, seeded } from '../../cases/random.ts';
 import { Supply } from '../../cases/release.ts';
 import { createReference, type Simulation } from '../../solver/index.ts';
+import { schedule } from './schedule.ts';
 
 const text = `
 channel: {gap: 8 mm, height: 80 mm, membranes: [right]}
@@ -10,34 +11,6 @@ gas: {supply: 0.4 m3/(m2 h), serves: 1 m, bubble: {diameter: 4 mm, spread: 20 %}
 grid: {across: 20}
 `;
 const read = (...sets: string[]): Case => readCase(text, 'release.yaml', sets);
-
-/** Runs the supply alone: the box is a real one, but no time passes in it, and `taken` says how many tries find gas in their place. */
-function schedule(panel: Case, until_s: number): { times_s: number[]; areas_m2: number[]; places_m: number[]; due_m2: number } {
-  const { derived } = layOut(panel);
-  const supply = new Supply(panel, derived);
-  const clock = { step: 0 };
-  const areas: number[] = [];
-  const box = {
-    setup: { nx: derived.nx, ny: derived.ny },
-    phi: { get: () => 1 },
-    get step() {
-      return clock.step;
-    },
-    placeGas({ radius }: { radius: number }) {
-      areas.push(Math.PI * radius ** 2 * derived.unit.area_m2);
-      return Math.PI * radius ** 2;
-    },
-  } as unknown as Simulation;
-  const times_s: number[] = [];
-  const places_m: number[] = [];
-  while (supply.step * derived.dt_s < until_s) {
-    clock.step = supply.step;
-    times_s.push(clock.step * derived.dt_s);
-    places_m.push(supply.state.across_m);
-    supply.release(box);
-  }
-  return { times_s, areas_m2: areas, places_m, due_m2: derived.gasVelocity_m_s * panel.channel.gap_m * until_s };
-}
 
 describe('the supply', () => {
   it('lets in as much gas as is due, to within one bubble, after any time', () => {

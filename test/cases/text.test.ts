@@ -20,7 +20,7 @@ describe('a case text', () => {
     expect(panel.channel.return).toEqual({ loss: 1.5 });
     expect(panel.contactAngle_rad).toBeCloseTo(Math.PI / 3, 12);
     expect(panel.gas.serves_m).toBeCloseTo(0.1, 12);
-    expect(panel.gas.across).toEqual({ at_m: 0.004 });
+    expect(panel.gas.across).toEqual({ at_m: [0.004] });
     expect(panel.gas.softened).toBe(false);
     expect(panel.gas.density_kg_m3).toBeCloseTo(1.2041, 4);
     expect(panel.gas.viscosity_Pa_s * 1e6).toBeCloseTo(18.13, 2);
@@ -49,7 +49,7 @@ describe('a case text', () => {
     expect(panel.channel.tilt_rad).toBeCloseTo((25 * Math.PI) / 180, 12);
     expect(panel.channel.membranes).toEqual(['right']);
     expect(panel.grid.across).toBe(20);
-    expect(panel.gas.bubble).toEqual({ diameter_m: 0.004, spread: 0.15 });
+    expect(panel.gas.bubble).toEqual({ diameter_m: 0.004, kinds: [{ diameter_m: 0.004, spread: 0.15, share: 1 }] });
     const fin = '{from: 40 mm, across: 2 mm, length: 4 mm, thickness: 1 mm}';
     expect(readCase(`${base}fins: [${fin}]\n`, 'panel.yaml', ['fins.0.from=50 mm']).fins[0]?.[0]?.[1]).toBeCloseTo(0.048, 9);
   });

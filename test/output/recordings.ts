@@ -55,7 +55,7 @@ export function makeRecording(making: Making = {}): Recording {
     gas: {
       supply_m_s: 1e-4,
       serves_m: 1,
-      bubble: { diameter_m: 5e-3, spread: 0.15 },
+      bubble: { diameter_m: 5e-3, kinds: [{ diameter_m: 5e-3, spread: 0.15, share: 1 }] },
       across: 'even',
       start: [],
       seed: 7,
@@ -81,6 +81,7 @@ export function makeRecording(making: Making = {}): Recording {
     Re: 1000,
     Eo: 3.4,
     Mo: 2.6e-11,
+    meanSupply_m_s: 1e-4,
     bubblesPerSecond: 5,
     gasVelocity_m_s: 0.014,
     cellsPerBubble: 25,
