@@ -139,9 +139,12 @@ function alternatives(schema: EditorSchema): EditorSchema[] {
   return schema.anyOf ?? schema.oneOf ?? [schema];
 }
 
+/** Keys that only one of several kinds of fin has. */
+const MARKS = ['outline', 'path'];
+
 function chosen(schema: EditorSchema, around: unknown): boolean {
   if (typeof around !== 'object' || around === null) return false;
   const kind = schema.properties?.kind?.const;
   if (kind !== undefined) return (around as { kind?: unknown }).kind === kind;
-  return 'outline' in around ? schema.properties?.outline !== undefined : schema.properties?.outline === undefined;
+  return MARKS.every((mark) => mark in around === (schema.properties?.[mark] !== undefined));
 }

@@ -1,14 +1,16 @@
 /**
  * Which fins can be computed. A fin may reach past a wall: it is then attached to it, and what lies beyond is cut off.
- * Refused are fins outside the gap, in the bands at the ends, thinner than two cells, crossing themselves or one another,
- * and any arrangement that leaves no way through of three cells.
+ * Refused are fins outside the gap, in the bands at the ends, thinner than two cells, bent too tightly, crossing themselves or
+ * one another, and any arrangement that leaves no way through of three cells.
  */
 import { bandsOf, gridOf } from './bands.ts';
-import type { Case } from './case.ts';
+import type { Case, Outline } from './case.ts';
 import type { PlacedFinding } from './faults.ts';
-import { cellsWithin, type PlacedFin, passable, solidCells } from './fins.ts';
-import { crossesItself, extent, overlap, signedArea } from './polygon.ts';
+import type { FinEntry } from './finkeys.ts';
+import { cellsWithin, type PlacedFin, solidCells, wayUp } from './fins.ts';
+import { band, commonPoint, crossesItself, extent, leastPiece, pieceLength, signedArea, turnAt } from './polygon.ts';
 import type { CaseEntries } from './schema.ts';
+import type { Path } from './text.ts';
 import { mm } from './units.ts';
 
 /** Slack on places, m. */
@@ -16,6 +18,9 @@ const ROUND_OFF_m = 1e-9;
 
 /** Thinnest fin the grid carries, cells. */
 const THINNEST = 2;
+
+/** Largest turn of a middle line at one corner: beyond it a mitre is longer than the fin is thick. */
+const SHARPEST_rad = Math.PI / 2;
 
 export function finFindings(entries: CaseEntries, panel: Case, fins: readonly PlacedFin[]): PlacedFinding[] {
   const written = entries.fins.flatMap((_, entry) => entryFindings(entries, panel, entry));
@@ -25,8 +30,11 @@ export function finFindings(entries: CaseEntries, panel: Case, fins: readonly Pl
   const crossed = crossings(fins);
   if (crossed.length > 0) return firstPerEntry(crossed);
   const { nx, ny, dx_m } = gridOf(panel);
-  if (fins.length === 0 || passable(solidCells(panel.fins, nx, ny, dx_m), nx, ny)) return [];
-  return [{ path: ['fins'], problem: 'leave no way through the channel that is three cells wide', remedy: 'Move or shorten fins' }];
+  if (fins.length === 0) return [];
+  const highest = wayUp(solidCells(panel.fins, nx, ny, dx_m), nx, ny);
+  if (highest === nx - 1) return [];
+  const problem = `leave no way three cells wide past ${mm((highest + 1) * dx_m)} along`;
+  return [{ path: ['fins'], problem, remedy: 'Move or shorten fins' }];
 }
 
 /** A group of twenty fins with one mistake in it is one fault. */
@@ -34,35 +42,68 @@ function firstPerEntry(found: readonly PlacedFinding[]): PlacedFinding[] {
   return found.filter((one, i) => found.findIndex((other) => other.path[1] === one.path[1]) === i);
 }
 
-function entryFindings(entries: CaseEntries, panel: Case, entry: number): PlacedFinding[] {
-  const fin = entries.fins[entry] as CaseEntries['fins'][number];
+function entryFindings({ fins }: CaseEntries, panel: Case, entry: number): PlacedFinding[] {
+  const fin = fins[entry] as FinEntry;
   const path = ['fins', entry];
-  if ('outline' in fin) {
-    const corners = fin.outline as [number, number][];
-    const at = [...path, 'outline'];
-    if (corners.length < 3) return [{ path: at, problem: `has ${corners.length} corners`, allowed: 'at least 3 corners' }];
-    if (crossesItself(corners))
-      return [{ path: at, problem: 'crosses itself', remedy: 'List the corners in the order in which they are joined' }];
-    if (Math.abs(signedArea(corners)) < 1e-12)
-      return [{ path: at, problem: 'encloses no area', remedy: 'Take corners that do not lie on one line' }];
-    return [];
-  }
+  const found = [
+    ...groupFindings(path, fin),
+    ...('outline' in fin ? outlineFindings(path, fin.outline as Outline) : thinFindings(path, fin, panel)),
+  ];
+  return 'path' in fin ? [...found, ...pathFindings(path, fin.path as Outline, fin.thickness)] : found;
+}
+
+function groupFindings(path: Path, fin: FinEntry): PlacedFinding[] {
+  const found: PlacedFinding[] = [];
   if (fin.count > 1 && fin.pitch === undefined)
-    return [{ path: [...path, 'pitch'], problem: 'is missing', allowed: 'a length, needed for more than one fin' }];
-  const { dx_m } = gridOf(panel);
-  if (fin.thickness < THINNEST * dx_m * (1 - 1e-9)) {
-    const cells = Math.ceil((THINNEST * panel.channel.gap_m) / fin.thickness);
-    const remedy = `Make the fin thicker, or take grid.across: ${cells}`;
-    return [
-      {
-        path: [...path, 'thickness'],
-        problem: 'is thinner than two cells',
-        allowed: `at least ${mm(THINNEST * dx_m)} on this grid`,
-        remedy,
-      },
-    ];
+    found.push({ path: [...path, 'pitch'], problem: 'is missing', allowed: 'a length, needed for more than one fin' });
+  if (fin.alternate && fin.mirrored) {
+    const remedy = 'mirrored puts a fin on both sides each time, alternate on one side in turn';
+    found.push({ path: [...path, 'mirrored'], problem: 'stands beside alternate', allowed: 'one of the two', remedy });
   }
+  return found;
+}
+
+function outlineFindings(path: Path, corners: Outline): PlacedFinding[] {
+  const at = [...path, 'outline'];
+  if (corners.length < 3) return [{ path: at, problem: `has ${corners.length} corners`, allowed: 'at least 3 corners' }];
+  if (crossesItself(corners))
+    return [{ path: at, problem: 'crosses itself', remedy: 'List the corners in the order in which they are joined' }];
+  if (Math.abs(signedArea(corners)) < 1e-12)
+    return [{ path: at, problem: 'encloses no area', remedy: 'Take corners that do not lie on one line' }];
   return [];
+}
+
+function thinFindings(path: Path, { thickness }: { thickness: number }, panel: Case): PlacedFinding[] {
+  const { dx_m } = gridOf(panel);
+  if (thickness >= THINNEST * dx_m * (1 - 1e-9)) return [];
+  const cells = Math.ceil((THINNEST * panel.channel.gap_m) / thickness);
+  const remedy = `Make the fin thicker, or take grid.across: ${cells}`;
+  const allowed = `at least ${mm(THINNEST * dx_m)} on this grid`;
+  return [{ path: [...path, 'thickness'], problem: 'is thinner than two cells', allowed, remedy }];
+}
+
+/** Middle lines around which no band of the thickness can be drawn. */
+function pathFindings(path: Path, line: Outline, thickness: number): PlacedFinding[] {
+  const at = [...path, 'path'];
+  if (line.length < 2) return [{ path: at, problem: 'has fewer than two corners', allowed: 'at least 2 corners' }];
+  for (let i = 0; i < line.length - 1; i++) {
+    if (pieceLength(line, i) < ROUND_OFF_m)
+      return [{ path: [...at, i + 1], problem: 'is the same corner as the one before', remedy: 'Leave it out' }];
+  }
+  const sharp = line.findIndex((_, i) => Math.abs(turnAt(line, i)) > SHARPEST_rad + 1e-9);
+  if (sharp > 0) {
+    const problem = `is a corner at which the fin turns by ${Math.round(Math.abs(turnAt(line, sharp)) * (180 / Math.PI))} deg`;
+    return [{ path: [...at, sharp], problem, allowed: 'at most 90 deg', remedy: 'Take more corners, or draw an outline' }];
+  }
+  for (let i = 0; i < line.length - 1; i++) {
+    const least_m = leastPiece(line, i, thickness);
+    if (pieceLength(line, i) <= least_m) {
+      const problem = `is ${mm(pieceLength(line, i))} from the corner before, too near for bends of this thickness`;
+      return [{ path: [...at, i + 1], problem, allowed: `more than ${mm(least_m)}`, remedy: 'Make the fin thinner or bend it less' }];
+    }
+  }
+  if (!crossesItself(band(line, thickness))) return [];
+  return [{ path: at, problem: 'makes a fin that crosses itself', remedy: 'Make it thinner, or bend it less' }];
 }
 
 function shapeFindings(panel: Case, { outline, entry }: PlacedFin, index: number, fins: readonly PlacedFin[]): PlacedFinding[] {
@@ -107,16 +148,13 @@ function nameOf(fins: readonly PlacedFin[], index: number): string {
 
 function crossings(fins: readonly PlacedFin[]): PlacedFinding[] {
   return fins.flatMap((fin, i): PlacedFinding[] => {
-    const other = fins.findIndex((candidate, j) => j < i && overlap(candidate.outline, fin.outline));
-    if (other < 0) return [];
-    const { entry } = fins[other] as PlacedFin;
-    const whose = entry === fin.entry ? 'the same group' : `entry ${entry + 1}`;
-    return [
-      {
-        path: ['fins', fin.entry],
-        problem: `${nameOf(fins, i)} overlaps a fin of ${whose}`,
-        remedy: 'Move one of them, or draw both as one outline',
-      },
-    ];
+    for (const other of fins.slice(0, i)) {
+      const point = commonPoint(other.outline, fin.outline);
+      if (point === undefined) continue;
+      const whose = other.entry === fin.entry ? 'the same group' : `entry ${other.entry + 1}`;
+      const problem = `${nameOf(fins, i)} overlaps a fin of ${whose} at ${mm(point[0])} across, ${mm(point[1])} along`;
+      return [{ path: ['fins', fin.entry], problem, remedy: 'Move one of them, or draw both as one outline' }];
+    }
+    return [];
   });
 }

@@ -1,7 +1,7 @@
 /** Fins: groups resolved to outlines, and outlines to the cells they fill. */
 import type { Outline } from './case.ts';
-import { extent, inside } from './polygon.ts';
-import type { FinGroup } from './schema.ts';
+import type { FinEntry } from './finkeys.ts';
+import { band, extent, inside } from './polygon.ts';
 
 /** A fin and the entry of the case file it comes from. */
 export interface PlacedFin {
@@ -10,15 +10,28 @@ export interface PlacedFin {
 }
 
 /**
- * The straight fins of a group, lowest first: rectangles `length` by `thickness` whose long side leans from the channel
- * axis by `angle` (positive: upper end to the right). With `alternate`, the second, fourth, ... are mirrored across the middle of the gap.
+ * The fins of an entry, lowest first. The first one is a rectangle `length` by `thickness` whose long side leans from the channel axis by
+ * `angle` (positive: upper end to the right), a band around a middle line, or an outline as written; the others stand one `pitch`
+ * above another. With `alternate`, the second, fourth, ... are mirrored across the middle of the gap; with `mirrored`, the mirror
+ * image of each follows it.
  */
-export function groupOutlines(group: FinGroup, gap_m: number): Outline[] {
-  return Array.from({ length: group.count }, (_, i) => {
-    const along = group.from + i * (group.pitch ?? 0);
-    const mirrored = group.alternate && i % 2 === 1;
-    return bar(mirrored ? gap_m - group.across : group.across, along, group.length, group.thickness, mirrored ? -group.angle : group.angle);
-  });
+export function finOutlines(fin: FinEntry, gap_m: number): Outline[] {
+  return Array.from({ length: fin.count }, (_, i) => {
+    const outline = raised(fin, i * (fin.pitch ?? 0));
+    const image = outline.map(([across, along]): [number, number] => [gap_m - across, along]).reverse();
+    if (fin.mirrored) return [outline, image];
+    return [fin.alternate && i % 2 === 1 ? image : outline];
+  }).flat();
+}
+
+function raised(fin: FinEntry, by: number): Outline {
+  if ('path' in fin) return band(raisedCorners(fin.path as Outline, by), fin.thickness);
+  if ('outline' in fin) return raisedCorners(fin.outline as Outline, by);
+  return bar(fin.across, fin.from + by, fin.length, fin.thickness, fin.angle);
+}
+
+function raisedCorners(corners: Outline, by: number): Outline {
+  return corners.map(([across, along]) => [across, along + by]);
 }
 
 function bar(across: number, along: number, length: number, thickness: number, angle: number): Outline {
@@ -61,10 +74,14 @@ export function cellsWithin(fin: Outline, nx: number, ny: number, dx_m: number):
   return cells;
 }
 
-/** Whether a way three cells wide leads from the bottom to the top: one whose middle cell has no solid and no wall beside it. */
-export function passable(solid: Uint8Array, nx: number, ny: number): boolean {
+/**
+ * How far a way three cells wide leads up from the bottom, one whose middle cell has no solid and no wall beside it: the highest x it
+ * reaches, nx - 1 where it leads through the channel.
+ */
+export function wayUp(solid: Uint8Array, nx: number, ny: number): number {
   const seen = crowded(solid, nx, ny);
   const open: number[] = [];
+  let highest = 0;
   const visit = (i: number): void => {
     if (seen[i] === 1) return;
     seen[i] = 1;
@@ -73,13 +90,14 @@ export function passable(solid: Uint8Array, nx: number, ny: number): boolean {
   for (let y = 0; y < ny; y++) visit(y * nx);
   for (let i = open.pop(); i !== undefined; i = open.pop()) {
     const x = i % nx;
-    if (x === nx - 1) return true;
+    highest = Math.max(highest, x);
+    if (x === nx - 1) return x;
     visit(i + 1);
     if (x > 0) visit(i - 1);
     if (i >= nx) visit(i - nx);
     if (i < nx * (ny - 1)) visit(i + nx);
   }
-  return false;
+  return highest;
 }
 
 /** 1 in solids, in the rows along the walls, and in cells with a solid beside them. */

@@ -48,15 +48,68 @@ export function crossesItself(outline: Outline): boolean {
   return false;
 }
 
-/** Whether two outlines share any point. */
-export function overlap(a: Outline, b: Outline): boolean {
+/** A point that two outlines share, if there is one: where edges meet, else a corner of the one that lies within the other. */
+export function commonPoint(a: Outline, b: Outline): Point | undefined {
   const ea = extent(a);
   const eb = extent(b);
-  if (ea.along[1] < eb.along[0] || eb.along[1] < ea.along[0] || ea.across[1] < eb.across[0] || eb.across[1] < ea.across[0]) return false;
+  if (ea.along[1] < eb.along[0] || eb.along[1] < ea.along[0] || ea.across[1] < eb.across[0] || eb.across[1] < ea.across[0])
+    return undefined;
   for (let i = 0; i < a.length; i++) {
-    for (let j = 0; j < b.length; j++) if (segmentsMeet(corner(a, i), corner(a, i + 1), corner(b, j), corner(b, j + 1))) return true;
+    for (let j = 0; j < b.length; j++) {
+      const [from, to, other, end] = [corner(a, i), corner(a, i + 1), corner(b, j), corner(b, j + 1)];
+      if (segmentsMeet(from, to, other, end)) return meetingPoint(from, to, other, end);
+    }
   }
-  return inside(a, ...corner(b, 0)) || inside(b, ...corner(a, 0));
+  if (inside(a, ...corner(b, 0))) return corner(b, 0);
+  return inside(b, ...corner(a, 0)) ? corner(a, 0) : undefined;
+}
+
+/** Where the segment a-b, which meets c-d, does so; an end of it where both lie on one line. */
+function meetingPoint(a: Point, b: Point, c: Point, d: Point): Point {
+  const [cda, cdb] = [turn(c, d, a), turn(c, d, b)];
+  const share = cda === cdb ? 0 : cda / (cda - cdb);
+  return [a[0] + share * (b[0] - a[0]), a[1] + share * (b[1] - a[1])];
+}
+
+/**
+ * Outline of a line with a thickness: mitred where it turns, cut off straight at both ends. A piece of the line that is shorter than
+ * {@link leastPiece} makes an outline that runs backwards there.
+ * @param path at least two corners, no two neighbours alike, none that turns back on itself
+ */
+export function band(path: Outline, thickness: number): Outline {
+  const offsets = path.map((_, i): Point => {
+    const before = direction(path, Math.max(0, i - 1));
+    const after = direction(path, Math.min(path.length - 2, i));
+    const scale = thickness / 2 / (1 + before[0] * after[0] + before[1] * after[1]);
+    return [-scale * (before[1] + after[1]), scale * (before[0] + after[0])];
+  });
+  const side = (sign: number): Outline =>
+    path.map(([x, y], i) => [x + sign * (offsets[i] as Point)[0], y + sign * (offsets[i] as Point)[1]]);
+  return [...side(-1), ...side(1).reverse()];
+}
+
+/** Angle by which a line turns at corner i, 0 at its ends; positive from across towards along. */
+export function turnAt(path: Outline, i: number): number {
+  if (i === 0 || i === path.length - 1) return 0;
+  const [before, after] = [direction(path, i - 1), direction(path, i)];
+  return Math.atan2(before[0] * after[1] - before[1] * after[0], before[0] * after[0] + before[1] * after[1]);
+}
+
+/** What the mitres at both ends of piece i take from its length on one side or the other. */
+export function leastPiece(path: Outline, i: number, thickness: number): number {
+  return (thickness / 2) * Math.abs(Math.tan(turnAt(path, i) / 2) + Math.tan(turnAt(path, i + 1) / 2));
+}
+
+/** Length of piece i of a line. */
+export function pieceLength(path: Outline, i: number): number {
+  const [[ax, ay], [bx, by]] = [corner(path, i), corner(path, i + 1)];
+  return Math.hypot(bx - ax, by - ay);
+}
+
+/** Unit vector along piece i of a line. */
+function direction(path: Outline, i: number): Point {
+  const [[ax, ay], [bx, by], length] = [corner(path, i), corner(path, i + 1), pieceLength(path, i)];
+  return [(bx - ax) / length, (by - ay) / length];
 }
 
 /** Distance of a point from the outline's area; 0 inside. */

@@ -1,9 +1,9 @@
 /** Case text to Case: parse, hold against the table of keys, fill in what follows from fluids, check part against part. */
 import { CaseError } from '../solver/index.ts';
-import type { Case, Outline } from './case.ts';
+import type { Case } from './case.ts';
 import { contradictions } from './checks.ts';
 import { findings, placed } from './faults.ts';
-import { groupOutlines, type PlacedFin } from './fins.ts';
+import { finOutlines, type PlacedFin } from './fins.ts';
 import { waterDensity_kg_m3, waterSurfaceTension_N_m, waterViscosity_Pa_s } from './fluids.ts';
 import { gasOf } from './gas.ts';
 import { type CaseEntries, caseTable } from './schema.ts';
@@ -28,10 +28,7 @@ export function readCase(text: string, file: string, sets: readonly string[] = [
 }
 
 function finsOf({ fins, channel }: CaseEntries): PlacedFin[] {
-  return fins.flatMap((fin, entry) => {
-    const outlines = 'outline' in fin ? [fin.outline as Outline] : groupOutlines(fin, channel.gap);
-    return outlines.map((outline) => ({ outline, entry }));
-  });
+  return fins.flatMap((fin, entry) => finOutlines(fin, channel.gap).map((outline) => ({ outline, entry })));
 }
 
 function resolve(entries: CaseEntries, fins: readonly PlacedFin[]): Case {

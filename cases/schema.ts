@@ -4,8 +4,9 @@
  * not of what is sensible to build.
  */
 import { z } from 'zod';
+import { finKeys } from './finkeys.ts';
 import { gasKeys } from './gaskeys.ts';
-import { choice, flag, leftOut, line, plainNumber, quantity } from './leaves.ts';
+import { choice, leftOut, line, plainNumber, quantity } from './leaves.ts';
 
 const membranes = z
   .array(choice(['left', 'right'], 'a wall that carries a membrane'))
@@ -37,34 +38,6 @@ const channel = z.strictObject({
     })
     .prefault({ loss: '1.5' })
     .meta({ description: 'how the liquid comes back to the bottom: a loss coefficient or a given upflow' }),
-});
-
-const finGroup = z.strictObject({
-  from: quantity('length', { unit: 'mm', least: 0, most: 3000, says: 'height of the centre of the lowest fin' }),
-  pitch: quantity('length', { unit: 'mm', least: 0.1, most: 3000, says: 'distance from one fin to the next along the channel' }).optional(),
-  count: plainNumber({ least: 1, most: 500, whole: true, default: '1', says: 'number of fins in the group' }),
-  across: quantity('length', { unit: 'mm', least: -50, most: 150, says: "distance of the fin's centre from the left wall" }),
-  length: quantity('length', { unit: 'mm', least: 0.1, most: 500, says: 'long side of the fin' }),
-  thickness: quantity('length', { unit: 'mm', least: 0.1, most: 100, says: 'short side of the fin' }),
-  angle: quantity('angle', {
-    unit: 'deg',
-    least: -90,
-    most: 90,
-    default: '0 deg',
-    says: 'lean of the long side from the channel axis; positive turns the upper end to the right',
-  }),
-  alternate: flag('mirrors every other fin across the middle of the gap', 'false'),
-});
-
-const finOutline = z.strictObject({
-  outline: z
-    .array(
-      z.tuple([
-        quantity('length', { unit: 'mm', least: -50, most: 150, says: 'across, from the left wall' }),
-        quantity('length', { unit: 'mm', least: 0, most: 3000, says: 'along, from the bottom' }),
-      ]),
-    )
-    .meta({ description: 'corners [across, along] of a closed polygon, at least three', minItems: 3 }),
 });
 
 const water = z.strictObject({
@@ -112,10 +85,7 @@ export const caseTable = z
   .strictObject({
     title: line(200, 'one line for people', 'Untitled panel'),
     channel,
-    fins: z
-      .array(z.union([finGroup, finOutline]))
-      .prefault([])
-      .meta({ description: 'groups of straight fins, and free outlines' }),
+    fins: finKeys,
     liquid: leftOut(z.discriminatedUnion('kind', [water, custom]), { kind: 'water' }),
     gas: gasKeys,
     grid: leftOut(grid),
@@ -126,7 +96,6 @@ export const caseTable = z
 
 /** What the table hands over: SI values, not yet checked against one another. */
 export type CaseEntries = z.output<typeof caseTable>;
-export type FinGroup = z.output<typeof finGroup>;
 
 /** JSON Schema (2020-12) of a case file, for completion and checks in editors. */
 export function caseSchema(): object {

@@ -1,6 +1,6 @@
 import { describe, expect, it } from 'vitest';
 import { type Case, layOut, readCase } from '../../cases/index.ts';
-import { crossesItself, distanceTo, inside, overlap, signedArea } from '../../cases/polygon.ts';
+import { band, commonPoint, crossesItself, distanceTo, inside, signedArea } from '../../cases/polygon.ts';
 
 const base = 'channel: {gap: 8 mm, height: 100 mm}\ngas: {supply: 0.4 m3/(m2 h)}\n';
 const withFins = (fins: string): Case => readCase(`${base}fins:\n  - ${fins}\n`, 'fins.yaml');
@@ -71,6 +71,62 @@ describe('a fin of a group', () => {
   });
 });
 
+describe('a curved fin', () => {
+  const arc = Array.from({ length: 9 }, (_, i): [number, number] => [5 * Math.cos((i * Math.PI) / 16), 5 * Math.sin((i * Math.PI) / 16)]);
+  const lengthOf = (path: [number, number][]): number =>
+    path.slice(1).reduce((sum, [x, y], i) => sum + Math.hypot(x - (path[i]?.[0] ?? 0), y - (path[i]?.[1] ?? 0)), 0);
+
+  it('has the area of its middle line times its thickness, and all that is nearer to the line than half of it', () => {
+    for (const path of [
+      arc,
+      [...arc].reverse(),
+      [
+        [0, 0],
+        [3, 0],
+        [3, 4],
+        [6, 4],
+        [8, 3],
+      ] as [number, number][],
+    ]) {
+      const fin = band(path, 0.8);
+      expect(fin).toHaveLength(2 * path.length);
+      // mitres give to one side what they take from the other [V]
+      expect(signedArea(fin)).toBeCloseTo(0.8 * lengthOf(path), 12);
+      expect(crossesItself(fin)).toBe(false);
+    }
+    for (let i = 0; i < 100; i++) {
+      const [radius, angle] = [4.55 + 0.009 * i, 0.05 + (i % 7) * 0.24];
+      const edge = 5 * (1 - Math.cos(Math.PI / 32)); // how far the chords lie within the arc: 0.024
+      const away = Math.abs(radius - 5);
+      if (away < 0.4 - edge) expect(inside(band(arc, 0.8), radius * Math.cos(angle), radius * Math.sin(angle))).toBe(true);
+      if (away > 0.4 + edge) expect(inside(band(arc, 0.8), radius * Math.cos(angle), radius * Math.sin(angle))).toBe(false);
+    }
+  });
+
+  it('is the straight fin when its line is straight', () => {
+    const [curved] = withFins('{path: [[2 mm, 38 mm], [3 mm, 40 mm], [4 mm, 42 mm]], thickness: 0.8 mm}').fins;
+    const length = Math.hypot(2, 4);
+    const angle = Math.atan2(2, 4) * (180 / Math.PI);
+    const [straight] = withFins(`{from: 40 mm, across: 3 mm, length: ${length} mm, thickness: 0.8 mm, angle: ${angle} deg}`).fins;
+    for (const [across, along] of straight ?? []) {
+      expect(Math.min(...(curved ?? []).map(([a, b]) => Math.hypot(a - across, b - along)))).toBeLessThan(1e-12);
+    }
+  });
+
+  it('comes back at every pitch, on one side in turn or on both', () => {
+    const line = 'path: [[1 mm, 30 mm], [2 mm, 32 mm], [2.5 mm, 35 mm]], thickness: 0.8 mm, pitch: 15 mm, count: 3';
+    const leastAcross = (panel: Case): boolean[] => panel.fins.map((fin) => Math.max(...fin.map(([across]) => across)) < 0.004);
+    expect(leastAcross(withFins(`{${line}}`))).toEqual([true, true, true]);
+    expect(leastAcross(withFins(`{${line}, alternate: true}`))).toEqual([true, false, true]);
+    const both = withFins(`{${line}, mirrored: true}`);
+    expect(leastAcross(both)).toEqual([true, false, true, false, true, false]);
+    expect(both.fins[3]?.toReversed().map(([across, along]) => [0.008 - across, along - 0.015].map((v) => v.toFixed(9)))).toEqual(
+      both.fins[0]?.map((corner) => corner.map((v) => v.toFixed(9))),
+    );
+    for (const fin of both.fins) expect(signedArea(fin) * signedArea(both.fins[0] ?? [])).toBeGreaterThan(0);
+  });
+});
+
 describe('an outline', () => {
   it('is taken as written', () => {
     const { fins } = withFins('{outline: [[1 mm, 30 mm], [3 mm, 34 mm], [1 mm, 34 mm]]}');
@@ -78,6 +134,15 @@ describe('an outline', () => {
       [1000, 30000],
       [3000, 34000],
       [1000, 34000],
+    ]);
+  });
+
+  it('comes back at every pitch as well', () => {
+    const { fins } = withFins('{outline: [[1 mm, 30 mm], [3 mm, 34 mm], [1 mm, 34 mm]], pitch: 10 mm, count: 2, mirrored: true}');
+    expect(fins.map((fin) => fin.map(([across, along]) => [Math.round(across * 1e6), Math.round(along * 1e6)]))[3]).toEqual([
+      [7000, 44000],
+      [5000, 44000],
+      [7000, 40000],
     ]);
   });
 
@@ -91,11 +156,11 @@ describe('an outline', () => {
 
   it('overlaps another when edges cross or one lies within the other', () => {
     const moved = (a: number, b: number, size = 1) => square.map(([x, y]) => [size * x + a, size * y + b] as [number, number]);
-    expect(overlap(square, moved(1, 1))).toBe(true);
-    expect(overlap(square, moved(0.5, 0.5, 0.2))).toBe(true);
-    expect(overlap(moved(0.5, 0.5, 0.2), square)).toBe(true);
-    expect(overlap(square, moved(3, 0))).toBe(false);
-    expect(overlap(square, moved(0, 2.1))).toBe(false);
+    expect(commonPoint(square, moved(1.5, 1))).toEqual([2, 1]);
+    expect(commonPoint(square, moved(0.5, 0.5, 0.2))).toEqual([0.5, 0.5]);
+    expect(commonPoint(moved(0.5, 0.5, 0.2), square)).toEqual([0.5, 0.5]);
+    expect(commonPoint(square, moved(3, 0))).toBeUndefined();
+    expect(commonPoint(square, moved(0, 2.1))).toBeUndefined();
   });
 
   it('crosses itself when its corners are listed out of order', () => {
