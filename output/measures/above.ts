@@ -12,5 +12,6 @@ export const shareAbove: WallMeasure = {
       overElements(walls, samplesOf(walls), (sums, { magnitude_Pa }) => {
         for (let i = 0; i < sums.length; i++) if (magnitude_Pa[i] > above_Pa) sums[i]++;
       }),
+      SHARE,
     ),
 };

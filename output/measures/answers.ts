@@ -3,7 +3,7 @@ import { shareAbove } from './above.ts';
 import { ANY, type Estimate, type Range, SHARE } from './estimate.ts';
 import { events } from './events.ts';
 import type { Felt } from './felt.ts';
-import { halfWidth } from './interval.ts';
+import { meanInterval } from './interval.ts';
 import { holdup, upflow } from './loop.ts';
 import { meanShear, steadyShear } from './mean.ts';
 import { percentiles } from './percentiles.ts';
@@ -73,12 +73,10 @@ export function rangeOf(name: string): Range {
 
 /** All answers of a recording, in the order of {@link HEADLINES}. */
 export function answersOf(recording: Recording, places: Places): Answer[] {
-  return HEADLINES.map(({ name, range, estimate }) => answer(name, range, estimate(recording, places)));
+  return HEADLINES.map(({ name, estimate }) => ({ name, ...sure(estimate(recording, places)) }));
 }
 
-function answer(name: string, range: Range, { value, series, shifted }: Estimate): Answer {
-  const half = value === null ? null : halfWidth(series);
-  if (half === null) return { name, value, low: null, high: null };
-  const within = (end: number): number => Math.min(range.most, Math.max(range.least, end));
-  return { name, value, low: within(shifted(-half)), high: within(shifted(half)) };
+function sure({ value, series, range, at }: Estimate): Omit<Answer, 'name'> {
+  const ends = value === null ? undefined : meanInterval(series, range);
+  return ends === undefined ? { value, low: null, high: null } : { value, low: at(ends[0]), high: at(ends[1]) };
 }

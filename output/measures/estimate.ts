@@ -1,14 +1,16 @@
 /**
- * A measure as what its interval needs: a value that is a monotone function of the mean of a series in time. To first order the value errs
- * by what that mean errs, whatever the function, so one treatment of the series (interval.ts) serves every measure.
+ * A measure as what its interval needs: a value that is a monotone function of the mean of a series in time. The ends of that mean's interval
+ * (interval.ts) lead to the ends of the value's, so one treatment serves every measure.
  */
 export interface Estimate {
   /** null: not to be had from this recording */
   value: number | null;
   /** one entry per sample (window, entry of the history), evenly spaced; empty where there is no value */
   series: Float64Array;
-  /** the value, were the mean of the series larger by `shift` */
-  shifted(shift: number): number;
+  /** values that the mean of the series can have */
+  range: Range;
+  /** the value for another mean of the series */
+  at(mean: number): number;
 }
 
 /** Values a measure can have. */
@@ -21,13 +23,11 @@ export const SHARE: Range = { least: 0, most: 1 };
 export const SIZE: Range = { least: 0, most: Number.POSITIVE_INFINITY };
 export const ANY: Range = { least: Number.NEGATIVE_INFINITY, most: Number.POSITIVE_INFINITY };
 
-export const NO_ESTIMATE: Estimate = { value: null, series: new Float64Array(0), shifted: () => Number.NaN };
+export const NO_ESTIMATE: Estimate = { value: null, series: new Float64Array(0), range: ANY, at: () => Number.NaN };
 
 /** An estimate by the plain mean of a series; none where it is empty. */
-export function byMean(series: Float64Array): Estimate {
-  if (series.length === 0) return NO_ESTIMATE;
-  const value = meanOf(series);
-  return { value, series, shifted: (shift) => value + shift };
+export function byMean(series: Float64Array, range: Range): Estimate {
+  return series.length === 0 ? NO_ESTIMATE : { value: meanOf(series), series, range, at: (mean) => mean };
 }
 
 export function meanOf(series: ArrayLike<number>): number {

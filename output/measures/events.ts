@@ -16,6 +16,7 @@ export const events: WallMeasure = {
       overElements(walls, samplesOf(walls) - 1, (sums, { magnitude_Pa }) => {
         for (let i = 0; i < sums.length; i++) if (magnitude_Pa[i + 1] > above_Pa && magnitude_Pa[i] <= above_Pa) sums[i] += 1 / every_s;
       }),
+      SIZE,
     );
   },
 };

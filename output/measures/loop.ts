@@ -1,5 +1,5 @@
 import type { History, Recording } from '../../cases/index.ts';
-import { byMean, type Estimate } from './estimate.ts';
+import { ANY, byMean, type Estimate, SHARE } from './estimate.ts';
 
 /** How gas and liquid went round, from the history; null where it holds nothing after the settling time. */
 export interface LoopMeasures {
@@ -37,12 +37,12 @@ export function loopMeasures(recording: Recording): LoopMeasures {
 
 /** Mean after settling of the share of the channel's free area that is gas, bands and fins' surroundings included. */
 export function holdup(recording: Recording): Estimate {
-  return byMean(Float64Array.from(recording.history.holdup.slice(firstSettled(recording))));
+  return byMean(Float64Array.from(recording.history.holdup.slice(firstSettled(recording))), SHARE);
 }
 
 /** Mean after settling of the superficial velocity of the loop, m/s, upward; of liquid and gas together. */
 export function upflow(recording: Recording): Estimate {
-  return byMean(Float64Array.from(recording.history.upflow_m_s.slice(firstSettled(recording))));
+  return byMean(Float64Array.from(recording.history.upflow_m_s.slice(firstSettled(recording))), ANY);
 }
 
 /** Entries of the history before the settling time is over. */

@@ -12,6 +12,7 @@ export const meanShear: WallMeasure = {
       overElements(walls, samplesOf(walls), (sums, { magnitude_Pa }) => {
         for (let i = 0; i < sums.length; i++) sums[i] += magnitude_Pa[i];
       }),
+      SIZE,
     ),
 };
 
@@ -25,5 +26,6 @@ export const steadyShear: WallMeasure = {
       overElements(walls, samplesOf(walls), (sums, { shear_Pa }) => {
         for (let i = 0; i < sums.length; i++) sums[i] += shear_Pa[i];
       }),
+      ANY,
     ),
 };

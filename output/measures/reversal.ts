@@ -1,4 +1,4 @@
-import { meanOf, NO_ESTIMATE, SHARE } from './estimate.ts';
+import { byMean, meanOf, NO_ESTIMATE, SHARE } from './estimate.ts';
 import { overElements, samplesOf } from './felt.ts';
 import type { WallMeasure } from './wallmeasure.ts';
 
@@ -7,8 +7,8 @@ import type { WallMeasure } from './wallmeasure.ts';
  * sign, 1 where each is pulled back and forth alike; none in still water. A short recording holds too few passages for the means of single
  * elements to settle and shows too little reversal; the interval does not know of that.
  *
- * Its interval is that of the linearised ratio, whose series is A/B (b(t)/B - a(t)/A), a(t) the sum of tau with the sign of its element's
- * mean, b(t) that of |tau|.
+ * Its interval is that of the linearised ratio, whose series is 1 - A/B + (A/B b(t) - a(t)) / B, a(t) the sum of tau with the sign of its
+ * element's mean, b(t) that of |tau|, both means over time being A and B.
  * @see Cochran 1977, Sampling Techniques, chapter 6 (ratio estimates) [M]
  */
 export const reversal: WallMeasure = {
@@ -28,8 +28,9 @@ export const reversal: WallMeasure = {
     const A = meanOf(steady);
     const B = meanOf(size);
     if (!(B > 0)) return NO_ESTIMATE;
-    const value = 1 - A / B;
-    const series = size.map((b, i) => ((A / B) * b - (steady[i] as number)) / B);
-    return { value, series, shifted: (shift) => value + shift };
+    return byMean(
+      size.map((b, i) => 1 - A / B + ((A / B) * b - steady[i]) / B),
+      SHARE,
+    );
   },
 };

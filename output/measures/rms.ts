@@ -12,7 +12,6 @@ export const rmsShear: WallMeasure = {
       for (let i = 0; i < sums.length; i++) sums[i] += shear_Pa[i] * shear_Pa[i];
     });
     if (series.length === 0) return NO_ESTIMATE;
-    const meanSquare = meanOf(series);
-    return { value: Math.sqrt(meanSquare), series, shifted: (shift) => Math.sqrt(Math.max(0, meanSquare + shift)) };
+    return { value: Math.sqrt(meanOf(series)), series, range: SIZE, at: Math.sqrt };
   },
 };

@@ -12,5 +12,6 @@ export const underGas: WallMeasure = {
       overElements(walls, samplesOf(walls), (sums, { gas }) => {
         for (let i = 0; i < sums.length; i++) sums[i] += gas[i];
       }),
+      SHARE,
     ),
 };

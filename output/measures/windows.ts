@@ -26,6 +26,7 @@ function hitInWindows(
         from = end;
       }
     }),
+    SHARE,
   );
 }
 
