@@ -36,24 +36,25 @@ function shown(value: unknown): string {
   return flat.length > 60 ? `${flat.slice(0, 57)}...` : flat;
 }
 
-/** All findings behind the table's issues. */
-export function findings(issues: readonly Issue[], entries: unknown): PlacedFinding[] {
-  return issues.flatMap((issue) => finding(issue, entries));
+/** All findings behind the issues of a table whose JSON Schema is `schema`. */
+export function findings(issues: readonly Issue[], entries: unknown, schema: () => object = caseSchema): PlacedFinding[] {
+  return issues.flatMap((issue) => finding(issue, entries, schema));
 }
 
-function finding(issue: Issue, entries: unknown): PlacedFinding[] {
+function finding(issue: Issue, entries: unknown, schema: () => object): PlacedFinding[] {
   const path = issue.path as Path;
   const value = valueAt(entries, path);
   switch (issue.code) {
     case 'custom':
       return [{ path, ...(issue.params as unknown as Finding) }];
     case 'unrecognized_keys':
-      return issue.keys.map((key) => unknownKey([...path, key], value));
+      return issue.keys.map((key) => unknownKey([...path, key], value, schema));
     case 'invalid_union':
-      if (issue.errors.length > 0) return likelyBranch(issue.errors, value).flatMap((inner) => finding(within(inner, path), entries));
+      if (issue.errors.length > 0)
+        return likelyBranch(issue.errors, value).flatMap((inner) => finding(within(inner, path), entries, schema));
       return [wrongKind(path, value, issue as unknown as { options?: string[] })];
     case 'invalid_type':
-      return [wrongType(path, value, issue.expected)];
+      return [wrongType(path, value, issue.expected, schema)];
     case 'too_small':
     case 'too_big':
       return [
@@ -80,11 +81,11 @@ function likelyBranch(branches: readonly Issue[][], value: unknown): Issue[] {
   return [...branches].sort((a, b) => strangers(a) - strangers(b))[0] as Issue[];
 }
 
-function wrongType(path: Path, value: unknown, expected: string): PlacedFinding {
+function wrongType(path: Path, value: unknown, expected: string, schema: () => object): PlacedFinding {
   const wanted = expected === 'object' ? 'keys with values' : expected === 'array' || expected === 'tuple' ? 'a list' : expected;
-  if (value === undefined || value === '') return { path, problem: 'is missing', allowed: keysText(path) ?? wanted };
+  if (value === undefined || value === '') return { path, problem: 'is missing', allowed: keysText(path, schema) ?? wanted };
   const is = Array.isArray(value) ? 'a list' : typeof value === 'object' ? 'keys with values' : 'a single value';
-  const keys = keysText(path);
+  const keys = keysText(path, schema);
   return { path, problem: `is ${is}, not ${wanted}`, ...(keys === undefined ? {} : { allowed: keys }) };
 }
 
@@ -98,9 +99,9 @@ function wrongKind(path: Path, value: unknown, issue: { options?: string[] }): P
   return { path, problem: 'is not one of the words allowed', allowed };
 }
 
-function unknownKey(path: Path, around: unknown): PlacedFinding {
+function unknownKey(path: Path, around: unknown, schema: () => object): PlacedFinding {
   const key = String(path.at(-1));
-  const known = keysAt(path.slice(0, -1), around);
+  const known = keysAt(path.slice(0, -1), around, schema);
   const near = known
     .map((name) => ({ name, away: distance(key.toLowerCase(), name) }))
     .sort((a, b) => a.away - b.away)
@@ -117,14 +118,14 @@ interface EditorSchema {
   const?: string;
 }
 
-function keysText(path: Path): string | undefined {
-  const keys = keysAt(path, undefined);
+function keysText(path: Path, schema: () => object): string | undefined {
+  const keys = keysAt(path, undefined, schema);
   return keys.length === 0 ? undefined : `the keys ${keys.join(', ')}`;
 }
 
 /** The keys the table knows at a path; of alternatives, the one `around` decides for, else all. */
-function keysAt(path: Path, around: unknown): string[] {
-  let schemas: EditorSchema[] = [caseSchema() as EditorSchema];
+function keysAt(path: Path, around: unknown, schema: () => object): string[] {
+  let schemas: EditorSchema[] = [schema() as EditorSchema];
   for (const part of path) {
     schemas = schemas
       .flatMap(alternatives)

@@ -1,5 +1,8 @@
 export type { Case, WallSide } from './case.ts';
 export { galleryNames, galleryText } from './gallery.ts';
+export { type Plan, type Point, pointCase, pointCells, pointSets } from './plan/plan.ts';
+export { readPlan } from './plan/read.ts';
+export { planSchema } from './plan/schema.ts';
 export { readCase } from './read.ts';
 export type { Checkpoint, History, Hooks, Progress, Recording, Snapshot } from './recording.ts';
 export { type Derived, layOut } from './scale.ts';

@@ -42,6 +42,19 @@ function rangeText(least: number, most: number, unit: string): string {
   return `${least}${tail} to ${most}${tail}`;
 }
 
+/** What the quantities of a table measure, by their schema. */
+const measured = z.registry<{ measure: Measure }>();
+
+/** What a value of this schema measures; undefined for words, lists and maps. Wrappers such as defaults are looked through. */
+export function measureOf(schema: z.ZodType): Measure | undefined {
+  return measured.get(unwrapped(schema))?.measure;
+}
+
+/** The schema below defaults and the mark of what may be left out. */
+export function unwrapped(schema: z.ZodType): z.ZodType {
+  return schema instanceof z.ZodPrefault || schema instanceof z.ZodOptional ? unwrapped(schema.unwrap() as z.ZodType) : schema;
+}
+
 /** A number with a unit, in SI once read. */
 export function quantity(measure: Measure, range: Range) {
   const allowed = rangeText(range.least, range.most, range.unit);
@@ -60,7 +73,7 @@ export function quantity(measure: Measure, range: Range) {
     pattern: MEASURES[measure].si === '' ? '^[+-]?[0-9.]+([eE][+-]?[0-9]+)?\\s*%?$' : '^[+-]?[0-9.]+([eE][+-]?[0-9]+)?\\s*[^0-9\\s].*$',
     examples: [MEASURES[measure].example],
   };
-  const schema = leaf(read, editor, allowed);
+  const schema = leaf(read, editor, allowed).register(measured, { measure });
   return range.default === undefined ? schema : schema.prefault(range.default);
 }
 
@@ -78,7 +91,8 @@ export function plainNumber(range: { least: number; most: number; whole?: boolea
     return { value };
   };
   const type = range.whole === true ? 'integer' : 'number';
-  const schema = leaf(read, { type, minimum: range.least, maximum: range.most, description: `${range.says}; ${allowed}` }, allowed);
+  const editor = { type, minimum: range.least, maximum: range.most, description: `${range.says}; ${allowed}` };
+  const schema = leaf(read, editor, allowed).register(measured, { measure: 'share' });
   return range.default === undefined ? schema : schema.prefault(range.default);
 }
 
@@ -122,7 +136,8 @@ export function wordOrLength<T extends string>(words: readonly T[], range: Range
       return { problem: 'is out of range' };
     return found;
   };
-  const schema = leaf(read, { type: 'string', description: `${range.says}; ${allowed}`, examples: words }, allowed);
+  const editor = { type: 'string', description: `${range.says}; ${allowed}`, examples: words };
+  const schema = leaf(read, editor, allowed).register(measured, { measure: 'length' });
   return range.default === undefined ? schema : schema.prefault(range.default);
 }
 

@@ -7,7 +7,7 @@ import { finOutlines, type PlacedFin } from './fins.ts';
 import { waterDensity_kg_m3, waterSurfaceTension_N_m, waterViscosity_Pa_s } from './fluids.ts';
 import { gasOf } from './gas.ts';
 import { type CaseEntries, caseTable } from './schema.ts';
-import { parseTree, plain } from './text.ts';
+import { type CaseTree, parseTree, plain } from './text.ts';
 
 /**
  * Reads the text of a case file.
@@ -17,7 +17,15 @@ import { parseTree, plain } from './text.ts';
  */
 export function readCase(text: string, file: string, sets: readonly string[] = []): Case {
   const tree = parseTree(text, file, sets);
-  const entries = plain(tree.document.contents);
+  return caseFrom(plain(tree.document.contents), tree);
+}
+
+/**
+ * The case that plain entries make.
+ * @param tree where messages say the entries stand
+ * @throws CaseError that carries every fault found
+ */
+export function caseFrom(entries: unknown, tree: CaseTree): Case {
   const read = caseTable.safeParse(entries);
   if (!read.success) throw new CaseError(findings(read.error.issues, entries).map((found) => placed(tree, entries, found)));
   const fins = finsOf(read.data);

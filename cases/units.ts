@@ -14,6 +14,10 @@ export interface Finding {
 }
 
 interface UnitValue {
+  /** in SI */
+  value: number;
+  /** powers of the base dimensions */
+  dimensions: number[];
   equalBase(other: UnitValue): boolean;
   toNumeric(unit: string): number;
 }
@@ -121,6 +125,42 @@ function convert(number: number, unit: string, measure: Measure): { value: numbe
   const value = quantity.toNumeric(si);
   if (!Number.isFinite(value)) return { problem: 'is not finite', remedy: `Write ${named} as in "${example}"` };
   return { value };
+}
+
+/** A number and the unit it was written with, '' for none; or what is wrong with it. */
+export function readAmount(text: string): { value: { number: number; unit: string } } | Finding {
+  const parts = NUMBER.exec(plainText(text));
+  const remedy = 'Write it as in "8 mm"';
+  if (parts === null) return { problem: 'is not a number with a unit', remedy };
+  const [, digits, unit] = parts as unknown as [string, string, string];
+  const number = Number(digits);
+  if (!Number.isFinite(number)) return { problem: 'is not finite', remedy };
+  if (/^,\d/.test(unit)) return { problem: 'has a decimal comma', remedy: `Write a point: "${text.replace(',', '.')}"` };
+  return { value: { number, unit } };
+}
+
+/** A number of one unit as number of another; undefined where the two do not measure the same, or one is unknown. */
+export function converted(number: number, from: string, to: string): number | undefined {
+  if (from === to) return number;
+  if (from === '' || to === '') return undefined;
+  const Unit = unitClass();
+  try {
+    const quantity = new Unit(number, from);
+    return quantity.equalBase(Unit.parse(to)) ? quantity.toNumeric(to) : undefined;
+  } catch {
+    return undefined;
+  }
+}
+
+/** SI value and dimensions of one of a unit, as in "mm" or "m3"; undefined for an unknown unit. Temperatures have an origin and are refused. */
+export function unitScale(unit: string): { value: number; dimensions: readonly number[] } | undefined {
+  try {
+    const one = new (unitClass())(1, unit);
+    const zero = new (unitClass())(0, unit);
+    return zero.value === 0 ? { value: one.value, dimensions: one.dimensions } : undefined;
+  } catch {
+    return undefined;
+  }
 }
 
 function capital(text: string): string {
