@@ -46,6 +46,17 @@ export interface Case {
   };
   record: { settle_s: number; span_s: number; every_s: number };
   swept: { above_Pa: number; within_s: number };
+  air: {
+    /** of the nozzles below the surface; losses as height of liquid */
+    depth_m: number;
+    losses_m: number;
+    /** of blower, drive and motor together, 0 to 1 */
+    efficiency: number;
+    /** of the air that the blower takes in */
+    inlet_K: number;
+    /** permeate per membrane area: m3/(m2 s) */
+    flux_m_s?: number;
+  };
 }
 
 /** Bubbles with normally distributed diameters. */

@@ -40,7 +40,7 @@ function finsOf({ fins, channel }: CaseEntries): PlacedFin[] {
 }
 
 function resolve(entries: CaseEntries, fins: readonly PlacedFin[]): Case {
-  const { title, channel, grid, record, swept } = entries;
+  const { title, channel, grid, record, swept, air } = entries;
   const { loss, upflow } = channel.return;
   return {
     title,
@@ -58,6 +58,13 @@ function resolve(entries: CaseEntries, fins: readonly PlacedFin[]): Case {
     grid: { across: grid.across, speed_m_s: grid.speed },
     record: { settle_s: record.settle, span_s: record.span, every_s: record.every },
     swept: { above_Pa: swept.above, within_s: swept.within ?? Math.min(1, record.span) },
+    air: {
+      depth_m: air.depth,
+      losses_m: air.losses,
+      efficiency: air.efficiency,
+      inlet_K: air.inlet,
+      ...(air.flux === undefined ? {} : { flux_m_s: air.flux }),
+    },
   };
 }
 

@@ -4,6 +4,7 @@
  * not of what is sensible to build.
  */
 import { z } from 'zod';
+import { airKeys } from './airkeys.ts';
 import { finKeys } from './finkeys.ts';
 import { gasKeys } from './gaskeys.ts';
 import { choice, leftOut, line, plainNumber, quantity } from './leaves.ts';
@@ -91,6 +92,7 @@ export const caseTable = z
     grid: leftOut(grid),
     record: leftOut(record),
     swept: leftOut(swept),
+    air: leftOut(airKeys),
   })
   .meta({ title: 'Swathe case' });
 

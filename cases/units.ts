@@ -33,6 +33,7 @@ export const MEASURES = {
   time: { si: 's', named: 'a time', example: '2 s' },
   speed: { si: 'm/s', named: 'a speed', example: '0.1 m/s' },
   supply: { si: 'm/s', named: 'a gas flow per membrane area', example: '0.4 m3/(m2 h)' },
+  flux: { si: 'm/s', named: 'a flow of permeate per membrane area', example: '25 L/(m2 h)' },
   stress: { si: 'Pa', named: 'a stress', example: '0.5 Pa' },
   temperature: { si: 'K', named: 'a temperature', example: '20 degC' },
   density: { si: 'kg/m^3', named: 'a density', example: '998 kg/m3' },

@@ -27,6 +27,7 @@ export function summary(recording: Recording, measures: Measures): string {
     walls: { left: wallSummary(left), right: wallSummary(right) },
     together: sweptSummary(measures.together),
     loop: measures.loop,
+    air: measures.air,
     derived: recording.derived,
     notes: measures.notes,
     leftOut: LEFT_OUT,

@@ -1,6 +1,7 @@
 import type { Recording, WallSide } from '../../cases/index.ts';
 import { shareAbove } from './above.ts';
-import { ANY, type Estimate, type Range, SHARE } from './estimate.ts';
+import { airEnergy, airPower, perPower } from './air.ts';
+import { ANY, type Estimate, type Range, SHARE, SIZE } from './estimate.ts';
 import { events } from './events.ts';
 import type { Felt } from './felt.ts';
 import { meanInterval } from './interval.ts';
@@ -62,6 +63,15 @@ const HEADLINES: readonly Headline[] = [
   ),
   { name: 'holdup', range: SHARE, estimate: holdup },
   { name: 'upflow_m_s', range: ANY, estimate: upflow },
+  { name: 'air_power_W_m2', range: SIZE, estimate: airPower },
+  { name: 'air_energy_J_m3', range: SIZE, estimate: airEnergy },
+  ...[sweptWithin, meanShear].flatMap(({ stem, unit, estimate }) =>
+    PLACES.map((place) => ({
+      name: [stem, 'per_power', place, unit, 'm2_W'].filter((part) => part !== '').join('_'),
+      range: SIZE,
+      estimate: (recording: Recording, places: Places) => perPower(estimate(places[place], recording.case.swept), recording),
+    })),
+  ),
 ];
 
 /** Values that an answer can have. */
@@ -76,7 +86,8 @@ export function answersOf(recording: Recording, places: Places): Answer[] {
   return HEADLINES.map(({ name, estimate }) => ({ name, ...sure(estimate(recording, places)) }));
 }
 
-function sure({ value, series, range, at }: Estimate): Omit<Answer, 'name'> {
+function sure({ value, series, range, at, exact }: Estimate): Omit<Answer, 'name'> {
+  if (exact) return { value, low: value, high: value };
   const ends = value === null ? undefined : meanInterval(series, range);
   return ends === undefined ? { value, low: null, high: null } : { value, low: at(ends[0]), high: at(ends[1]) };
 }

@@ -11,6 +11,8 @@ export interface Estimate {
   range: Range;
   /** the value for another mean of the series */
   at(mean: number): number;
+  /** known from the case alone: its interval is the value itself */
+  exact?: true;
 }
 
 /** Values a measure can have. */
@@ -28,6 +30,11 @@ export const NO_ESTIMATE: Estimate = { value: null, series: new Float64Array(0),
 /** An estimate by the plain mean of a series; none where it is empty. */
 export function byMean(series: Float64Array, range: Range): Estimate {
   return series.length === 0 ? NO_ESTIMATE : { value: meanOf(series), series, range, at: (mean) => mean };
+}
+
+/** What needs no recording. */
+export function exactly(value: number): Estimate {
+  return { ...NO_ESTIMATE, value, exact: true };
 }
 
 export function meanOf(series: ArrayLike<number>): number {

@@ -1,4 +1,5 @@
 import type { Recording, WallSide } from '../../cases/index.ts';
+import { type AirMeasures, airMeasures } from './air.ts';
 import { type Answer, answersOf, type Places } from './answers.ts';
 import { type ElementRow, elementRows } from './elements.ts';
 import { type Felt, felt } from './felt.ts';
@@ -22,6 +23,8 @@ export interface Measures {
   together: Swept;
   /** gas and liquid going round */
   loop: LoopMeasures;
+  /** what the air costs */
+  air: AirMeasures;
   /** one row per element, left wall first; bands included */
   elements: ElementRow[];
   /** what a reader must know about these numbers */
@@ -59,6 +62,7 @@ export function measure(recording: Recording): Measures {
     walls,
     together: sweptTogether(membranes.map((side) => walls[side].swept)),
     loop: loopMeasures(recording),
+    air: airMeasures(recording),
     elements: [...elementRows(recording, surfaces.left), ...elementRows(recording, surfaces.right)],
     notes: notes(recording, walls),
   };

@@ -11,6 +11,7 @@ export interface Making {
   softened?: boolean;
   swept?: { above_Pa: number; within_s: number };
   tilt_rad?: number;
+  air?: Partial<Case['air']>;
   across?: number;
   /** signed shear in Pa of wall, sample and element */
   shear?: (side: WallSide, sample: number, element: number) => number;
@@ -67,6 +68,7 @@ export function makeRecording(making: Making = {}): Recording {
     grid: { across, speed_m_s: 0.3 },
     record: { settle_s: 1, span_s: samples * every_s, every_s },
     swept: making.swept ?? { above_Pa: 0.5, within_s: 0.05 },
+    air: { depth_m: 2.5, losses_m: 1, efficiency: 0.6, inlet_K: 293.15, ...making.air },
   };
   const derived: Derived = {
     nx: elements,
