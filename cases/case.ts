@@ -57,6 +57,10 @@ export interface Case {
     /** permeate per membrane area: m3/(m2 s) */
     flux_m_s?: number;
   };
+  /** for back-transport: membrane along the flow, and particles at the wall over those in the bulk, by volume */
+  particles: { length_m: number; wallToBulk: number };
+  /** asked for where it is there; `clears_s`: time constant; `start`: covered share when the recording starts */
+  deposit?: { flux_m_s: number; solids_kg_m3: number; layer_kg_m2: number; above_Pa: number; clears_s: number; start: number };
 }
 
 /** Bubbles with normally distributed diameters. */

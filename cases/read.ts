@@ -9,6 +9,9 @@ import { gasOf } from './gas.ts';
 import { type CaseEntries, caseTable } from './schema.ts';
 import { type CaseTree, parseTree, plain } from './text.ts';
 
+/** Permeate flux of a deposit where the case tells none: 20 L/(m2 h), common practice. */
+const FLUX_m_s = 20 / 3.6e6;
+
 /**
  * Reads the text of a case file.
  * @param file name shown in messages
@@ -40,7 +43,7 @@ function finsOf({ fins, channel }: CaseEntries): PlacedFin[] {
 }
 
 function resolve(entries: CaseEntries, fins: readonly PlacedFin[]): Case {
-  const { title, channel, grid, record, swept, air } = entries;
+  const { title, channel, gas, grid, record, swept, air, particles } = entries;
   const { loss, upflow } = channel.return;
   return {
     title,
@@ -65,7 +68,15 @@ function resolve(entries: CaseEntries, fins: readonly PlacedFin[]): Case {
       inlet_K: air.inlet,
       ...(air.flux === undefined ? {} : { flux_m_s: air.flux }),
     },
+    particles: { length_m: particles.length ?? gas.serves ?? channel.height, wallToBulk: particles['wall to bulk'] },
+    ...depositOf(entries),
   };
+}
+
+function depositOf({ deposit, swept, air }: CaseEntries): Pick<Case, 'deposit'> {
+  if (deposit === undefined) return {};
+  const { flux = air.flux ?? FLUX_m_s, solids, layer, above = swept.above, clears, start } = deposit;
+  return { deposit: { flux_m_s: flux, solids_kg_m3: solids, layer_kg_m2: layer, above_Pa: above, clears_s: clears, start } };
 }
 
 function liquidOf({ liquid }: CaseEntries): Pick<Case, 'liquid' | 'surfaceTension_N_m'> {

@@ -4,6 +4,7 @@
  * not of what is sensible to build.
  */
 import { z } from 'zod';
+import { depositKeys, particleKeys } from './afterkeys.ts';
 import { airKeys } from './airkeys.ts';
 import { finKeys } from './finkeys.ts';
 import { gasKeys } from './gaskeys.ts';
@@ -93,6 +94,8 @@ export const caseTable = z
     record: leftOut(record),
     swept: leftOut(swept),
     air: leftOut(airKeys),
+    particles: particleKeys,
+    deposit: depositKeys,
   })
   .meta({ title: 'Swathe case' });
 

@@ -39,12 +39,33 @@ export const MEASURES = {
   density: { si: 'kg/m^3', named: 'a density', example: '998 kg/m3' },
   viscosity: { si: 'Pa s', named: 'a dynamic viscosity', example: '1 mPa s' },
   tension: { si: 'N/m', named: 'a surface tension', example: '72 mN/m' },
+  load: { si: 'kg/m^2', named: 'a mass per area', example: '5 g/m2' },
   share: { si: '', named: 'a share', example: '15 %' },
 } as const;
 
 export type Measure = keyof typeof MEASURES;
 
-const KNOWN_UNITS = ['mm', 'cm', 'm', 'um', 'deg', 'rad', 's', 'ms', 'min', 'h', 'Pa', 'mPa', 'degC', 'K', 'kg/m3', 'g/L', 'Pa s', 'mPa s']
+const KNOWN_UNITS = [
+  'mm',
+  'cm',
+  'm',
+  'um',
+  'deg',
+  'rad',
+  's',
+  'ms',
+  'min',
+  'h',
+  'Pa',
+  'mPa',
+  'degC',
+  'K',
+  'kg/m3',
+  'g/L',
+  'g/m2',
+  'Pa s',
+  'mPa s',
+]
   .concat(['mN/m', 'N/m', 'm/s', 'mm/s', 'cm/s', 'm3/(m2 h)', 'L/(m2 h)', '%'])
   .concat(['m3/m2/h', 'N/mm', 'kg/L', 'L', 'g', 'kg']);
 
@@ -108,6 +129,7 @@ export function readQuantity(text: string, measure: Measure): { value: number } 
     return { problem: `has the unit "${unit}", but ${named} is a plain number or per cent`, remedy };
   }
   if (unit === '') return { problem: 'has no unit', remedy };
+  if (unit === '%') return { problem: `is a share, not ${named}`, remedy };
   return convert(number, unit, measure);
 }
 

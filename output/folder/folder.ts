@@ -21,6 +21,8 @@ const RESULT_FILES = [
   'swept.csv',
   'history.csv',
   'bubbles.csv',
+  'backtransport.csv',
+  'deposit.csv',
   'shear-map-left.png',
   'shear-map-right.png',
   'histogram.png',

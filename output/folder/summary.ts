@@ -1,4 +1,6 @@
 import type { Recording } from '../../cases/index.ts';
+import type { DepositMeasures } from '../measures/deposit.ts';
+import { meanOf } from '../measures/estimate.ts';
 import type { Measures, WallMeasures } from '../measures/measures.ts';
 import type { Swept } from '../measures/swept.ts';
 
@@ -28,12 +30,29 @@ export function summary(recording: Recording, measures: Measures): string {
     together: sweptSummary(measures.together),
     loop: measures.loop,
     air: measures.air,
+    backTransport: backTransportSummary(recording, measures),
+    deposit: depositSummary(recording, measures),
     derived: recording.derived,
     notes: measures.notes,
     leftOut: LEFT_OUT,
     cautions: CAUTIONS,
   };
   return `${JSON.stringify(content, null, 2)}\n`;
+}
+
+function backTransportSummary({ case: { particles } }: Recording, { backTransport: { left, right, together } }: Measures): object {
+  const kind = 'estimate by the formulas of Belfort, Davis & Zydney 1994, mean over the recorded shear; least total over all radii';
+  return { kind, ...particles, worst: { left: left.worst, right: right.worst, together: together.worst } };
+}
+
+function depositSummary({ case: { deposit } }: Recording, { deposit: of }: Measures): object | null {
+  if (deposit === undefined) return null;
+  const ends = (covered: DepositMeasures | null): object => ({
+    atEnd: covered?.fromStart.at(-1) ?? null,
+    settled: covered === null || covered.settled.length === 0 ? null : meanOf(covered.settled),
+  });
+  const kind = 'first-order covering and clearing above a threshold; a model of ours with the figures of the case';
+  return { kind, ...deposit, left: ends(of.left), right: ends(of.right), together: ends(of.together) };
 }
 
 function wallSummary({ membrane, elements, shear, swept }: WallMeasures): object {

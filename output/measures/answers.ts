@@ -1,6 +1,8 @@
 import type { Recording, WallSide } from '../../cases/index.ts';
 import { shareAbove } from './above.ts';
 import { airEnergy, airPower, perPower } from './air.ts';
+import { worstFlux, worstRadius } from './backtransport.ts';
+import { settledCover } from './deposit.ts';
 import { ANY, type Estimate, type Range, SHARE, SIZE } from './estimate.ts';
 import { events } from './events.ts';
 import type { Felt } from './felt.ts';
@@ -25,12 +27,12 @@ export interface Answer {
 }
 
 /** A wall, or `together`: all membrane walls as one surface. */
-type Place = WallSide | 'together';
+export type Place = WallSide | 'together';
 
 /** The walls of each place, each wall made once. */
 export type Places = Record<Place, readonly Felt[]>;
 
-const PLACES: readonly Place[] = ['left', 'right', 'together'];
+export const PLACES: readonly Place[] = ['left', 'right', 'together'];
 
 /** Headline measures of walls, in the order of every list. */
 const WALL_MEASURES: readonly WallMeasure[] = [
@@ -72,7 +74,19 @@ const HEADLINES: readonly Headline[] = [
       estimate: (recording: Recording, places: Places) => perPower(estimate(places[place], recording.case.swept), recording),
     })),
   ),
+  ...ofPlaces('worst_backtransport', '_m_s', SIZE, worstFlux),
+  ...ofPlaces('worst_backtransport_radius', '_m', SIZE, worstRadius),
+  ...ofPlaces('settled_cover', '', SHARE, settledCover),
 ];
+
+/** A measure of walls that needs more of the case than a threshold. */
+function ofPlaces(stem: string, unit: string, range: Range, of: (recording: Recording, walls: readonly Felt[]) => Estimate): Headline[] {
+  return PLACES.map((place) => ({
+    name: `${stem}_${place}${unit}`,
+    range,
+    estimate: (recording, places) => of(recording, places[place]),
+  }));
+}
 
 /** Values that an answer can have. */
 export function rangeOf(name: string): Range {

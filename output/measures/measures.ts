@@ -1,6 +1,8 @@
 import type { Recording, WallSide } from '../../cases/index.ts';
 import { type AirMeasures, airMeasures } from './air.ts';
-import { type Answer, answersOf, type Places } from './answers.ts';
+import { type Answer, answersOf, type Place, type Places } from './answers.ts';
+import { type BackTransportMeasures, backTransport } from './backtransport.ts';
+import { type DepositMeasures, depositOn } from './deposit.ts';
 import { type ElementRow, elementRows } from './elements.ts';
 import { type Felt, felt } from './felt.ts';
 import { type Histogram, shearHistogram } from './histogram.ts';
@@ -25,6 +27,10 @@ export interface Measures {
   loop: LoopMeasures;
   /** what the air costs */
   air: AirMeasures;
+  /** an estimate, from the shear of each wall and of the membrane walls together */
+  backTransport: Record<Place, BackTransportMeasures>;
+  /** null where the case asks for none */
+  deposit: Record<Place, DepositMeasures | null>;
   /** one row per element, left wall first; bands included */
   elements: ElementRow[];
   /** what a reader must know about these numbers */
@@ -46,6 +52,11 @@ export function measure(recording: Recording): Measures {
   const asked = recording.case.swept;
   const surfaces = { left: layWall(recording, 'left'), right: layWall(recording, 'right') };
   const places = placesOf(recording, surfaces);
+  const each = <T>(of: (walls: readonly Felt[]) => T): Record<Place, T> => ({
+    left: of(places.left),
+    right: of(places.right),
+    together: of(places.together),
+  });
   const walls = { left: measureWall(recording, places.left[0]), right: measureWall(recording, places.right[0]) };
   const { membranes } = recording.case.channel;
   const times = recording.times_s;
@@ -63,6 +74,8 @@ export function measure(recording: Recording): Measures {
     together: sweptTogether(membranes.map((side) => walls[side].swept)),
     loop: loopMeasures(recording),
     air: airMeasures(recording),
+    backTransport: each((walls) => backTransport(walls, recording.case)),
+    deposit: each((walls) => depositOn(walls, recording.case)),
     elements: [...elementRows(recording, surfaces.left), ...elementRows(recording, surfaces.right)],
     notes: notes(recording, walls),
   };

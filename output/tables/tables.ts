@@ -1,20 +1,23 @@
 import type { Recording } from '../../cases/index.ts';
+import { PLACES } from '../measures/answers.ts';
 import type { Measures } from '../measures/measures.ts';
 import type { Swept } from '../measures/swept.ts';
 import { type Cell, csv } from './table.ts';
 
 /** Every table of a run folder by file name. Empty cells: not to be had (under a fin, recording too short). */
-export function tables(recording: Recording, measures: Measures): Record<TableName, string> {
+export function tables(recording: Recording, measures: Measures): Partial<Record<TableName, string>> {
   return {
     'walls.csv': walls(measures),
     'histogram.csv': histogram(measures),
     'swept.csv': swept(measures),
     'history.csv': history(recording),
     'bubbles.csv': bubbles(recording),
+    'backtransport.csv': backTransport(measures),
+    ...(recording.case.deposit === undefined ? {} : { 'deposit.csv': deposit(recording, measures) }),
   };
 }
 
-export type TableName = 'walls.csv' | 'histogram.csv' | 'swept.csv' | 'history.csv' | 'bubbles.csv';
+export type TableName = 'walls.csv' | 'histogram.csv' | 'swept.csv' | 'history.csv' | 'bubbles.csv' | 'backtransport.csv' | 'deposit.csv';
 
 /** One row per wall element over the whole height, left wall first, upward; `in_membrane` 1: counts in the measures. */
 function walls(measures: Measures): string {
@@ -87,5 +90,32 @@ function bubbles(recording: Recording): string {
   return csv(
     ['time_s', 'bubble', 'area_m2', 'x_m', 'y_m', 'ux_m_s', 'uy_m_s'],
     recording.bubbles.map((row) => [row.time_s, row.bubble, row.area_m2, row.x_m, row.y_m, row.ux_m_s, row.uy_m_s]),
+  );
+}
+
+/** One row per wall (and the membrane walls together) and radius: fluxes sustained by each mechanism, an estimate. */
+function backTransport({ backTransport: of }: Measures): string {
+  return csv(
+    ['wall', 'radius_m', 'brownian_m_s', 'shear_induced_m_s', 'inertial_lift_m_s', 'total_m_s'],
+    PLACES.flatMap((place) =>
+      of[place].sizes.map((size) => [
+        place,
+        size.radius_m,
+        size.brownian_m_s,
+        size.shearInduced_m_s,
+        size.inertialLift_m_s,
+        size.total_m_s,
+      ]),
+    ),
+  );
+}
+
+/** One row per wall (and the membrane walls together) and sample: covered from the asked start, and once settled. */
+function deposit({ times_s }: Recording, { deposit: of }: Measures): string {
+  return csv(
+    ['wall', 'time_s', 'covered', 'covered_settled'],
+    PLACES.flatMap((place) =>
+      Array.from(of[place]?.fromStart ?? [], (covered, i) => [place, times_s[i], covered, of[place]?.settled[i] ?? null]),
+    ),
   );
 }

@@ -9,6 +9,7 @@ import { makeRecording } from './recordings.ts';
 
 const recording: Recording = makeRecording({
   samples: 30,
+  deposit: { flux_m_s: 1e-5, solids_kg_m3: 10, layer_kg_m2: 0.005, above_Pa: 0.5, clears_s: 0.1, start: 1 },
   shear: (side, s, e) => (side === 'left' && e === 4 ? Number.NaN : Math.sin(s + e)),
 });
 const beginning: Beginning = {
@@ -64,8 +65,10 @@ describe('a run folder', () => {
     for (const { name, bytes } of done.files) expect(readFileSync(join(path, name)).length).toBe(bytes);
     expect(onDisk).toEqual(
       [
+        'backtransport.csv',
         'bubbles.csv',
         'case.yaml',
+        'deposit.csv',
         'frames/0000.png',
         'histogram.csv',
         'histogram.png',
@@ -208,12 +211,30 @@ describe('the tables of a run folder', () => {
     ]);
   });
 
+  test('backtransport.csv and deposit.csv hold a block for each wall and one for both', () => {
+    const { backTransport, deposit } = measure(recording);
+    const sizes = table('backtransport.csv');
+    expect(sizes).toHaveLength(3 * 41);
+    const size = backTransport.right.sizes[20];
+    expect(sizes[41 + 20].wall).toBe('right');
+    expect(Number(sizes[41 + 20].radius_m)).toBe(1e-6);
+    expect(Number(sizes[41 + 20].total_m_s) / size.total_m_s).toBeCloseTo(1, 6);
+    const covers = table('deposit.csv');
+    expect(covers).toHaveLength(3 * 30);
+    expect(Number(covers[2 * 30 + 29].covered)).toBeCloseTo(deposit.together?.fromStart[29] ?? Number.NaN, 6);
+    expect(Number(covers[30].time_s)).toBe(1.01);
+    expect(Number(covers[30].covered_settled)).toBeCloseTo(deposit.right?.settled[0] ?? Number.NaN, 6);
+  });
+
   test('summary.json says the answers, what they leave out and the cautions', () => {
     const summary = JSON.parse(readFileSync(join(scratch, 'summary.json'), 'utf8'));
     const measures = measure(recording);
     expect(summary.walls.right.swept.within).toBe(measures.walls.right.swept.within);
     expect(summary.walls.left.elements).toEqual({ open: 7, underFin: 1 });
     expect(summary.loop).toMatchObject({ released_m2: 2e-5, balanceError: 0 });
+    expect(summary.backTransport).toMatchObject({ length_m: 1, wallToBulk: 60, worst: { right: measures.backTransport.right.worst } });
+    expect(summary.backTransport.kind).toContain('estimate');
+    expect(summary.deposit).toMatchObject({ above_Pa: 0.5, right: { atEnd: measures.deposit.right?.fromStart.at(-1) } });
     expect(summary.cautions.join(' ')).toMatch(/Compressed air.*local codes/s);
     expect(summary.leftOut.join(' ')).toContain('Plane section');
   });

@@ -12,6 +12,9 @@ export interface Making {
   swept?: { above_Pa: number; within_s: number };
   tilt_rad?: number;
   air?: Partial<Case['air']>;
+  liquid?: Case['liquid'];
+  particles?: Case['particles'];
+  deposit?: Case['deposit'];
   across?: number;
   /** signed shear in Pa of wall, sample and element */
   shear?: (side: WallSide, sample: number, element: number) => number;
@@ -50,7 +53,7 @@ export function makeRecording(making: Making = {}): Recording {
       return: { loss: 1.5 },
     },
     fins: [],
-    liquid: { kind: 'custom', density_kg_m3: 1000, viscosity_Pa_s: 1e-3 },
+    liquid: making.liquid ?? { kind: 'custom', density_kg_m3: 1000, viscosity_Pa_s: 1e-3 },
     surfaceTension_N_m: 0.072,
     contactAngle_rad: 1,
     gas: {
@@ -69,6 +72,8 @@ export function makeRecording(making: Making = {}): Recording {
     record: { settle_s: 1, span_s: samples * every_s, every_s },
     swept: making.swept ?? { above_Pa: 0.5, within_s: 0.05 },
     air: { depth_m: 2.5, losses_m: 1, efficiency: 0.6, inlet_K: 293.15, ...making.air },
+    particles: making.particles ?? { length_m: 1, wallToBulk: 60 },
+    ...(making.deposit === undefined ? {} : { deposit: making.deposit }),
   };
   const derived: Derived = {
     nx: elements,
