@@ -21,16 +21,23 @@ export function gridOf({ channel, grid }: Pick<Case, 'channel' | 'grid'>): { nx:
   return { nx: Math.round(channel.height_m / dx_m), ny: grid.across, dx_m, dt_s: (LATTICE_SPEED / grid.speed_m_s) * dx_m };
 }
 
-/** Steps of settling and recording, both whole numbers of samples. */
+/** Steps of settling and recording, whole numbers of samples; `span` is the most that is recorded, `least` the least. */
 export function stepsOf({ record, ...sized }: Pick<Case, 'channel' | 'grid' | 'record'>): {
   sampleEvery: number;
   settle: number;
+  least: number;
   span: number;
 } {
   const { dt_s } = gridOf(sized);
   const sampleEvery = Math.max(1, Math.round(record.every_s / dt_s));
   const whole = (time_s: number): number => sampleEvery * Math.ceil(time_s / (sampleEvery * dt_s) - 1e-9);
-  return { sampleEvery, settle: whole(record.settle_s), span: Math.max(sampleEvery, whole(record.span_s)) };
+  const recorded = (time_s: number): number => Math.max(sampleEvery, whole(time_s));
+  return {
+    sampleEvery,
+    settle: whole(record.settle_s),
+    least: recorded(record.span_s),
+    span: recorded(record.until?.atMost_s ?? record.span_s),
+  };
 }
 
 /** Diameter of the largest bubble that is let in: two standard deviations above the mean of its kind, two cells clear of either wall. */

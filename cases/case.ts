@@ -44,7 +44,14 @@ export interface Case {
     /** speed that shall stand at the lattice velocity of the time-step rule */
     speed_m_s: number;
   };
-  record: { settle_s: number; span_s: number; every_s: number };
+  record: {
+    settle_s: number;
+    /** with `until` the least time recorded */
+    span_s: number;
+    every_s: number;
+    /** goes on until these answers are sure: half of the 95 % interval is `within` of the value, relative */
+    until?: { sure: { name: string; within: number }[]; atMost_s: number };
+  };
   swept: { above_Pa: number; within_s: number };
   air: {
     /** of the nozzles below the surface; losses as height of liquid */

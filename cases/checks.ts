@@ -7,6 +7,7 @@ import type { PlacedFin } from './fins.ts';
 import { gasFindings, startFindings } from './gascheck.ts';
 import type { CaseEntries } from './schema.ts';
 import { mm } from './units.ts';
+import { untilFindings } from './until.ts';
 
 /** Most cells of a grid, and most wall values of a recording (5 bytes each). */
 const MOST_CELLS = 2e7;
@@ -17,7 +18,13 @@ const LONGEST_TAU = 0.98;
 
 /** Every contradiction within a case. */
 export function contradictions(entries: CaseEntries, panel: Case, fins: readonly PlacedFin[]): PlacedFinding[] {
-  const single = [...channelFindings(entries), ...recordFindings(panel), ...gasFindings(entries, panel), ...sizeFindings(panel)];
+  const single = [
+    ...channelFindings(entries),
+    ...recordFindings(panel),
+    ...untilFindings(entries.record),
+    ...gasFindings(entries, panel),
+    ...sizeFindings(panel),
+  ];
   if (single.length > 0) return single;
   const bands = bandFindings(panel);
   return bands.length > 0 ? bands : [...finFindings(entries, panel, fins), ...startFindings(panel)];

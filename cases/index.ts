@@ -5,6 +5,7 @@ export { readPlan } from './plan/read.ts';
 export { planSchema } from './plan/schema.ts';
 export { readCase } from './read.ts';
 export type { Checkpoint, History, Hooks, Progress, Recording, Snapshot } from './recording.ts';
+export { UNTIL_NAMES } from './recordkeys.ts';
 export { type Derived, layOut } from './scale.ts';
 export { caseSchema } from './schema.ts';
 export { simulate } from './simulate.ts';

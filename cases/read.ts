@@ -8,6 +8,7 @@ import { waterDensity_kg_m3, waterSurfaceTension_N_m, waterViscosity_Pa_s } from
 import { gasOf } from './gas.ts';
 import { type CaseEntries, caseTable } from './schema.ts';
 import { type CaseTree, parseTree, plain } from './text.ts';
+import { untilOf } from './until.ts';
 
 /** Permeate flux of a deposit where the case tells none: 20 L/(m2 h), common practice. */
 const FLUX_m_s = 20 / 3.6e6;
@@ -59,7 +60,7 @@ function resolve(entries: CaseEntries, fins: readonly PlacedFin[]): Case {
     contactAngle_rad: channel.wetting,
     gas: gasOf(entries),
     grid: { across: grid.across, speed_m_s: grid.speed },
-    record: { settle_s: record.settle, span_s: record.span, every_s: record.every },
+    record: { settle_s: record.settle, span_s: record.span, every_s: record.every, ...untilOf(record) },
     swept: { above_Pa: swept.above, within_s: swept.within ?? Math.min(1, record.span) },
     air: {
       depth_m: air.depth,

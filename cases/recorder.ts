@@ -75,7 +75,7 @@ export class Recorder {
     return this.#history.time_s.at(-1) ?? 0;
   }
 
-  recording(complete: boolean): Recording {
+  recording(ended: Recording['ended']): Recording {
     const { nx, dx_m, release, skim } = this.#derived;
     const length = this.#samples * nx;
     const wall = (side: 'left' | 'right') => ({
@@ -85,7 +85,8 @@ export class Recorder {
     return {
       case: this.#panel,
       derived: this.#derived,
-      complete,
+      complete: ended !== 'stopped',
+      ended,
       x_m: Float64Array.from({ length: nx }, (_, x) => (x + 0.5) * dx_m),
       membrane: { first: Math.ceil(release.to_m / dx_m - 1e-9), end: Math.floor(skim.from_m / dx_m + 1e-9) },
       times_s: this.#times_s.subarray(0, this.#samples),

@@ -7,6 +7,8 @@ export interface Recording {
   derived: Derived;
   /** false while the asked span is not yet recorded */
   complete: boolean;
+  /** by what it ended: its span; measures that are sure; the most to be recorded, without that; a signal, before any of these */
+  ended: 'span' | 'sure' | 'atMost' | 'stopped';
   /** centres of the wall elements along the channel, over the whole height; shape (elements) */
   x_m: Float64Array;
   /** elements that count: release and skim bands left out, [first, end) */
@@ -88,6 +90,11 @@ export interface Hooks {
   /** least wall-clock time between checkpoints, s */
   checkpointEvery_s?: number;
   onCheckpoint?: (checkpoint: Checkpoint) => void | Promise<void>;
+  /**
+   * Says of a recording with `record.until` whether its measures are sure; asked at step numbers fixed by the case, must depend on the
+   * recording alone. Without it such a case is recorded to its most.
+   */
+  sureEnough?: (recording: Recording) => boolean;
   /** stops at the next event; a last checkpoint is handed over and the recording comes back incomplete */
   signal?: AbortSignal;
 }

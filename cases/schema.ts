@@ -9,6 +9,7 @@ import { airKeys } from './airkeys.ts';
 import { finKeys } from './finkeys.ts';
 import { gasKeys } from './gaskeys.ts';
 import { choice, leftOut, line, plainNumber, quantity } from './leaves.ts';
+import { recordKeys } from './recordkeys.ts';
 
 const membranes = z
   .array(choice(['left', 'right'], 'a wall that carries a membrane'))
@@ -66,12 +67,6 @@ const grid = z.strictObject({
   }),
 });
 
-const record = z.strictObject({
-  settle: quantity('time', { unit: 's', least: 0, most: 600, default: '1 s', says: 'time computed before the recording starts' }),
-  span: quantity('time', { unit: 's', least: 0.001, most: 3600, default: '3 s', says: 'time recorded' }),
-  every: quantity('time', { unit: 'ms', least: 0.01, most: 1000, default: '2 ms', says: 'time between wall samples' }),
-});
-
 const swept = z.strictObject({
   above: quantity('stress', { unit: 'Pa', least: 0.001, most: 1000, default: '0.5 Pa', says: 'wall shear that counts as sweeping' }),
   within: quantity('time', {
@@ -91,7 +86,7 @@ export const caseTable = z
     liquid: leftOut(z.discriminatedUnion('kind', [water, custom]), { kind: 'water' }),
     gas: gasKeys,
     grid: leftOut(grid),
-    record: leftOut(record),
+    record: leftOut(recordKeys),
     swept: leftOut(swept),
     air: leftOut(airKeys),
     particles: particleKeys,

@@ -4,6 +4,7 @@
  * pieces, so a run that was stopped and resumed, anywhere, equals one that was not, bit for bit.
  */
 import { createSimulation, type Simulation, SolverError, type Status, UsageError } from '../solver/index.ts';
+import { stepsOf } from './bands.ts';
 import { follow, PatchFinder, type TrackState } from './bubbles.ts';
 import type { Case } from './case.ts';
 import { Recorder } from './recorder.ts';
@@ -11,6 +12,7 @@ import type { Checkpoint, Hooks, Recording } from './recording.ts';
 import { Supply, type SupplyState } from './release.ts';
 import { type Derived, layOut } from './scale.ts';
 import { Snapshooter } from './snapshot.ts';
+import { lookSteps } from './until.ts';
 
 /** Time between looks at the bubbles. */
 const OBSERVE_s = 0.01;
@@ -50,6 +52,9 @@ class Run {
   /** steps between observations; between frames, 0 for none */
   readonly #observeEvery: number;
   readonly #frameEvery: number;
+  /** steps at which it is looked whether the measures are sure */
+  readonly #looks: readonly number[];
+  #sure = false;
 
   constructor(panel: Case, derived: Derived, simulation: Simulation, hooks: Hooks) {
     const { solid } = simulation.setup;
@@ -62,6 +67,8 @@ class Run {
     this.#finder = new PatchFinder(derived.nx, derived.ny, solid);
     this.#snapshooter = new Snapshooter(derived, solid);
     this.#supply = new Supply(panel, derived);
+    const { settle, least, span: most } = stepsOf(panel);
+    this.#looks = lookSteps(panel.record, derived.dt_s, { settle, least, most });
     this.#observeEvery = stepsIn(OBSERVE_s);
     this.#frameEvery = hooks.frameEvery_s === undefined ? 0 : stepsIn(hooks.frameEvery_s);
   }
@@ -83,10 +90,10 @@ class Run {
     const { signal, checkpointEvery_s = Number.POSITIVE_INFINITY } = this.#hooks;
     let piece = 10;
     let saved_ms = performance.now();
-    while (this.#simulation.step < steps) {
+    while (this.#simulation.step < steps && !this.#sure) {
       if (signal?.aborted === true) {
         await this.#checkpoint();
-        return this.#recorder.recording(false);
+        return this.#recorder.recording('stopped');
       }
       const start_ms = performance.now();
       const from = this.#simulation.step;
@@ -97,13 +104,14 @@ class Run {
       piece = Math.max(1, Math.min(2 * piece, Math.round(PIECE_ms / Math.max(perStep_ms, 1e-6))));
       await this.events();
       this.#progress();
-      if (performance.now() - saved_ms >= 1000 * checkpointEvery_s && this.#simulation.step < steps) {
+      if (performance.now() - saved_ms >= 1000 * checkpointEvery_s && this.#simulation.step < steps && !this.#sure) {
         await this.#checkpoint();
         saved_ms = performance.now();
       }
       await new Promise((resolve) => setTimeout(resolve, 0));
     }
-    return this.#recorder.recording(true);
+    if (this.#panel.record.until === undefined) return this.#recorder.recording('span');
+    return this.#recorder.recording(this.#sure ? 'sure' : 'atMost');
   }
 
   /** The next step at which something is due. */
@@ -112,6 +120,7 @@ class Run {
     const after = (every: number): number => every * (Math.floor(step / every) + 1);
     const due = [this.#derived.steps, after(this.#observeEvery)];
     if (this.#frameEvery > 0) due.push(after(this.#frameEvery));
+    due.push(...this.#looks.filter((look) => look > step).slice(0, 1));
     if (this.#supply.step > step) due.push(this.#supply.step);
     return Math.min(...due);
   }
@@ -125,6 +134,7 @@ class Run {
     }
     if (this.#frameEvery > 0 && step % this.#frameEvery === 0) await this.#hooks.onFrame?.(this.#snapshooter.take(this.#simulation));
     if (step === this.#supply.step) this.#supply.release(this.#simulation);
+    if (this.#looks.includes(step)) this.#sure = this.#hooks.sureEnough?.(this.#recorder.recording('sure')) ?? false;
   }
 
   #progress(): void {

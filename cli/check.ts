@@ -31,7 +31,7 @@ export async function check({ word, sets, json }: { word: string; sets: string[]
 function forecastOf(panel: Case, derived: Derived, { updatesPerSecond, memory_bytes }: Trial): Forecast {
   const cells = derived.nx * derived.ny;
   const updates = cells * derived.steps;
-  const samples = Math.ceil(panel.record.span_s / (derived.sampleEvery * derived.dt_s));
+  const samples = Math.ceil(longest_s(panel) / (derived.sampleEvery * derived.dt_s));
   const memory = memory_bytes + samples * derived.nx * SAMPLE_BYTES;
   return { cells, steps: derived.steps, updates, updatesPerSecond, wallTime_s: updates / updatesPerSecond, memory_bytes: memory };
 }
@@ -40,8 +40,19 @@ function pulseText({ pulse }: Case['gas']): string {
   return pulse === undefined ? '' : `; air on ${plain(pulse.on_s)} s and off ${plain(pulse.off_s)} s in turn, which these are means over`;
 }
 
+function longest_s({ record }: Case): number {
+  return record.until?.atMost_s ?? record.span_s;
+}
+
+function spanText({ record: { span_s, until } }: Case): string {
+  if (until === undefined) return `${plain(span_s)} s`;
+  const sure = until.sure.map(({ name, within }) => `${name} is sure within ${percent(within)}`).join(' and ');
+  return `${plain(span_s)} to ${plain(until.atMost_s)} s (until ${sure})`;
+}
+
 function page(panel: Case, derived: Derived, forecast: Forecast, bites: string[]): string {
   const { channel, record, gas } = panel;
+  const most = record.until === undefined ? '' : 'at most ';
   const mm = (length_m: number): string => `${plain(1000 * length_m)} mm`;
   const tilt = channel.tilt_rad === 0 ? 'vertical' : `tilted ${plain((180 / Math.PI) * channel.tilt_rad)} deg`;
   const rows: [string, string][] = [
@@ -64,17 +75,17 @@ function page(panel: Case, derived: Derived, forecast: Forecast, bites: string[]
     ],
     [
       'time',
-      `${plain(record.settle_s)} s settling + ${plain(record.span_s)} s recorded = ${count(forecast.steps)} steps of ${plain(1e6 * derived.dt_s)} us`,
+      `${plain(record.settle_s)} s settling + ${spanText(panel)} recorded = ${most}${count(forecast.steps)} steps of ${plain(1e6 * derived.dt_s)} us`,
     ],
     ['wall samples', `every ${plain(1000 * derived.sampleEvery * derived.dt_s)} ms (${derived.sampleEvery} steps)`],
     ['swept', `above ${plain(panel.swept.above_Pa)} Pa within ${plain(panel.swept.within_s)} s`],
     ['memory', size(forecast.memory_bytes)],
     [
       'wall time',
-      `about ${duration(forecast.wallTime_s)} here, at ${plain(forecast.updatesPerSecond / 1e6)} million cell updates a second`,
+      `about ${most}${duration(forecast.wallTime_s)} here, at ${plain(forecast.updatesPerSecond / 1e6)} million cell updates a second`,
     ],
   ];
-  const settling = percent(record.settle_s / (record.settle_s + record.span_s), 2);
+  const settling = percent(record.settle_s / (record.settle_s + longest_s(panel)), 2);
   const table = rows.map(([name, text]) => `${name.padEnd(13)} ${text}`).join('\n');
   const list = bites.map((text) => `warning: ${text}.`).join('\n');
   return `${panel.title}\n${table}\n${list === '' ? `no warnings; ${settling} of the time is settling` : list}\n${CAUTION}`;

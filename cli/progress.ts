@@ -10,7 +10,8 @@ const FIRST_RATE_S = 1;
 
 /** Shows how far a run is. */
 export interface ProgressView {
-  update(progress: Progress): void;
+  /** @param sure how sure the measures are that end the run; undefined where its length is fixed */
+  update(progress: Progress, sure?: string): void;
   end(): void;
 }
 
@@ -28,10 +29,10 @@ function bar(stream: WriteStream): ProgressView {
   const left = timeLeft();
   let started = false;
   return {
-    update: (progress) => {
+    update: (progress, sure) => {
       if (!started) view.start(progress.steps, progress.step, { state: '' });
       started = true;
-      view.update(progress.step, { state: state(progress, left(progress)) });
+      view.update(progress.step, { state: state(progress, left(progress), sure) });
     },
     end: () => view.stop(),
   };
@@ -41,21 +42,22 @@ function lines(stream: WriteStream): ProgressView {
   const left = timeLeft();
   let last = performance.now();
   return {
-    update: (progress) => {
+    update: (progress, sure) => {
       const leftNow = left(progress);
       if (performance.now() - last < 1000 * LINE_EVERY_S) return;
       last = performance.now();
-      stream.write(`${percent(progress.step / progress.steps, 2)}  ${state(progress, leftNow)}\n`);
+      stream.write(`${percent(progress.step / progress.steps, 2)}  ${state(progress, leftNow, sure)}\n`);
     },
     end: () => {},
   };
 }
 
-function state(progress: Progress, left_s: number | undefined): string {
+function state(progress: Progress, left_s: number | undefined, sure: string | undefined): string {
   const total_s = (progress.time_s / Math.max(1, progress.step)) * progress.steps;
-  const left = left_s === undefined ? '' : `, ${duration(left_s)} left`;
+  const most = sure === undefined ? '' : 'at most ';
+  const left = left_s === undefined ? '' : `, ${most}${duration(left_s)} left`;
   const flow = `hold-up ${percent(progress.holdup, 2)}, upflow ${plain(progress.upflow_m_s, 2)} m/s`;
-  return `${progress.time_s.toFixed(2)} of ${plain(total_s)} s, ${flow}${left}`;
+  return `${progress.time_s.toFixed(2)} of ${most}${plain(total_s)} s, ${flow}${left}${sure ? `; ${sure}` : ''}`;
 }
 
 /** Wall time still needed, s, at the pace since this process began: a resumed run counts only its own steps. */

@@ -1,12 +1,12 @@
 import { join } from 'node:path';
 import { type Case, type Checkpoint, type Derived, type Hooks, layOut, type Recording, simulate } from '../cases/index.ts';
-import { type Beginning, drawFrame, measure, RunFolder } from '../output/index.ts';
+import { allSure, type Beginning, drawFrame, measure, RunFolder, surenessOf } from '../output/index.ts';
 import { OutputError } from '../solver/index.ts';
 import { catchInterrupts } from './interrupt.ts';
 import { duration, plain } from './numbers.ts';
 import { progressView } from './progress.ts';
 import { readSource } from './source.ts';
-import { summaryPage } from './summary.ts';
+import { summaryPage, sureLine } from './summary.ts';
 import { version } from './version.ts';
 import { CAUTION } from './warnings.ts';
 import { shellWord } from './words.ts';
@@ -82,13 +82,19 @@ async function compute(
   const interrupt = catchInterrupts(() => {
     if (!options.quiet) process.stderr.write('\nstopping: the files are being finished; once more ends at once\n');
   });
+  let sure = laid.panel.record.until === undefined ? undefined : '';
   try {
     const recording = await simulate(laid.panel, {
       ...(resume === undefined ? {} : { resume }),
       ...frameHooks(folder, laid),
       onProgress: (progress) => {
-        view.update(progress);
+        view.update(progress, sure);
         folder.progress(progress);
+      },
+      sureEnough: (soFar) => {
+        const found = surenessOf(soFar);
+        sure = sureLine(found);
+        return allSure(found);
       },
       checkpointEvery_s: options.checkpoint_s,
       onCheckpoint: (checkpoint) => folder.writeCheckpoint(checkpoint),

@@ -1,28 +1,53 @@
-import type { Measures } from '../output/index.ts';
+import type { Measures, Sureness } from '../output/index.ts';
 import { percent, plain } from './numbers.ts';
 
-/** The answers of a run on a page: what each wall felt, what the channel did, what to bear in mind. */
+type Answers = Map<string, Measures['answers'][number]>;
+
+/** The answers of a run on a page: what each wall felt, what the channel did, how sure that is, what to bear in mind. */
 export function summaryPage(measures: Measures): string {
   const { above_Pa, within_s } = measures.swept;
-  const sides = ['left', 'right'] as const;
-  const rows = sides.map((side) => {
-    const { membrane, swept, shear } = measures.walls[side];
-    return [
-      `${side}${membrane ? '' : ' (plain)'}`,
-      percent(swept.within),
-      percent(swept.touched.within),
-      `${plain(shear.meanAbs_Pa)} Pa`,
-      `${plain(shear.percentiles_Pa.p95)} Pa`,
-      percent(shear.shareUnderGas),
-    ];
-  });
+  const answers: Answers = new Map(measures.answers.map((answer) => [answer.name, answer]));
+  const sides = (['left', 'right'] as const).map((side) => [side, `${side}${measures.walls[side].membrane ? '' : ' (plain)'}`]);
+  const both = measures.walls.left.membrane && measures.walls.right.membrane;
+  const rows = (both ? [...sides, ['together', 'together']] : sides).map(([place, head]) => [
+    head,
+    sure(answers, `swept_${place}`),
+    sure(answers, `touched_${place}`),
+    sure(answers, `mean_shear_${place}_Pa`),
+    sure(answers, `p95_shear_${place}_Pa`),
+    sure(answers, `under_gas_${place}`),
+  ]);
   const heads = ['wall', 'swept', 'gas touched', 'mean |tau|', '95th perc.', 'time under gas'];
   return [
     `swept: share of the wall above ${plain(above_Pa)} Pa at least once within ${plain(within_s)} s`,
     table([heads, ...rows]),
-    `channel: hold-up ${percent(measures.loop.holdup)}, upflow ${plain(measures.loop.upflow_m_s)} m/s (means after settling)`,
+    `channel: hold-up ${sure(answers, 'holdup')}, upflow ${sure(answers, 'upflow_m_s')} (means after settling)`,
+    '+- half of the 95 % interval, ? where this recording cannot tell it',
+    basisLine(measures),
     ...measures.notes.map((note) => `note: ${note}`),
   ].join('\n');
+}
+
+/** How sure measures are against what is asked: `swept_left within 7.1 % (5 % asked)`. */
+export function sureLine(found: readonly Sureness[]): string {
+  return found.map(({ name, within, reached }) => `${name} within ${percent(reached, 2)} (${percent(within, 2)} asked)`).join(', ');
+}
+
+/** A value and half of its interval, both in its unit; shares in percent. */
+function sure(answers: Answers, name: string): string {
+  const { value = null, low = null, high = null } = answers.get(name) ?? {};
+  const unit = name.endsWith('_Pa') ? ' Pa' : name.endsWith('_m_s') ? ' m/s' : ' %';
+  const scale = unit === ' %' ? 100 : 1;
+  if (value === null) return '-';
+  return `${plain(scale * value)} +- ${low === null || high === null ? '?' : plain((scale * (high - low)) / 2, 2)}${unit}`;
+}
+
+function basisLine({ basis: { passages, independent }, recorded }: Measures): string {
+  const held_s = recorded.samples * recorded.every_s;
+  const worth = independent.together === null ? '' : `, worth about ${Math.round(independent.together)} independent moments`;
+  const ended = { span: '', sure: '; sure enough to end there', atMost: '; the most that was asked', stopped: '' }[recorded.ended];
+  const bubbles = `${passages.together} ${passages.together === 1 ? 'bubble' : 'bubbles'} passing (left ${passages.left}, right ${passages.right})`;
+  return [`rests on ${plain(held_s)} s with ${bubbles}${worth}${ended}`, ...recorded.until.map((one) => sureLine([one]))].join('\n');
 }
 
 /** Columns with two spaces between, the first to the left, the others to the right. */

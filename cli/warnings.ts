@@ -77,7 +77,7 @@ function brokenPulse({ record, gas }: Case): string | undefined {
 }
 
 function fewBubbles({ record, gas }: Case, { bubblesPerSecond }: Derived): string | undefined {
-  const bubbles = bubblesPerSecond * record.span_s;
+  const bubbles = bubblesPerSecond * (record.until?.atMost_s ?? record.span_s);
   if (bubbles >= FEW_BUBBLES || (gas.supply_m_s === 0 && gas.start.length > 0)) return undefined;
   if (bubbles === 0) return 'no gas: neither gas.supply nor gas.start lets any in';
   const needed_s = Math.ceil(FEW_BUBBLES / bubblesPerSecond);

@@ -1,6 +1,7 @@
 export { RunFolder } from './folder/folder.ts';
 export type { Beginning, RunRecord } from './folder/record.ts';
 export { type Measures, measure } from './measures/measures.ts';
+export { allSure, type Sureness, surenessOf } from './measures/sure.ts';
 export { drawFrame } from './pictures/frame.ts';
 export { drawHistogram } from './pictures/histogram.ts';
 export { drawShearMap } from './pictures/shearmap.ts';

@@ -25,6 +25,7 @@ export function summary(recording: Recording, measures: Measures): string {
     complete: measures.complete,
     answers: Object.fromEntries(measures.answers.map(({ name, value, low, high }) => [name, { value, low, high }])),
     recorded: measures.recorded,
+    basis: measures.basis,
     swept: measures.swept,
     walls: { left: wallSummary(left), right: wallSummary(right) },
     together: sweptSummary(measures.together),

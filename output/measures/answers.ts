@@ -1,11 +1,11 @@
-import type { Recording, WallSide } from '../../cases/index.ts';
+import type { Recording } from '../../cases/index.ts';
 import { shareAbove } from './above.ts';
 import { airEnergy, airPower, perPower } from './air.ts';
 import { worstFlux, worstRadius } from './backtransport.ts';
 import { settledCover } from './deposit.ts';
 import { ANY, type Estimate, type Range, SHARE, SIZE } from './estimate.ts';
 import { events } from './events.ts';
-import type { Felt } from './felt.ts';
+import { type Felt, PLACES, type Places } from './felt.ts';
 import { meanInterval } from './interval.ts';
 import { holdup, upflow } from './loop.ts';
 import { meanShear, steadyShear } from './mean.ts';
@@ -25,14 +25,6 @@ export interface Answer {
   low: number | null;
   high: number | null;
 }
-
-/** A wall, or `together`: all membrane walls as one surface. */
-export type Place = WallSide | 'together';
-
-/** The walls of each place, each wall made once. */
-export type Places = Record<Place, readonly Felt[]>;
-
-export const PLACES: readonly Place[] = ['left', 'right', 'together'];
 
 /** Headline measures of walls, in the order of every list. */
 const WALL_MEASURES: readonly WallMeasure[] = [
@@ -90,9 +82,18 @@ function ofPlaces(stem: string, unit: string, range: Range, of: (recording: Reco
 
 /** Values that an answer can have. */
 export function rangeOf(name: string): Range {
+  return headlineOf(name).range;
+}
+
+function headlineOf(name: string): Headline {
   const headline = HEADLINES.find((one) => one.name === name);
   if (headline === undefined) throw new Error(`no answer is called ${name}`);
-  return headline.range;
+  return headline;
+}
+
+/** One answer of a recording, for less than the price of all. */
+export function answerOf(recording: Recording, places: Places, name: string): Answer {
+  return { name, ...sure(headlineOf(name).estimate(recording, places)) };
 }
 
 /** All answers of a recording, in the order of {@link HEADLINES}. */

@@ -1,5 +1,6 @@
+import type { Recording, WallSide } from '../../cases/index.ts';
 import { ascending } from './order.ts';
-import { type Surface, series } from './surface.ts';
+import { clip, layWall, type Surface, series } from './surface.ts';
 
 /** A wall between the bands, with what several measures need of it made once, on first use. */
 export interface Felt {
@@ -17,6 +18,21 @@ export function felt(surface: Surface): Felt {
       return sorted;
     },
   };
+}
+
+/** A wall, or `together`: all membrane walls as one surface. */
+export type Place = WallSide | 'together';
+
+export const PLACES: readonly Place[] = ['left', 'right', 'together'];
+
+/** The walls of each place, each wall made once. */
+export type Places = Record<Place, readonly Felt[]>;
+
+/** @param surfaces the whole walls, where they are at hand */
+export function placesOf(recording: Recording, surfaces?: Record<WallSide, Surface>): Places {
+  const between = (side: WallSide): Felt => felt(clip(surfaces?.[side] ?? layWall(recording, side), recording.membrane));
+  const walls = { left: between('left'), right: between('right') };
+  return { left: [walls.left], right: [walls.right], together: recording.case.channel.membranes.map((side) => walls[side]) };
 }
 
 /** Open elements of the walls taken as one surface. */

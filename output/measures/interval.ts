@@ -25,8 +25,8 @@ const FEWEST_BATCHES = 4;
 const MOST_BATCHES = 30;
 /** Correlation times that a short series hides. */
 const HIDDEN_TIMES = 5;
-/** With fewer than this many seen nothing is told: in truth there are hardly five, and the coverage falls below 92 %. */
-const FEWEST_TIMES = 8;
+/** Where no more than this many are left nothing is told: in truth there are hardly five, and the coverage falls below 92 %. */
+const FEWEST_TIMES = 4;
 /** A spread below this share of the largest entry is rounding. */
 const ROUND_OFF = 1e-12;
 
@@ -53,16 +53,22 @@ function products(away: Float64Array, lag: number): number {
   return sum;
 }
 
+/** The same with what a short series hides; a quarter of the series at most. */
+export function correlatedTime(series: Float64Array): number | undefined {
+  const seen = correlationTime(series);
+  if (seen === undefined || seen === 1) return seen;
+  return series.length / Math.max(series.length / seen - HIDDEN_TIMES, FEWEST_BATCHES);
+}
+
 /**
  * 95 % interval of the mean of an evenly spaced series.
  * @param range values that the mean can have
- * @returns undefined where it cannot be told: the series never changes or holds fewer than {@link FEWEST_TIMES} correlation times
+ * @returns undefined where it cannot be told: the series never changes or holds no more than {@link FEWEST_TIMES} correlation times
  */
 export function meanInterval(series: Float64Array, range: Range): Ends | undefined {
   const n = series.length;
-  const seen = correlationTime(series);
-  if (seen === undefined || n < FEWEST_TIMES * seen) return undefined;
-  const time = seen === 1 ? 1 : 1 / Math.max(1 / seen - HIDDEN_TIMES / n, FEWEST_BATCHES / n);
+  const time = correlatedTime(series);
+  if (time === undefined || n <= FEWEST_TIMES * time) return undefined;
   const wanted = Math.max(Math.ceil(BATCH_TIMES * time), Math.floor(n / MOST_BATCHES), 1);
   const length = Math.min(wanted, Math.floor(n / FEWEST_BATCHES));
   const batches = Math.floor(n / length);

@@ -1,15 +1,18 @@
 import type { Recording, WallSide } from '../../cases/index.ts';
 import { type AirMeasures, airMeasures } from './air.ts';
-import { type Answer, answersOf, type Place, type Places } from './answers.ts';
+import { type Answer, answersOf } from './answers.ts';
 import { type BackTransportMeasures, backTransport } from './backtransport.ts';
 import { type DepositMeasures, depositOn } from './deposit.ts';
 import { type ElementRow, elementRows } from './elements.ts';
-import { type Felt, felt } from './felt.ts';
+import { type Felt, type Place, placesOf } from './felt.ts';
 import { type Histogram, shearHistogram } from './histogram.ts';
 import { type LoopMeasures, loopMeasures } from './loop.ts';
+import { notesOn } from './notes.ts';
+import { type Basis, basisOf } from './passages.ts';
 import { type ShearStatistics, shearStatistics } from './shear.ts';
-import { clip, layWall, type Surface } from './surface.ts';
-import { type Swept, sweptFraction, sweptTogether, windowSamples } from './swept.ts';
+import { type Sureness, sureness } from './sure.ts';
+import { layWall } from './surface.ts';
+import { type Swept, sweptFraction, sweptTogether } from './swept.ts';
 
 /** The answers of one recording. Shares are dimensionless, 0 to 1; null: not to be had from this recording, see `notes`. */
 export interface Measures {
@@ -17,7 +20,17 @@ export interface Measures {
   complete: boolean;
   /** headline measures with their 95 % intervals; the same names in every run */
   answers: Answer[];
-  recorded: { samples: number; from_s: number | null; to_s: number | null; every_s: number };
+  recorded: {
+    samples: number;
+    from_s: number | null;
+    to_s: number | null;
+    every_s: number;
+    ended: Recording['ended'];
+    /** what the recording was to go on for */
+    until: Sureness[];
+  };
+  /** what the numbers rest on */
+  basis: Basis;
   /** what swept means here */
   swept: { above_Pa: number; within_s: number };
   walls: Record<WallSide, WallMeasures>;
@@ -60,15 +73,19 @@ export function measure(recording: Recording): Measures {
   const walls = { left: measureWall(recording, places.left[0]), right: measureWall(recording, places.right[0]) };
   const { membranes } = recording.case.channel;
   const times = recording.times_s;
-  return {
+  const answers = answersOf(recording, places);
+  const measures = {
     complete: recording.complete,
-    answers: answersOf(recording, places),
+    answers,
     recorded: {
       samples: times.length,
       from_s: times.length === 0 ? null : times[0],
       to_s: times.length === 0 ? null : times[times.length - 1],
       every_s: recording.derived.sampleEvery * recording.derived.dt_s,
+      ended: recording.ended,
+      until: sureness(recording.case, (name) => find(answers, name)),
     },
+    basis: basisOf(recording, places),
     swept: { above_Pa: asked.above_Pa, within_s: asked.within_s },
     walls,
     together: sweptTogether(membranes.map((side) => walls[side].swept)),
@@ -77,14 +94,14 @@ export function measure(recording: Recording): Measures {
     backTransport: each((walls) => backTransport(walls, recording.case)),
     deposit: each((walls) => depositOn(walls, recording.case)),
     elements: [...elementRows(recording, surfaces.left), ...elementRows(recording, surfaces.right)],
-    notes: notes(recording, walls),
   };
+  return { ...measures, notes: notesOn(recording, measures) };
 }
 
-function placesOf(recording: Recording, surfaces: Record<WallSide, Surface>): Places {
-  const between = (side: WallSide): Felt => felt(clip(surfaces[side], recording.membrane));
-  const walls = { left: between('left'), right: between('right') };
-  return { left: [walls.left], right: [walls.right], together: recording.case.channel.membranes.map((side) => walls[side]) };
+function find(answers: readonly Answer[], name: string): Answer {
+  const found = answers.find((answer) => answer.name === name);
+  if (found === undefined) throw new Error(`no answer is called ${name}`);
+  return found;
 }
 
 function measureWall({ case: { swept } }: Recording, wall: Felt): WallMeasures {
@@ -96,44 +113,4 @@ function measureWall({ case: { swept } }: Recording, wall: Felt): WallMeasures {
     histogram: shearHistogram(wall.sorted_Pa()),
     swept: sweptFraction(wall.surface, swept),
   };
-}
-
-function notes(recording: Recording, walls: Record<WallSide, WallMeasures>): string[] {
-  const found: string[] = [];
-  const { case: panel, derived, times_s } = recording;
-  const every_s = derived.sampleEvery * derived.dt_s;
-  const held_s = times_s.length * every_s;
-  if (!recording.complete) {
-    found.push(
-      `The recording is not complete: ${seconds(held_s)} of ${seconds(panel.record.span_s)} are recorded. Run it to its end before using the numbers.`,
-    );
-  }
-  if (times_s.length === 0) {
-    found.push('No wall sample was recorded: every wall measure is empty. Record beyond the settling time (record.settle, record.span).');
-  } else if (windowSamples(panel.swept.within_s, every_s) > times_s.length) {
-    found.push(
-      `The recording of ${seconds(held_s)} is shorter than the window of ${seconds(panel.swept.within_s)} asked for the swept fraction, which is therefore empty; ` +
-        'the fraction over the whole recording is given. Lengthen record.span or shorten swept.within.',
-    );
-  } else if (held_s < 2 * panel.swept.within_s) {
-    found.push(
-      `The recording of ${seconds(held_s)} holds fewer than two separate windows of ${seconds(panel.swept.within_s)}: the swept fraction may change much with a longer record.span.`,
-    );
-  }
-  for (const side of ['left', 'right'] as const) {
-    const { open, underFin } = walls[side].elements;
-    if (underFin > 0)
-      found.push(`The ${side} wall has ${underFin} of ${open + underFin} elements under fins; they are left out of every measure.`);
-  }
-  if (panel.gas.softened) {
-    found.push(
-      `The gas is softened: computed with ${panel.gas.density_kg_m3} kg/m3 and ${panel.gas.viscosity_Pa_s} Pa s instead of air at ` +
-        `${panel.gas.airDensity_kg_m3.toPrecision(3)} kg/m3; the buoyancy is that of real air.`,
-    );
-  }
-  return found;
-}
-
-function seconds(value_s: number): string {
-  return `${Number(value_s.toPrecision(4))} s`;
 }

@@ -1,5 +1,5 @@
 import type { Recording } from '../../cases/index.ts';
-import { PLACES } from '../measures/answers.ts';
+import { PLACES } from '../measures/felt.ts';
 import type { Measures } from '../measures/measures.ts';
 import type { Swept } from '../measures/swept.ts';
 import { type Cell, csv } from './table.ts';

@@ -24,11 +24,11 @@ describe('the interval of the mean of an autocorrelated series', () => {
 
   it('of five correlation times holds it hardly less often; of one it does not, and is not always told', () => {
     const five = coverage(0, (seed) => meanInterval(autoregression(1000, 0.99, seed), ANY));
-    expect(five.held).toBeGreaterThan(0.91); // 0.925 seen, told in 0.964
-    // a series cannot show what takes longer than itself: held 0.71, told 0.80 seen. The note on passages warns of such recordings
+    expect(five.held).toBeGreaterThan(0.91); // 0.922 seen, told in 0.922
+    // a series cannot show what takes longer than itself: held 0.67, told 0.65 seen. The note on passages warns of such recordings
     const one = coverage(0, (seed) => meanInterval(autoregression(1000, 0.998, seed), ANY));
-    expect(one.told).toBeLessThan(0.85);
-    expect(one.held).toBeGreaterThan(0.65);
+    expect(one.told).toBeLessThan(0.75);
+    expect(one.held).toBeGreaterThan(0.6);
   });
 
   // entries, rate, width, coverage seen: 100, 20, 10, 5 and 3 passages

@@ -100,6 +100,7 @@ export function makeRecording(making: Making = {}): Recording {
     case: panel,
     derived,
     complete: making.complete ?? true,
+    ended: making.complete === false ? 'stopped' : 'span',
     x_m: Float64Array.from({ length: elements }, (_, e) => (e + 0.5) * CELL_M),
     membrane,
     times_s: Float64Array.from({ length: samples }, (_, s) => 1 + (s + 1) * every_s),
