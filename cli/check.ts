@@ -82,7 +82,7 @@ function page(panel: Case, derived: Derived, forecast: Forecast, bites: string[]
     ['memory', size(forecast.memory_bytes)],
     [
       'wall time',
-      `about ${most}${duration(forecast.wallTime_s)} here, at ${plain(forecast.updatesPerSecond / 1e6)} million cell updates a second`,
+      `${most}about ${duration(forecast.wallTime_s)} here, at ${plain(forecast.updatesPerSecond / 1e6)} million cell updates a second`,
     ],
   ];
   const settling = percent(record.settle_s / (record.settle_s + longest_s(panel)), 2);

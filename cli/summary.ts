@@ -22,7 +22,7 @@ export function summaryPage(measures: Measures): string {
     `swept: share of the wall above ${plain(above_Pa)} Pa at least once within ${plain(within_s)} s`,
     table([heads, ...rows]),
     `channel: hold-up ${sure(answers, 'holdup')}, upflow ${sure(answers, 'upflow_m_s')} (means after settling)`,
-    '+- half of the 95 % interval, ? where this recording cannot tell it',
+    'in brackets: 95 % interval, ? where this recording cannot tell it',
     basisLine(measures),
     ...measures.notes.map((note) => `note: ${note}`),
   ].join('\n');
@@ -33,13 +33,14 @@ export function sureLine(found: readonly Sureness[]): string {
   return found.map(({ name, within, reached }) => `${name} within ${percent(reached, 2)} (${percent(within, 2)} asked)`).join(', ');
 }
 
-/** A value and half of its interval, both in its unit; shares in percent. */
+/** A value with the ends of its interval, all in its unit; shares in percent. */
 function sure(answers: Answers, name: string): string {
   const { value = null, low = null, high = null } = answers.get(name) ?? {};
   const unit = name.endsWith('_Pa') ? ' Pa' : name.endsWith('_m_s') ? ' m/s' : ' %';
   const scale = unit === ' %' ? 100 : 1;
   if (value === null) return '-';
-  return `${plain(scale * value)} +- ${low === null || high === null ? '?' : plain((scale * (high - low)) / 2, 2)}${unit}`;
+  const ends = low === null || high === null ? '?' : `${plain(scale * low)} to ${plain(scale * high)}`;
+  return `${plain(scale * value)} (${ends})${unit}`;
 }
 
 function basisLine({ basis: { passages, independent }, recorded }: Measures): string {
