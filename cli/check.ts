@@ -37,7 +37,7 @@ function forecastOf(panel: Case, derived: Derived, { updatesPerSecond, memory_by
 }
 
 function pulseText({ pulse }: Case['gas']): string {
-  return pulse === undefined ? '' : `; air on ${plain(pulse.on_s)} s and off ${plain(pulse.off_s)} s in turn, which these are means over`;
+  return pulse === undefined ? '' : ` in the mean; air on ${plain(pulse.on_s)} s and off ${plain(pulse.off_s)} s in turn`;
 }
 
 function longest_s({ record }: Case): number {

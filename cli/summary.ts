@@ -23,6 +23,7 @@ export function summaryPage(measures: Measures): string {
     table([heads, ...rows]),
     `channel: hold-up ${sure(answers, 'holdup')}, upflow ${sure(answers, 'upflow_m_s')} (means after settling)`,
     'in brackets: 95 % interval, ? where this recording cannot tell it',
+    ...besides(answers, measures),
     basisLine(measures),
     ...measures.notes.map((note) => `note: ${note}`),
   ].join('\n');
@@ -49,6 +50,22 @@ function basisLine({ basis: { passages, independent }, recorded }: Measures): st
   const ended = { span: '', sure: '; sure enough to end there', atMost: '; the most that was asked', stopped: '' }[recorded.ended];
   const bubbles = `${passages.together} ${passages.together === 1 ? 'bubble' : 'bubbles'} passing (left ${passages.left}, right ${passages.right})`;
   return [`rests on ${plain(held_s)} s with ${bubbles}${worth}${ended}`, ...recorded.until.map((one) => sureLine([one]))].join('\n');
+}
+
+/** 1 m3/(m2 s) in L/(m2 h), as the trade counts a flux. */
+const LITRES = 3.6e6;
+
+/** What follows from the shear of the membrane walls together: back-transport, and the deposit where it is asked for. */
+function besides(answers: Answers, { backTransport }: Measures): string[] {
+  const found: string[] = [];
+  const { worst } = backTransport.together;
+  if (worst !== null) {
+    const [diameter_um, flux] = [2e6 * worst.radius_m, LITRES * worst.total_m_s];
+    found.push(`back-transport: least for particles of ${plain(diameter_um)} um, ${plain(flux)} L/(m2 h), an estimate`);
+  }
+  const cover = answers.get('settled_cover_together')?.value ?? null;
+  if (cover !== null) found.push(`deposit: covers ${percent(cover)} of the membranes once settled, by a model`);
+  return found;
 }
 
 /** Columns with two spaces between, the first to the left, the others to the right. */

@@ -80,7 +80,8 @@ function fewBubbles({ record, gas }: Case, { bubblesPerSecond }: Derived): strin
   const bubbles = bubblesPerSecond * (record.until?.atMost_s ?? record.span_s);
   if (bubbles >= FEW_BUBBLES || (gas.supply_m_s === 0 && gas.start.length > 0)) return undefined;
   if (bubbles === 0) return 'no gas: neither gas.supply nor gas.start lets any in';
-  const needed_s = Math.ceil(FEW_BUBBLES / bubblesPerSecond);
+  const period_s = gas.pulse === undefined ? 1 : gas.pulse.on_s + gas.pulse.off_s;
+  const needed_s = plain(period_s * Math.ceil(FEW_BUBBLES / bubblesPerSecond / period_s));
   return (
     `about ${plain(bubbles, 2)} bubbles are let in while recording, fewer than ${FEW_BUBBLES}: means and the swept fraction depend on single ` +
     `bubbles. Set record.span to ${needed_s} s or more, or compare several values of gas.seed`

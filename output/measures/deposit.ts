@@ -13,7 +13,7 @@
  * element, ageing, a flux that falls with the cover, and what a plane section leaves out.
  */
 import type { Case, Recording } from '../../cases/index.ts';
-import { byMean, type Estimate, NO_ESTIMATE, SHARE } from './estimate.ts';
+import { type Estimate, meanOf, NO_ESTIMATE } from './estimate.ts';
 import { type Felt, overElements, samplesOf } from './felt.ts';
 
 type Deposit = NonNullable<Case['deposit']>;
@@ -53,10 +53,13 @@ export function depositOn(walls: readonly Felt[], { deposit }: Case): DepositMea
   };
 }
 
-/** Mean of the settled cover over time; none where the case asks for no deposit. */
+/**
+ * Mean of the settled cover over time; none where the case asks for no deposit. Without an interval: the cover remembers minutes, so how it
+ * varies within the seconds recorded does not tell how it would vary from one recording to the next.
+ */
 export function settledCover({ case: panel }: Recording, walls: readonly Felt[]): Estimate {
-  const found = depositOn(walls, panel);
-  return found === null ? NO_ESTIMATE : byMean(found.settled, SHARE);
+  const settled = depositOn(walls, panel)?.settled ?? [];
+  return settled.length === 0 ? NO_ESTIMATE : { ...NO_ESTIMATE, value: meanOf(settled) };
 }
 
 /** The solution over one sample, exact for steady shear: towards rate J C / m over the sum of rates, with that sum as its rate. */

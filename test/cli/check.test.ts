@@ -36,6 +36,15 @@ describe('warnings', () => {
     expect(warningsOf(...SOUND, 'swept.within=6 s').join('\n')).toContain('record.span 10 s holds fewer than two separate windows');
   });
 
+  it('name a recording that holds broken periods of air on and off, with the span that holds whole ones', () => {
+    const pulse = 'gas.pulse={on: 2 s, off: 1.5 s}';
+    const broken = warningsOf(...SOUND, pulse).find((text) => text.includes('gas.pulse'));
+    expect(broken).toContain('record.span 10 s is no whole number of periods of gas.pulse (3.5 s)');
+    expect(broken).toContain('Set record.span to 10.5 s');
+    expect(warningsOf(...SOUND, pulse, 'record.span=10.5 s').join('\n')).not.toContain('gas.pulse');
+    expect(warningsOf(...SOUND, pulse, 'record.span=1.2 s', 'swept.within=0.2 s').join('\n')).toContain('Set record.span to 3.5 s');
+  });
+
   it('name a recording of few bubbles, with the time that has enough', () => {
     const few = warningsOf('grid.across=40', 'record.span=100 ms').find((text) => text.includes('bubbles are let in'));
     const needed_s = /record\.span to (\d+) s/.exec(few ?? '')?.[1];
