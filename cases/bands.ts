@@ -74,3 +74,10 @@ export function skimRates(sized: Sized): Float64Array {
     return s <= 0 ? 0 : most * Math.sin(Math.PI * s) ** 2;
   });
 }
+
+/** Cells and steps of a run, without laying it out. */
+export function workOf(panel: Pick<Case, 'channel' | 'grid' | 'record'>): { cells: number; steps: number } {
+  const { nx, ny } = gridOf(panel);
+  const { settle, span } = stepsOf(panel);
+  return { cells: nx * ny, steps: settle + span };
+}

@@ -1,3 +1,4 @@
+export { workOf } from './bands.ts';
 export type { Case, WallSide } from './case.ts';
 export { galleryNames, galleryText } from './gallery.ts';
 export { type Plan, type Point, pointCase, pointCells, pointSets } from './plan/plan.ts';

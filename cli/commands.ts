@@ -4,12 +4,16 @@ import { version } from './version.ts';
 import { numberWithin, required, rewordComplaint, single } from './words.ts';
 
 const CASE = { type: 'string', describe: 'a case file (YAML), or the name of a ready-made case' } as const;
+const PLAN = { type: 'string', describe: 'a plan file (YAML), or the folder of a sweep' } as const;
 const NAME = { type: 'string', describe: 'a ready-made case' } as const;
 
 /** Pictures a run may ask for: more fill a disk and help nobody. */
 const FRAMES = { least: 2, most: 10_000, whole: true };
 /** Seconds between checkpoints: writing them more often takes longer than the run, more seldom loses hours. */
 const CHECKPOINT = { least: 0.01, most: 3600, whole: false };
+/** Pictures of each case of a sweep, and cases at a time. */
+const SWEEP_FRAMES = { least: 0, most: 10_000, whole: true };
+const AT_ONCE = { least: 1, most: 1000, whole: true };
 /** Percent of a value that an error of the grid may have. */
 const WITHIN = { least: 0.1, most: 50, whole: false };
 
@@ -78,6 +82,35 @@ export async function commandLine(words: string[]): Promise<number> {
         const out = single('out', args.out);
         const { refine } = await import('./refine.ts');
         exit = await refine({ word, sets: args.set ?? [], grids, within, out, again: args.again, checkpoint_s, quiet: args.quiet, words });
+      },
+    )
+    .command(
+      'sweep [plan]',
+      'run many cases from one plan, as many at a time as there are cores; one table of all',
+      (builder) =>
+        builder
+          .positional('plan', PLAN)
+          .options(OPTIONS.sweep)
+          .example('$0 sweep plan.yaml --list', 'the cases and the expected time')
+          .example('$0 sweep plan.yaml', 'run them, or go on with what is missing'),
+      async (args) => {
+        const word = required('sweep', args.plan);
+        const atOnce = single('at-once', args['at-once']);
+        const { sweep } = await import('./sweep/sweep.ts');
+        exit = await sweep({
+          word,
+          out: single('out', args.out),
+          list: args.list,
+          status: args.status,
+          atOnce: atOnce === undefined ? undefined : numberWithin('at-once', atOnce, AT_ONCE),
+          memory: single('memory', args.memory),
+          limit: single('limit', args.limit),
+          keepFree: single('keep-free', args['keep-free']) ?? '',
+          retry: args.retry,
+          frames: numberWithin('frames', single('frames', args.frames) ?? '', SWEEP_FRAMES),
+          checkpoint_s: numberWithin('checkpoint', single('checkpoint', args.checkpoint) ?? '', CHECKPOINT),
+          quiet: args.quiet,
+        });
       },
     )
     .command(

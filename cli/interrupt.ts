@@ -13,7 +13,13 @@ export interface Interrupt {
   release(): void;
 }
 
-/** The first Ctrl-C (or end, or hang-up) asks for an orderly stop, a second one ends the process at once. */
+/** Exit code of a run whose sweep is gone: that of a hang-up. */
+const LEFT_ALONE = EXITS.SIGHUP;
+
+/**
+ * The first Ctrl-C (or end, or hang-up) asks for an orderly stop, a second one ends the process at once. A run that a sweep started stops
+ * in the same way when the sweep is gone, whatever ended it: nobody else would.
+ */
 export function catchInterrupts(onFirst: () => void): Interrupt {
   const controller = new AbortController();
   let exit: number | undefined;
@@ -32,11 +38,21 @@ export function catchInterrupts(onFirst: () => void): Interrupt {
     process.on(name, listener);
     return { name, listener };
   });
+  const leftAlone = (): void => {
+    if (exit !== undefined) return;
+    exit = LEFT_ALONE;
+    onFirst();
+    controller.abort();
+  };
+  process.on('disconnect', leftAlone);
+  // the channel to the sweep shall not keep a finished run alive
+  process.channel?.unref();
   return {
     signal: controller.signal,
     exit: () => exit,
     release: () => {
       for (const { name, listener } of listeners) process.off(name, listener);
+      process.off('disconnect', leftAlone);
     },
   };
 }

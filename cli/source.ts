@@ -18,11 +18,12 @@ export interface Source {
  * @throws UsageError when nothing answers the name, CaseError for what stands in it
  */
 export function readSource(word: string, sets: string[]): Source {
-  const { name, file, text } = findText(word);
+  const { name, file, text } = caseSource(word);
   return { name, text: caseText(text, sets), panel: readCase(text, file, sets) };
 }
 
-function findText(word: string): { name: string; file: string; text: string } {
+/** The text that `word` names, as {@link readSource} finds it. */
+export function caseSource(word: string): { name: string; file: string; text: string } {
   if (galleryNames().includes(word)) return { name: word, file: word, text: galleryText(word) };
   return { name: nameOf(word), file: word, text: readText(word) };
 }
@@ -33,7 +34,8 @@ function nameOf(file: string): string {
   return own === 'case' ? basename(dirname(resolve(file))) || own : own;
 }
 
-function readText(file: string): string {
+/** @throws UsageError no file, or no text */
+export function readText(file: string): string {
   if (!existsSync(file)) throw new UsageError('case', notFound(file));
   if (statSync(file).isDirectory()) {
     const inside = existsSync(join(file, 'case.yaml'))

@@ -54,6 +54,7 @@ export function single(option: string, value: string | string[] | undefined): st
 /** A positional word that must be there. */
 export function required(command: string, word: string | undefined): string {
   if (word !== undefined && word !== '') return word;
+  if (command === 'sweep') throw new UsageError('plan', 'sweep needs a plan: a file that names a base case and what to vary');
   throw new UsageError(
     'case',
     `${command} needs a case: a file, or a name that swathe gallery lists, as in swathe ${command} tilted-panel`,

@@ -8,3 +8,8 @@ export { drawShearMap } from './pictures/shearmap.ts';
 export { readRefined } from './refine/answers.ts';
 export { gridFolder, openRefinement, writeRefinement } from './refine/folder.ts';
 export { type GridRun, type Refinement, refinement } from './refine/refinement.ts';
+export { nameOf, type PointState, SweepFolder, type SweepTexts } from './sweep/folder.ts';
+export { type Failure, type FailureKind, mayPass } from './sweep/outcome.ts';
+export { type Finished, finishedBeside, isFinished } from './sweep/reuse.ts';
+export type { SweepState } from './sweep/state.ts';
+export { pointHash, SweepTable } from './sweep/table.ts';

@@ -8,7 +8,7 @@ import { drawShearMap, shearLimit } from '../pictures/shearmap.ts';
 import { tables } from '../tables/tables.ts';
 import { CHECKPOINT_FILES, CheckpointPair, type FoundCheckpoint } from './checkpoint.ts';
 import { list, makeFolder, readWhole, remove, sizeOf, writeWhole } from './files.ts';
-import { type Hold, LOCK_NAME, takeFolder } from './lock.ts';
+import { type Hold, isHeld, LOCK_NAME, takeFolder } from './lock.ts';
 import { type Beginning, newRecord, RECORD_FILE, type RunRecord, type RunStatus, readRecord, sha256, writeRecord } from './record.ts';
 import { summary } from './summary.ts';
 
@@ -101,6 +101,12 @@ export class RunFolder {
     if (record === undefined)
       throw new OutputError(full, `${full}: no run is in this folder (no ${RECORD_FILE}); give the folder of a run.`);
     return record;
+  }
+
+  /** Whether a living process, as far as can be told, writes into a folder. */
+  static async isHeld(path: string): Promise<boolean> {
+    const full = resolve(path);
+    return isHeld(full, (await readRecord(full))?.process);
   }
 
   /** The run in it was made from this very text. */

@@ -1,7 +1,7 @@
 import { hostname } from 'node:os';
 import { join } from 'node:path';
 import { setTimeout as pause } from 'node:timers/promises';
-import { lock } from 'proper-lockfile';
+import { check, lock } from 'proper-lockfile';
 import { OutputError } from '../../solver/index.ts';
 import { codeOf, outputError } from './files.ts';
 
@@ -53,6 +53,16 @@ export async function takeFolder(folder: string, last: { pid: number; host: stri
       if (holder === 'mayLive' || Date.now() > patience) throw heldError(folder, last, error);
       await pause(LOOK_MS);
     }
+  }
+}
+
+/** Whether a living process, as far as can be told, writes there. @param last as of {@link takeFolder} */
+export async function isHeld(folder: string, last: { pid: number; host: string } | undefined): Promise<boolean> {
+  if (last === undefined || !mayLive(last)) return false;
+  try {
+    return await check(folder, { lockfilePath: join(folder, LOCK_NAME), stale: STALE_MS.mayLive });
+  } catch (error) {
+    throw outputError(folder, 'looking at the lock of the folder', error);
   }
 }
 
