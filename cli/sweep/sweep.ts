@@ -2,6 +2,7 @@ import { availableParallelism } from 'node:os';
 import { relative } from 'node:path';
 import type { Plan } from '../../cases/index.ts';
 import { SweepFolder } from '../../output/index.ts';
+import { UsageError } from '../../solver/index.ts';
 import { CAUTION } from '../warnings.ts';
 import { listPoints } from './listing.ts';
 import { runLocally, SOME_FAILED } from './local.ts';
@@ -36,6 +37,7 @@ export async function sweep(options: SweepOptions): Promise<number> {
     frames: options.frames,
     checkpoint_s: options.checkpoint_s,
   };
+  if (options.frames === 1) throw new UsageError('frames', '--frames 1: a run has none, or two or more: its start and its end');
   const keepFree_bytes = bytesOf('keep-free', options.keepFree);
   if (options.list) {
     await listPoints(plan, atOnce);

@@ -31,6 +31,10 @@ export class Bench {
     return readFileSync(this.path(...parts), 'utf8');
   }
 
+  bytes(...parts: string[]): Buffer {
+    return readFileSync(this.path(...parts));
+  }
+
   json(...parts: string[]): Record<string, unknown> {
     return JSON.parse(this.read(...parts)) as Record<string, unknown>;
   }
