@@ -150,7 +150,7 @@ combine: paired
       'output',
       'done',
     ]);
-    expect(rows[1].error).toContain('channel.gap');
+    expect(rows[1].error).toContain('gas.bubble.diameter: does not fit into the gap');
     expect(rows[2].error).toMatch(/the speed is/);
     expect(rows[3].error).toMatch(/^held \d+ MB, more than the 170 MB a case may have; raise --memory/);
     expect(rows[4].error).toMatch(/^took longer than the 15s a case may; raise --limit and give --retry/);
@@ -171,7 +171,7 @@ combine: paired
     const { out } = await bench.swathe('sweep', 'bad', '--status');
     expect(out).toContain('7 cases, done 2, failed 5, running 0, waiting 0');
     expect(out).toMatch(/^failed 0004 memory: held/m);
-    const all = await bench.swathe('sweep', 'bad', '--retry', '--limit', '3 s');
+    const all = await bench.swathe('sweep', 'bad', '--retry', '--limit', '16 s');
     expect(all.exit).toBe(5);
     const kinds = rowsOf(bench, 'bad').map(({ status, error_kind }) => error_kind || status);
     expect(kinds[3]).not.toBe('memory');
