@@ -117,6 +117,7 @@ class LocalSweep {
       interrupt.release();
     }
     await this.table.write('always');
+    await this.table.draw();
     const complete = standing.count('open') === 0;
     await folder.writeState(this.state(complete ? 'done' : 'stopped'));
     if (this.trouble !== undefined) throw this.trouble;

@@ -60,7 +60,7 @@ async function endPage(plan: Plan, folder: SweepFolder): Promise<string> {
   const told = failed === 0 ? '' : `; ${failed} failed, the column error of the table says why`;
   return [
     `${plan.title}: ${standing.count('done')} of ${plan.points.length} cases done${told}`,
-    `table: ${shown}/results.csv and results.parquet`,
+    `table: ${shown}/results.csv and results.parquet; picture: ${shown}/overview.png`,
     CAUTION,
   ].join('\n');
 }

@@ -3,10 +3,15 @@ import { caseText, pointCells, pointSets } from '../../cases/index.ts';
 import { readAnswers } from '../folder/answers.ts';
 import { sha256 } from '../folder/record.ts';
 import type { PointState, SweepFolder } from './folder.ts';
+import { drawMap } from './map.ts';
+import { drawOverview } from './overview.ts';
 import { type ResultRow, resultsCsv, resultsParquet } from './results.ts';
 
 /** Share of the time that writing the table may take: with thousands of rows it is not written after every case. */
 const WRITING_SHARE = 0.05;
+
+/** What the pictures show: whether the walls are swept, how hard, and how much gas that takes. */
+const SHOWN = ['swept_together', 'mean_shear_together_Pa', 'holdup'];
 
 /** SHA-256 of the case text of a point, as its run folder has it. */
 export function pointHash(plan: Plan, point: Point): string {
@@ -67,5 +72,14 @@ export class SweepTable {
     await this.folder.write('results.parquet', resultsParquet(keys, this.rows));
     this.written_ms = performance.now();
     this.took_ms = this.written_ms - start;
+  }
+
+  /** Writes overview.png and, where two keys are varied, map.png. */
+  async draw(): Promise<void> {
+    const { plan, rows } = this;
+    const keys = plan.keys.map(({ column }) => column);
+    const picture = { title: plan.title, keys, rows, measures: SHOWN };
+    await this.folder.write('overview.png', drawOverview(picture));
+    if (keys.length === 2) await this.folder.write('map.png', drawMap(picture));
   }
 }
