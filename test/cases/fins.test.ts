@@ -1,9 +1,20 @@
+import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { type Case, layOut, readCase } from '../../cases/index.ts';
 import { band, commonPoint, crossesItself, distanceTo, inside, signedArea } from '../../cases/polygon.ts';
+import { CaseError } from '../../solver/index.ts';
 
 const base = 'channel: {gap: 8 mm, height: 100 mm}\ngas: {supply: 0.4 m3/(m2 h)}\n';
 const withFins = (fins: string): Case => readCase(`${base}fins:\n  - ${fins}\n`, 'fins.yaml');
+/** The case, or undefined where it is refused. */
+const accepted = (fins: string): Case | undefined => {
+  try {
+    return withFins(fins);
+  } catch (error) {
+    if (error instanceof CaseError) return undefined;
+    throw error;
+  }
+};
 const solidOf = (panel: Case): { solid: Uint8Array; nx: number; ny: number } => {
   const { setup } = layOut(panel);
   return { solid: setup.solid ?? new Uint8Array(0), nx: setup.nx, ny: setup.ny };
@@ -101,6 +112,39 @@ describe('a curved fin', () => {
       if (away < 0.4 - edge) expect(inside(band(arc, 0.8), radius * Math.cos(angle), radius * Math.sin(angle))).toBe(true);
       if (away > 0.4 + edge) expect(inside(band(arc, 0.8), radius * Math.cos(angle), radius * Math.sin(angle))).toBe(false);
     }
+  });
+
+  it('of any line that is taken has its area on the grid, and an outline that does not cross itself', () => {
+    const step = fc.record({ turn: fc.double({ min: -1.5, max: 1.5, noNaN: true }), length: fc.double({ min: 0.2, max: 4, noNaN: true }) });
+    let taken = 0;
+    fc.assert(
+      fc.property(fc.array(step, { minLength: 1, maxLength: 6 }), (steps) => {
+        let [across, along, heading] = [4, 45, Math.PI / 2];
+        const line = [[across, along]];
+        for (const { turn, length } of steps) {
+          across += length * Math.cos(heading);
+          along += length * Math.sin(heading);
+          heading += turn;
+          line.push([across, along]);
+        }
+        const path = line.map(([a, b]) => `[${a} mm, ${b} mm]`).join(', ');
+        const panel = accepted(`{path: [${path}], thickness: 0.9 mm}`);
+        if (panel === undefined) return;
+        taken++;
+        const [fin] = panel.fins as [[number, number][]];
+        const area = Math.abs(signedArea(fin));
+        const whole = steps.reduce((sum, { length }) => sum + length * 0.9e-6, 0);
+        expect(area / whole).toBeCloseTo(1, 6);
+        expect(crossesItself(fin)).toBe(false);
+        if (fin.some(([a]) => a < 0 || a > 0.008)) return;
+        const cells = solidOf(panel).solid.reduce((sum, cell) => sum + cell, 0);
+        // off by at most the cells along half of the rim
+        expect(Math.abs(cells - area / 4e-8)).toBeLessThan(1 + (whole / 0.9e-3 + 0.9e-3) / 2e-4);
+      }),
+      { seed: 5, numRuns: 300 },
+    );
+    // the rest bends too tightly, crosses itself or leaves no way
+    expect(taken).toBeGreaterThan(100);
   });
 
   it('is the straight fin when its line is straight', () => {

@@ -1,6 +1,8 @@
+import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { type Case, layOut, readCase } from '../../cases/index.ts';
 import { meanArea_m2, sharesByNumber } from '../../cases/mixture.ts';
+import { nextAir_s, onShare, timeWithAir_s } from '../../cases/pulse.ts';
 import { Supply } from '../../cases/release.ts';
 import { createReference } from '../../solver/index.ts';
 import { schedule } from './schedule.ts';
@@ -125,6 +127,32 @@ describe('air on and off in turn', () => {
       const without_s = time_s - Math.floor((time_s + dt_s) / 5) * 3;
       expect(Math.abs(without_s - (steady.times_s[i] ?? Number.NaN))).toBeLessThan(2 * dt_s);
     });
+  });
+
+  it('counts time with air back and forth for any lengths', () => {
+    const length = fc.double({ min: 0.01, max: 100, noNaN: true });
+    fc.assert(
+      fc.property(
+        length,
+        fc.double({ min: 0, max: 100, noNaN: true }),
+        fc.double({ min: 0, max: 1e4, noNaN: true }),
+        (on_s, off_s, air_s) => {
+          const pulse = { pulse: { on_s, off_s } };
+          const time_s = timeWithAir_s(pulse, air_s);
+          const period_s = on_s + off_s;
+          // with air at that moment, and as long with it before as asked
+          const into_s = time_s - Math.floor((time_s + 1e-9) / period_s) * period_s;
+          expect(into_s).toBeLessThan(on_s + 1e-7);
+          expect(Math.floor((time_s + 1e-9) / period_s) * on_s + into_s).toBeCloseTo(air_s, 6);
+          // what comes in a pause waits for its end, and not longer
+          const later_s = nextAir_s(pulse, time_s + off_s / 2);
+          expect(later_s).toBeGreaterThanOrEqual(time_s + off_s / 2);
+          expect(later_s).toBeLessThanOrEqual(time_s + period_s);
+        },
+      ),
+      { seed: 3, numRuns: 500 },
+    );
+    expect(onShare({ pulse: { on_s: 2, off_s: 3 } })).toBe(0.4);
   });
 
   it('that finds its place taken when it goes off comes when it is on again', () => {
