@@ -16,7 +16,7 @@
  * @see Belfort, Davis & Zydney 1994, J. Membr. Sci. 96, 1 (coefficients from memory; 0.807 derived)
  */
 import type { Case, Recording } from '../../cases/index.ts';
-import { byMean, type Estimate, meanOf, NO_ESTIMATE, SIZE } from './estimate.ts';
+import { ANY, byMean, type Estimate, meanOf, NO_ESTIMATE, SIZE } from './estimate.ts';
 import { type Felt, overElements, samplesOf } from './felt.ts';
 
 /** Radii of the table: ten to the decade. */
@@ -84,10 +84,24 @@ export function worstFlux({ case: panel }: Recording, walls: readonly Felt[]): E
   return byMean(series, SIZE);
 }
 
-/** The worst protected radius, m; without an interval. */
+/**
+ * The worst protected radius a, m. There the slope over ln a, -2/3 B + 4/3 S + 3 I of the three mean fluxes, is zero; where the shear of one
+ * sample makes it z instead, ln a moves by -z over the slope's own slope, 4/9 B + 16/9 S + 9 I, to first order.
+ */
 export function worstRadius({ case: panel }: Recording, walls: readonly Felt[]): Estimate {
   const means = meansOf(walls);
-  return { ...NO_ESTIMATE, value: means === undefined ? null : worstRadius_m(means, panel) };
+  const radius_m = means === undefined ? null : worstRadius_m(means, panel);
+  if (means === undefined || radius_m === null) return NO_ESTIMATE;
+  const { brownian, shearInduced, inertialLift } = factorsOf(radius_m, panel);
+  const curvature = (4 / 9) * brownian * means.third + (16 / 9) * shearInduced * means.first + 9 * inertialLift * means.second;
+  const series = overElements(walls, samplesOf(walls), (sums, { magnitude_Pa }) => {
+    for (let i = 0; i < sums.length; i++) {
+      const tau = magnitude_Pa[i];
+      sums[i] -= ((-2 / 3) * brownian * Math.cbrt(tau) + tau * ((4 / 3) * shearInduced + 3 * tau * inertialLift)) / curvature;
+    }
+  });
+  const centre = Math.log(radius_m) - meanOf(series);
+  return { value: radius_m, series: series.map((shift) => centre + shift), range: ANY, at: Math.exp };
 }
 
 function fluxes(radius_m: number, means: Means, panel: Case): BackTransport {

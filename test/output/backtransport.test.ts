@@ -1,6 +1,8 @@
 import { describe, expect, test } from 'vitest';
 import { waterDensity_kg_m3, waterViscosity_Pa_s } from '../../cases/fluids.ts';
 import { type Measures, measure } from '../../output/index.ts';
+import { worstRadius } from '../../output/measures/backtransport.ts';
+import { placesOf } from '../../output/measures/felt.ts';
 import { type Making, makeRecording } from './recordings.ts';
 
 const density_kg_m3 = waterDensity_kg_m3(293.15);
@@ -99,17 +101,28 @@ describe('back-transport', () => {
       const flux = answer(`worst_backtransport_${place}_m_s`);
       expect(flux?.value).toBeCloseTo(worst?.total_m_s ?? Number.NaN, 15);
       expect(flux?.low).toBeLessThan(flux?.value ?? 0);
-      expect(answer(`worst_backtransport_radius_${place}_m`)).toEqual({
-        name: `worst_backtransport_radius_${place}_m`,
-        value: worst?.radius_m,
-        low: null,
-        high: null,
-      });
+      const radius = answer(`worst_backtransport_radius_${place}_m`);
+      expect(radius?.value).toBe(worst?.radius_m);
+      expect(radius?.low).toBeLessThan(radius?.value ?? 0);
+      expect(radius?.high).toBeGreaterThan(radius?.value ?? 1);
     }
     const [left, right, together] = (['left', 'right', 'together'] as const).map(
       (place) => backTransport[place].sizes[20].shearInduced_m_s,
     );
     expect((left + right) / 2 / together).toBeCloseTo(1, 6);
+  });
+
+  test('moves its worst size with the shear as the interval of that size takes it', () => {
+    // shear larger by a share e for a half of the time: the size itself against the mean of its linearised series
+    const e = 0.01;
+    const felt = (share: number) =>
+      makeRecording({ samples: 200, liquid: water, shear: (_, s) => (s % 2 === 0 ? 0.3 : 0.3 * (1 + share)) });
+    const [still, moved] = [felt(0), felt(e)];
+    const places = placesOf(moved);
+    const { series, value } = worstRadius(moved, places.left);
+    const swing = Math.log(worstRadius(felt(0), placesOf(still).left).value ?? 0) - Math.log(value ?? 0);
+    // the mean of the series is ln of the size, and its weaker samples lie higher by twice what the half time moves the size
+    expect(Math.abs((series[0] - series[1]) / (2 * swing) - 1)).toBeLessThan(0.02);
   });
 
   test('is not to be had without shear or without samples', () => {
