@@ -15,8 +15,8 @@ interface Noted {
   walls: Record<WallSide, { elements: { open: number; underFin: number } }>;
 }
 
-/** Passages of bubbles below which a recording is called short: then single ones decide. */
-const FEW_PASSAGES = 10;
+/** Passages of bubbles below which a recording is called short: then single ones decide. `check` warns of as many. */
+const FEW_PASSAGES = 20;
 
 /** What a reader must know about the measures of a recording. */
 export function notesOn(recording: Recording, measures: Noted): string[] {

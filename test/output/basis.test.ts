@@ -34,11 +34,11 @@ describe('what the numbers rest on', () => {
     expect(measure(makeRecording()).basis.independent.left).toBeNull();
   });
 
-  it('is called too short below ten passages, with what to do', () => {
+  it('is called too short below twenty passages, with what to do', () => {
     const few = measure({ ...recording, bubbles: rising(1, 2e-4, 5e-4, 1.2e-3) }).notes.join('\n');
     expect(few).toContain('Too short to be sure: 1 bubble passed the middle of the membrane while it was recorded, worth about');
     expect(few).toContain('lengthen record.span');
-    const many = Array.from({ length: 10 }, (_, i) => rising(i, 2e-4, 5e-4, 1.2e-3)).flat();
+    const many = Array.from({ length: 20 }, (_, i) => rising(i, 2e-4, 5e-4, 1.2e-3)).flat();
     expect(measure({ ...recording, bubbles: many }).notes.join('\n')).not.toContain('Too short');
   });
 
