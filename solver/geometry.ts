@@ -1,7 +1,16 @@
-import { ex, ey, w } from './lattice.ts';
+import { ex, ey, opposite, w } from './lattice.ts';
 import type { Setup } from './setup.ts';
 
-/** A pull from a solid cell: what leaves the fluid cell against `k` comes back along `k`. */
+/**
+ * A pull from a solid cell: what leaves the fluid cell against `k` comes back along `k`, from a face at the share q of the way to the
+ * solid cell. Its slot is filled with weight[0] times what left, and weight[1] times a second population:
+ *
+ *   q < 1/2    2 q, and 1 - 2 q of what left the cell behind, on its way to the fluid cell
+ *   q >= 1/2   1/(2 q), and 1 - 1/(2 q) of what leaves the fluid cell along k
+ *
+ * Halfway, weights 1 and 0, where no face is told and where q < 1/2 but no fluid cell lies behind.
+ * @see Bouzidi, Firdaouss & Lallemand 2001, Phys. Fluids 13, 3452 (linear form; from memory, rederived)
+ */
 interface Link {
   /** solid cell whose slot `k` is filled */
   x: number;
@@ -10,6 +19,8 @@ interface Link {
   /** fluid cell x + ex[k], y + ey[k] (wrapped where a side is periodic) */
   fluidX: number;
   fluidY: number;
+  second: { x: number; y: number; k: number };
+  weight: [number, number];
 }
 
 /** A solid cell next to fluid: it carries a ghost value of phi, made from the weighted mean of its fluid neighbours. */
@@ -49,6 +60,33 @@ function neighbour(setup: Setup, x: number, y: number, k: number): [number, numb
   return [nx, ny];
 }
 
+/**
+ * Share of the way from the fluid cell, one along `k` from the solid cell (x, y), to the solid cell at which the face lies: where the
+ * distance vanishes, by bisection; 1/2 where none is told or it has the same sign at both ends.
+ */
+function wayToFace(setup: Setup, x: number, y: number, k: number): number {
+  const distance = setup.solidDistance;
+  if (!distance || !(distance(x, y) <= 0) || !(distance(x + ex[k], y + ey[k]) > 0)) return 0.5;
+  let [low, high] = [0, 1];
+  for (let n = 0; n < 40; n++) {
+    const q = (low + high) / 2;
+    if (distance(x + (1 - q) * ex[k], y + (1 - q) * ey[k]) > 0) low = q;
+    else high = q;
+  }
+  return high;
+}
+
+function interpolation(
+  q: number,
+  k: number,
+  [x, y]: [number, number],
+  behind: [number, number] | undefined,
+): Pick<Link, 'second' | 'weight'> {
+  if (q >= 0.5) return { second: { x, y, k }, weight: [1 / (2 * q), 1 - 1 / (2 * q)] };
+  if (behind === undefined) return { second: { x, y, k }, weight: [1, 0] };
+  return { second: { x: behind[0], y: behind[1], k: opposite[k] }, weight: [2 * q, 1 - 2 * q] };
+}
+
 /** Links, ghosts and wall weights of a box's solid cells. */
 export function geometry(setup: Setup): Geometry {
   const { nx, ny } = setup;
@@ -67,7 +105,16 @@ export function geometry(setup: Setup): Geometry {
       for (let k = 1; k < 9; k++) {
         const cell = neighbour(setup, x, y, k);
         if (cell === undefined || fluid[cell[1] * nx + cell[0]] === 0) continue;
-        links.push({ x, y, k, fluidX: cell[0], fluidY: cell[1] });
+        const behind = neighbour(setup, cell[0], cell[1], k);
+        const open = behind !== undefined && fluid[behind[1] * nx + behind[0]] === 1;
+        links.push({
+          x,
+          y,
+          k,
+          fluidX: cell[0],
+          fluidY: cell[1],
+          ...interpolation(wayToFace(setup, x, y, k), k, cell, open ? behind : undefined),
+        });
         neighbours.push({ x: cell[0], y: cell[1], weight: w[k] });
       }
       const sum = neighbours.reduce((total, n) => total + n.weight, 0);

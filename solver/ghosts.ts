@@ -20,7 +20,9 @@ export function fillGhosts(box: Box, set: Float64Array[]): void {
   const { nx, ny, setup, geometry } = box;
   const { left, right, bottom, top } = setup.sides;
   const at = (x: number, y: number): number => indexOf(box, x, y);
-  for (const { x, y, k, fluidX, fluidY } of geometry.links) set[k][at(x, y)] = set[opposite[k]][at(fluidX, fluidY)];
+  for (const { x, y, k, fluidX, fluidY, second, weight } of geometry.links) {
+    set[k][at(x, y)] = weight[0] * set[opposite[k]][at(fluidX, fluidY)] + weight[1] * set[second.k][at(second.x, second.y)];
+  }
   wrap(box, set);
   if (bottom !== 'periodic') {
     reflect(box, set, bottom, 'x', 0, 1);

@@ -1,7 +1,7 @@
 // The header of the kernel's memory: one f64 per entry, at byte 8 * entry. Literals only, compiled by both compilers.
 
 /** checked by the host against the kernel's own copy when it is loaded */
-export const VERSION = 5;
+export const VERSION = 6;
 /** bytes kept for the header */
 export const HEADER_BYTES = 1024;
 
@@ -29,7 +29,7 @@ export const AT_MASK = 11;
 export const AT_SKIM = 12;
 /** four rows: first and second cell of the left wall, first and second of the right */
 export const AT_WEIGHTS = 13;
-/** five i32 each: solid x, y, direction, fluid x, y */
+/** eight i32 each: solid x, y, direction, fluid x, y, second x, y, direction; then two f64: their weights */
 export const AT_LINKS = 14;
 export const LINKS = 15;
 /** three i32 each: y, first x, end x */

@@ -53,7 +53,7 @@ export function layMemory(box: Box): MemoryMap {
     [H.AT_SKIM, take(strideBytes)],
     [H.AT_WEIGHTS, take(4 * strideBytes)],
     [H.AT_SECTIONS, take(3 * strideBytes)],
-    [H.AT_LINKS, take(20 * geometry.links.length)],
+    [H.AT_LINKS, take(48 * geometry.links.length)],
     [H.AT_RUNS, take(12 * geometry.runs.length)],
     [H.AT_GHOSTS, take(24 * (geometry.ghosts.length + neighbours))],
     [H.AT_RETURNS, take(36 * walls.returns.length)],
@@ -118,9 +118,10 @@ function writeLists(box: Box, map: MemoryMap): void {
   header[H.LINKS] = geometry.links.length;
   header[H.RUNS] = geometry.runs.length;
   header[H.GHOSTS] = geometry.ghosts.length;
-  const links = new Int32Array(memory.buffer, header[H.AT_LINKS], 5 * geometry.links.length);
-  geometry.links.forEach(({ x, y, k, fluidX, fluidY }, n) => {
-    links.set([x, y, k, fluidX, fluidY], 5 * n);
+  geometry.links.forEach(({ x, y, k, fluidX, fluidY, second, weight }, n) => {
+    const link = header[H.AT_LINKS] + 48 * n;
+    new Int32Array(memory.buffer, link, 8).set([x, y, k, fluidX, fluidY, second.x, second.y, second.k]);
+    new Float64Array(memory.buffer, link + 32, 2).set(weight);
   });
   new Int32Array(memory.buffer, header[H.AT_RUNS], 3 * geometry.runs.length).set(geometry.runs.flat());
   const ghosts = geometry.ghosts.flatMap(({ x, y, neighbours }) => [

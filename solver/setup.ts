@@ -45,6 +45,11 @@ export interface Setup {
   contactAngle?: number;
   /** 1 where a cell is solid; shape (ny, nx), x contiguous: index y * nx + x */
   solid?: Uint8Array;
+  /**
+   * Distance of a point from the faces of the solids, cells, positive in the fluid; asked up to one cell beyond the box. It tells where
+   * between a fluid and a solid cell the face lies; without it, halfway
+   */
+  solidDistance?: (x: number, y: number) => number;
   /** acceleration on (rho - liquid density), times `buoyancy`; the hydrostatic pressure of the liquid is left out of p */
   gravity?: Vector;
   /** factor on the density difference in the buoyancy, where the gas is heavier than the real one; 1 by default */

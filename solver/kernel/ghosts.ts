@@ -56,15 +56,16 @@ export function fillReturns<T>(): void {
   }
 }
 
-/** Bounce-back of solids: each link's slot in the solid cell takes what left the fluid cell towards it. */
+/** Bounce-back of solids: each link's slot in the solid cell takes what left the fluid cell towards it, and a share of a second population. */
 function fillLinks<T>(): void {
   const count = <i32>entry(H.LINKS);
   let link = address(H.AT_LINKS);
-  for (let n = 0; n < count; n++, link += 20) {
+  for (let n = 0; n < count; n++, link += 48) {
     const k = load<i32>(link, 8);
     const to = at<T>(load<i32>(link), load<i32>(link, 4), k);
-    const from = at<T>(load<i32>(link, 12), load<i32>(link, 16), opposite(k));
-    store<T>(to, load<T>(from));
+    const left = <f64>load<T>(at<T>(load<i32>(link, 12), load<i32>(link, 16), opposite(k)));
+    const second = <f64>load<T>(at<T>(load<i32>(link, 20), load<i32>(link, 24), load<i32>(link, 28)));
+    store<T>(to, <T>(load<f64>(link, 32) * left + load<f64>(link, 40) * second));
   }
 }
 

@@ -1,15 +1,11 @@
 import type { Row } from './row.ts';
 
-const STAIRCASE = 'the cylinders are staircases, whose drag falls unevenly with the grid; interpolated walls are to come';
 const BENT = 'far from 90 deg the angle comes out more extreme than asked, on any grid';
 const SOUND = 'the bubble starts with its Laplace pressure alone; sound of the first moments probably swings through the speed';
 const LINE = 'beside the wall where the interface meets it; flow reflects there like a mirror and the interface straight back';
 
 /** Gates not held yet: check, words the quantity begins with, why, and the figure that was seen. */
 export const KNOWN: readonly { check: string; quantity: string; reason: string }[] = [
-  { check: 'cylinders', quantity: 'c 0.05', reason: `1.1 % at 64 cells: ${STAIRCASE}` },
-  { check: 'cylinders', quantity: 'c 0.1', reason: `1.5 % at 64 cells: ${STAIRCASE}` },
-  { check: 'cylinders', quantity: 'c 0.2', reason: `1.3 % at 64 cells: ${STAIRCASE}` },
   {
     ...{ check: 'laplace', quantity: 'capillary number of parasitic currents' },
     reason: '2.8e-4 at R 20, in the gas beside the interface: force and pressure gradient do not cancel to the last digit there',

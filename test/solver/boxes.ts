@@ -59,6 +59,18 @@ export function cornerSolids(nx: number, ny: number): Uint8Array {
   return solid;
 }
 
+/** A distance that is negative in solids and puts their faces at uneven places between cells; periodic in the box. */
+export function unevenFaces(nx: number, ny: number, solid: Uint8Array, seed: number): NonNullable<Setup['solidDistance']> {
+  const next = randomNumbers(seed);
+  const corners = Float64Array.from({ length: nx * ny }, (_, i) => (solid[i] === 1 ? -1 : 1) * (0.05 + next()));
+  const at = (x: number, y: number): number => corners[(((y % ny) + ny) % ny) * nx + (((x % nx) + nx) % nx)];
+  return (x, y) => {
+    const [x0, y0] = [Math.floor(x), Math.floor(y)];
+    const [a, b] = [x - x0, y - y0];
+    return (1 - b) * ((1 - a) * at(x0, y0) + a * at(x0 + 1, y0)) + b * ((1 - a) * at(x0, y0 + 1) + a * at(x0 + 1, y0 + 1));
+  };
+}
+
 /** Two fluids at a density ratio of 10 and a viscosity ratio of 5: mild enough for states without any smoothness. */
 export const MILD_PAIR = {
   liquid: { density: 1, viscosity: 0.05 },

@@ -2,7 +2,7 @@ import { describe, expect, it } from 'vitest';
 import { CS2, Q, W0, W1, W2 } from '../../solver/constants.ts';
 import { createReference, createSimulation, type Drive, type Samples, type Setup, type Simulation } from '../../solver/index.ts';
 import { ex, ey, mirrorX, mirrorY, opposite, w } from '../../solver/lattice.ts';
-import { cornerSolids, FIELDS, MILD_PAIR, randomState, SIDE_KINDS, type Sides } from './boxes.ts';
+import { cornerSolids, FIELDS, MILD_PAIR, randomState, SIDE_KINDS, type Sides, unevenFaces } from './boxes.ts';
 
 // f32 has lanes of four and f64 lanes of two: lengths below, at and above one, two and eight groups.
 const LENGTHS = [1, 2, 3, 4, 5, 7, 8, 9, 31, 32, 33];
@@ -22,13 +22,15 @@ const DRIVES: Record<string, Drive> = { loss: { kind: 'loss', coefficient: 0.5 }
 function awkwardSetup(nx: number, ny: number, sides: Sides, twoPhase: boolean, precision: 'f32' | 'f64'): Setup {
   const { liquid, gas, surfaceTension } = MILD_PAIR;
   const seed = 1000 * nx + ny;
+  const solid = cornerSolids(nx, ny);
   return {
     nx,
     ny,
     sides,
     liquid,
     ...(twoPhase ? { gas, surfaceTension, contactAngle: 1, interfaceWidth: 4, mobility: 0.08, buoyancy: 1.1 } : {}),
-    solid: cornerSolids(nx, ny),
+    solid,
+    solidDistance: unevenFaces(nx, ny, solid, seed),
     gravity: { x: -1e-4, y: 3e-5 },
     force: { x: 1e-5, y: -2e-5 },
     drive: seed % 2 === 0 ? DRIVES.loss : DRIVES.upflow,

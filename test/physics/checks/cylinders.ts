@@ -1,7 +1,7 @@
 /**
  * Slow flow through a square array of cylinders: drag per length over (eta U), U the mean velocity over the whole cell of the array,
  * against the solid fraction c. Sangani & Acrivos 1982, Int. J. Multiphase Flow 8, 193 [M].
- * The force on the liquid stands for a pressure gradient, so the drag is that times the whole cell. The cylinders are staircases.
+ * The force on the liquid stands for a pressure gradient, so the drag is that times the whole cell.
  */
 import { createSimulation } from '../../../solver/index.ts';
 import { advance, PERIODIC } from '../channel.ts';
@@ -16,10 +16,20 @@ const ETA = 0.125;
 export async function drag(N: number, c: number): Promise<number> {
   const radius = N * Math.sqrt(c / Math.PI);
   const middle = N / 2 - 0.5;
-  const solid = Uint8Array.from({ length: N * N }, (_, i) => (Math.hypot((i % N) - middle, Math.floor(i / N) - middle) < radius ? 1 : 0));
+  const solidDistance = (x: number, y: number): number => Math.hypot(x - middle, y - middle) - radius;
+  const solid = Uint8Array.from({ length: N * N }, (_, i) => (solidDistance(i % N, Math.floor(i / N)) < 0 ? 1 : 0));
   const G = (1e-4 * ETA * DRAG[c]) / (N * N);
   const liquid = { density: 1, viscosity: ETA };
-  const s = await createSimulation({ nx: N, ny: N, sides: PERIODIC, liquid, solid, force: { x: G, y: 0 }, precision: 'f64' });
+  const s = await createSimulation({
+    nx: N,
+    ny: N,
+    sides: PERIODIC,
+    liquid,
+    solid,
+    solidDistance,
+    force: { x: G, y: 0 },
+    precision: 'f64',
+  });
   let upflow = 0;
   for (let n = 0; n < 200; n++) {
     advance(s, N * N);

@@ -5,6 +5,7 @@ import { check as cavity } from './cavity.ts';
 import { check as contactAngle } from './contact-angle.ts';
 import { check as cylinders } from './cylinders.ts';
 import { check as film } from './film.ts';
+import { check as inclined } from './inclined.ts';
 import { drift, check as laplace } from './laplace.ts';
 import { check as oscillating } from './oscillating.ts';
 import { check as poiseuille } from './poiseuille.ts';
