@@ -16,7 +16,7 @@ import { check as twoLayer } from './two-layer.ts';
 
 /** All checks in the order of the table. */
 export const CHECKS: readonly Check[] = [
-  ...[poiseuille, oscillating, taylorGreen, cavity, cylinders],
+  ...[poiseuille, oscillating, taylorGreen, cavity, cylinders, inclined],
   ...[twoLayer, film, laplace, capillaryWave, contactAngle],
   ...[risingBubble, stallCheck, longCheck, atRest, drift],
 ];
