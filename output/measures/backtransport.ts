@@ -55,8 +55,9 @@ interface Factors {
 }
 
 export function backTransport(walls: readonly Felt[], panel: Case): BackTransportMeasures {
-  const means = meansOf(walls);
-  if (means === undefined) return { sizes: [], worst: null };
+  const powers = powersOf(walls);
+  if (powers === undefined) return { sizes: [], worst: null };
+  const means = meansOf(powers);
   const decades = Math.round(Math.log10(LARGEST_m / SMALLEST_m));
   const radii_m = Array.from({ length: decades * PER_DECADE + 1 }, (_, i) => Number((SMALLEST_m * 10 ** (i / PER_DECADE)).toPrecision(6)));
   const worst_m = worstRadius_m(means, panel);
@@ -71,17 +72,15 @@ export function backTransport(walls: readonly Felt[], panel: Case): BackTranspor
  * as the flux at that radius does: its interval is that of a mean over time.
  */
 export function worstFlux({ case: panel }: Recording, walls: readonly Felt[]): Estimate {
-  const means = meansOf(walls);
-  const radius_m = means === undefined ? null : worstRadius_m(means, panel);
-  if (radius_m === null) return NO_ESTIMATE;
+  const powers = powersOf(walls);
+  const radius_m = powers === undefined ? null : worstRadius_m(meansOf(powers), panel);
+  if (powers === undefined || radius_m === null) return NO_ESTIMATE;
   const { brownian, shearInduced, inertialLift } = factorsOf(radius_m, panel);
-  const series = overElements(walls, samplesOf(walls), (sums, { magnitude_Pa }) => {
-    for (let i = 0; i < sums.length; i++) {
-      const tau = magnitude_Pa[i];
-      sums[i] += brownian * Math.cbrt(tau) + tau * (shearInduced + tau * inertialLift);
-    }
-  });
-  return byMean(series, SIZE);
+  const { third, first, second } = powers;
+  return byMean(
+    first.map((tau, i) => brownian * third[i] + shearInduced * tau + inertialLift * second[i]),
+    SIZE,
+  );
 }
 
 /**
@@ -89,19 +88,16 @@ export function worstFlux({ case: panel }: Recording, walls: readonly Felt[]): E
  * sample makes it z instead, ln a moves by -z over the slope's own slope, 4/9 B + 16/9 S + 9 I, to first order.
  */
 export function worstRadius({ case: panel }: Recording, walls: readonly Felt[]): Estimate {
-  const means = meansOf(walls);
+  const powers = powersOf(walls);
+  const means = powers && meansOf(powers);
   const radius_m = means === undefined ? null : worstRadius_m(means, panel);
-  if (means === undefined || radius_m === null) return NO_ESTIMATE;
+  if (powers === undefined || means === undefined || radius_m === null) return NO_ESTIMATE;
   const { brownian, shearInduced, inertialLift } = factorsOf(radius_m, panel);
   const curvature = (4 / 9) * brownian * means.third + (16 / 9) * shearInduced * means.first + 9 * inertialLift * means.second;
-  const series = overElements(walls, samplesOf(walls), (sums, { magnitude_Pa }) => {
-    for (let i = 0; i < sums.length; i++) {
-      const tau = magnitude_Pa[i];
-      sums[i] -= ((-2 / 3) * brownian * Math.cbrt(tau) + tau * ((4 / 3) * shearInduced + 3 * tau * inertialLift)) / curvature;
-    }
-  });
-  const centre = Math.log(radius_m) - meanOf(series);
-  return { value: radius_m, series: series.map((shift) => centre + shift), range: ANY, at: Math.exp };
+  const { third, first, second } = powers;
+  const slope = first.map((tau, i) => (-2 / 3) * brownian * third[i] + (4 / 3) * shearInduced * tau + 3 * inertialLift * second[i]);
+  const centre = Math.log(radius_m) + meanOf(slope) / curvature;
+  return { value: radius_m, series: slope.map((z) => centre - z / curvature), range: ANY, at: Math.exp };
 }
 
 function fluxes(radius_m: number, means: Means, panel: Case): BackTransport {
@@ -148,14 +144,42 @@ interface Means {
   second: number;
 }
 
-function meansOf(walls: readonly Felt[]): Means | undefined {
-  if (walls.length === 0) return undefined;
-  const mean = (power: (magnitude_Pa: number) => number): number =>
-    meanOf(
-      overElements(walls, samplesOf(walls), (sums, { magnitude_Pa }) => {
-        for (let i = 0; i < sums.length; i++) sums[i] += power(magnitude_Pa[i]);
-      }),
-    );
-  const first = mean((tau) => tau);
-  return Number.isNaN(first) ? undefined : { third: mean(Math.cbrt), first, second: mean((tau) => tau * tau) };
+function meansOf({ third, first, second }: Powers): Means {
+  return { third: meanOf(third), first: meanOf(first), second: meanOf(second) };
+}
+
+/** The same means sample by sample, over the elements alone; shape (samples). */
+type Powers = Record<keyof Means, Float64Array>;
+
+/** Of each wall, made on first use: cube roots are dear. */
+const made = new WeakMap<Felt, Powers>();
+
+/** Over the open elements of all walls; undefined where there is no value. */
+function powersOf(walls: readonly Felt[]): Powers | undefined {
+  const open = walls.filter(({ surface }) => surface.elements.length > 0 && surface.samples > 0);
+  if (open.length === 0) return undefined;
+  const elements = open.reduce((sum, { surface }) => sum + surface.elements.length, 0);
+  const over = (power: keyof Means): Float64Array => {
+    const sums = new Float64Array(samplesOf(open));
+    for (const wall of open) {
+      const weight = wall.surface.elements.length / elements;
+      wallPowers(wall)[power].forEach((mean, i) => {
+        sums[i] += weight * mean;
+      });
+    }
+    return sums;
+  };
+  return { third: over('third'), first: over('first'), second: over('second') };
+}
+
+function wallPowers(wall: Felt): Powers {
+  const held = made.get(wall);
+  if (held !== undefined) return held;
+  const over = (power: (magnitude_Pa: number) => number): Float64Array =>
+    overElements([wall], wall.surface.samples, (sums, { magnitude_Pa }) => {
+      for (let i = 0; i < sums.length; i++) sums[i] += power(magnitude_Pa[i]);
+    });
+  const powers = { third: over(Math.cbrt), first: over((tau) => tau), second: over((tau) => tau * tau) };
+  made.set(wall, powers);
+  return powers;
 }
