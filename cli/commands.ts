@@ -1,4 +1,5 @@
 import yargs from 'yargs';
+import { UsageError } from '../solver/index.ts';
 import { OPTIONS } from './options.ts';
 import { version } from './version.ts';
 import { numberWithin, required, rewordComplaint, single } from './words.ts';
@@ -6,6 +7,11 @@ import { numberWithin, required, rewordComplaint, single } from './words.ts';
 const CASE = { type: 'string', describe: 'a case file (YAML), or the name of a ready-made case' } as const;
 const PLAN = { type: 'string', describe: 'a plan file (YAML), or the folder of a sweep' } as const;
 const NAME = { type: 'string', describe: 'a ready-made case' } as const;
+const RUNS = {
+  type: 'string',
+  array: true,
+  describe: 'run folders, case files (YAML) or ready-made cases, two geometries at least',
+} as const;
 
 /** Pictures a run may ask for: more fill a disk and help nobody. */
 const FRAMES = { least: 2, most: 10_000, whole: true };
@@ -16,6 +22,8 @@ const SWEEP_FRAMES = { least: 0, most: 10_000, whole: true };
 const AT_ONCE = { least: 1, most: 1000, whole: true };
 /** Percent of a value that an error of the grid may have. */
 const WITHIN = { least: 0.1, most: 50, whole: false };
+/** Runs of one case: three are the least whose spread tells something, more than hundreds a sweep is for. */
+const SEEDS = { least: 1, most: 100, whole: true };
 
 const CAUTION =
   'Results are for screening, not for design. Compressed air, chemicals and lifting modules can hurt people: ' +
@@ -110,6 +118,36 @@ export async function commandLine(words: string[]): Promise<number> {
           frames: numberWithin('frames', single('frames', args.frames) ?? '', SWEEP_FRAMES),
           checkpoint_s: numberWithin('checkpoint', single('checkpoint', args.checkpoint) ?? '', CHECKPOINT),
           quiet: args.quiet,
+        });
+      },
+    )
+    .command(
+      'compare [runs..]',
+      'rank geometries by a measure and say which differences are more than chance',
+      (builder) =>
+        builder
+          .positional('runs', RUNS)
+          .options(OPTIONS.compare)
+          .example('$0 compare tilted-panel vertical-panel --seeds 4', 'computes four runs of each, then compares them')
+          .example('$0 compare runs/*', 'finished runs; those that differ in nothing but the seed are put together'),
+      async (args) => {
+        const runs = args.runs ?? [];
+        if (runs.length === 0)
+          throw new UsageError('', 'compare needs runs or cases, as in swathe compare tilted-panel vertical-panel --seeds 4');
+        const by = single('by', args.by) ?? '';
+        const seeds = single('seeds', args.seeds);
+        const atOnce = single('at-once', args['at-once']);
+        const out = single('out', args.out);
+        const { compare } = await import('./compare.ts');
+        exit = await compare({
+          words: runs,
+          by,
+          sets: args.set ?? [],
+          seeds: seeds === undefined ? undefined : numberWithin('seeds', seeds, SEEDS),
+          out,
+          atOnce: atOnce === undefined ? undefined : numberWithin('at-once', atOnce, AT_ONCE),
+          quiet: args.quiet,
+          given: words,
         });
       },
     )

@@ -44,6 +44,19 @@ export const OPTIONS = {
     checkpoint: { type: 'string', requiresArg: true, default: '10', describe: 'seconds of wall time between checkpoints' },
     quiet: { type: 'boolean', default: false, describe: 'say nothing but errors' },
   },
+  compare: {
+    by: {
+      type: 'string',
+      requiresArg: true,
+      default: 'swept_together',
+      describe: 'measure to rank by, a name from the answers in summary.json',
+    },
+    seeds: { type: 'string', requiresArg: true, describe: 'runs of each case, with seeds counted up from its own; one without it' },
+    set: SET,
+    out: { type: 'string', requiresArg: true, describe: 'folder for the comparison; runs/compare-<names> without it' },
+    'at-once': { type: 'string', requiresArg: true, describe: 'runs to compute side by side; as many as cores without it' },
+    quiet: { type: 'boolean', default: false, describe: 'say nothing but errors' },
+  },
   gallery: {
     copy: { type: 'string', requiresArg: true, describe: 'folder to copy to; files that are there are kept' },
   },

@@ -9,7 +9,7 @@ import { readSource } from './source.ts';
 import { summaryPage, sureLine } from './summary.ts';
 import { version } from './version.ts';
 import { CAUTION } from './warnings.ts';
-import { shellWord } from './words.ts';
+import { commandToGoOn } from './words.ts';
 
 /** What the command line asks of a run. */
 export interface RunOptions {
@@ -147,10 +147,4 @@ async function fail(folder: RunFolder, error: unknown): Promise<void> {
 function stoppedPage({ history }: Recording, path: string, { words }: RunOptions): string {
   const reached = plain(history.time_s.at(-1) ?? 0);
   return `stopped at ${reached} s; the files so far and a checkpoint are in ${path}. To go on:\n  ${commandToGoOn(words)}\n`;
-}
-
-/** The command as it was given, for the shell it was given in, but for starting over. */
-function commandToGoOn(words: readonly string[]): string {
-  const program = process.env.npm_command === 'exec' ? 'npx swathe' : 'swathe';
-  return [program, ...words.filter((word) => !/^--again(=|$)/.test(word)).map(shellWord)].join(' ');
 }

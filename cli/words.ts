@@ -69,6 +69,12 @@ export function numberWithin(option: string, text: string, limits: { least: numb
 }
 
 /** A word as a shell takes it back: quoted where it has to be. */
-export function shellWord(word: string): string {
+function shellWord(word: string): string {
   return /^[\w./:=@%+-]+$/.test(word) ? word : `'${word.replaceAll("'", "'\\''")}'`;
+}
+
+/** The command as it was given, for the shell it was given in, but for starting over. */
+export function commandToGoOn(words: readonly string[]): string {
+  const program = process.env.npm_command === 'exec' ? 'npx swathe' : 'swathe';
+  return [program, ...words.filter((word) => !/^--again(=|$)/.test(word)).map(shellWord)].join(' ');
 }

@@ -5,13 +5,29 @@ import type { Answer } from '../measures/answers.ts';
 import { readWhole } from './files.ts';
 
 const figure = z.number().nullable();
-const content = z.object({ answers: z.record(z.string(), z.object({ value: figure, low: figure, high: figure })) });
+const content = z.object({
+  answers: z.record(z.string(), z.object({ value: figure, low: figure, high: figure })),
+  recorded: z.object({ samples: z.number(), every_s: z.number() }),
+});
+
+/** What other runs are held against. */
+interface RunSummary {
+  /** by name, in the order they stand there */
+  answers: Map<string, Answer>;
+  /** time recorded after settling */
+  recorded_s: number;
+}
+
+/** The answers of {@link readSummary}. */
+export async function readAnswers(folder: string): Promise<Map<string, Answer>> {
+  return (await readSummary(folder)).answers;
+}
 
 /**
- * The answers of a finished run by name, from its summary.json, in the order they stand there.
+ * What a finished run tells in its summary.json.
  * @throws OutputError no summary, or not one of ours
  */
-export async function readAnswers(folder: string): Promise<Map<string, Answer>> {
+export async function readSummary(folder: string): Promise<RunSummary> {
   const path = join(folder, 'summary.json');
   const bytes = await readWhole(path);
   if (bytes === undefined) throw new OutputError(path, `${path}: there is no such file; run the case in this folder to its end.`);
@@ -26,5 +42,9 @@ export async function readAnswers(folder: string): Promise<Map<string, Answer>> 
     const [{ path: keys }] = read.error.issues;
     throw new OutputError(path, `${path}: ${keys.join('.')} is not as this version writes it; run the case anew (--again).`);
   }
-  return new Map(Object.entries(read.data.answers).map(([name, answer]) => [name, { name, ...answer }]));
+  const { answers, recorded } = read.data;
+  return {
+    answers: new Map(Object.entries(answers).map(([name, answer]) => [name, { name, ...answer }])),
+    recorded_s: recorded.samples * recorded.every_s,
+  };
 }

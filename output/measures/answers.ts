@@ -80,6 +80,12 @@ function ofPlaces(stem: string, unit: string, range: Range, of: (recording: Reco
   }));
 }
 
+/** Names of all answers, in the order of every list. */
+export const ANSWERS: readonly string[] = HEADLINES.map(({ name }) => name);
+
+/** Answers of which less is better; which way the others go is the reader's to say, more is taken for better. */
+export const LOWER_IS_BETTER: readonly string[] = ['air_power_W_m2', 'air_energy_J_m3', ...PLACES.map((place) => `settled_cover_${place}`)];
+
 /** Values that an answer can have. */
 export function rangeOf(name: string): Range {
   return headlineOf(name).range;

@@ -12,7 +12,7 @@ function uniform(seed: number): () => number {
 }
 
 /** Standard normal numbers, by two uniform ones each. */
-function normal(seed: number): () => number {
+export function normal(seed: number): () => number {
   const next = uniform(seed);
   return () => Math.sqrt(-2 * Math.log(next())) * Math.cos(2 * Math.PI * next());
 }
