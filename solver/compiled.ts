@@ -1,19 +1,25 @@
 import ndarray from 'ndarray';
 import { type Box, resolve } from './box.ts';
-import { Q } from './constants.ts';
+import { BLOCK, Q } from './constants.ts';
 import * as H from './header.ts';
 import { layMemory, type MemoryMap, numbers } from './memory.ts';
 import { Recorder } from './recorder.ts';
 import type { Setup } from './setup.ts';
 import type { Field, Samples, Simulation, Status } from './simulation.ts';
 import { equilibriumState, placeCircle } from './state.ts';
+import { endTeam, startTeam, teamWords } from './team.ts';
 
 interface Kernel {
   version(): number;
   populations(y: number): number;
   advance32(steps: number, sampleEvery: number): number;
   advance64(steps: number, sampleEvery: number): number;
+  wake32(): void;
+  wake64(): void;
 }
+
+/** Ends the threads of simulations that nobody holds any more. */
+const abandoned = new FinalizationRegistry<WebAssembly.Memory>(endTeam);
 
 /** The simulation on the compiled kernel: memory, start, samples and state; every step is the kernel's. */
 export class Compiled implements Simulation {
@@ -29,9 +35,10 @@ export class Compiled implements Simulation {
 
   /**
    * @param code the kernel's module
+   * @param threads most threads that see to a step; a box without gas takes one
    * @throws {RangeError} on a setup that cannot be computed
    */
-  static async create(setup: Setup, code: WebAssembly.Module): Promise<Compiled> {
+  static async create(setup: Setup, code: WebAssembly.Module, threads: number): Promise<Compiled> {
     const box = resolve(setup);
     const map = layMemory(box);
     const env = {
@@ -41,7 +48,10 @@ export class Compiled implements Simulation {
       },
     };
     const { exports } = await WebAssembly.instantiate(code, { env });
-    return new Compiled(box, map, exports as unknown as Kernel);
+    const simulation = new Compiled(box, map, exports as unknown as Kernel);
+    const blocks = box.twoPhase ? Math.ceil(box.ny / BLOCK) : 1;
+    if ((await startTeam(map, code, threads, blocks)) > 1) abandoned.register(simulation, map.memory, simulation);
+    return simulation;
   }
 
   private constructor(box: Box, map: MemoryMap, kernel: Kernel) {
@@ -144,6 +154,7 @@ export class Compiled implements Simulation {
   }
 
   placeGas(circle: { x: number; y: number; radius: number }): number {
+    if (this.box.twoPhase) this.kernel[this.map.bytesPerNumber === 8 ? 'wake64' : 'wake32']();
     const added = placeCircle(this.box, circle, {
       phi: (x, y) => this.phi.get(x, y),
       ux: (x, y) => this.ux.get(x, y),
@@ -162,7 +173,11 @@ export class Compiled implements Simulation {
 
   /** The whole memory: header, populations, fields. */
   save(): Uint8Array {
-    return new Uint8Array(this.map.memory.buffer).slice();
+    const image = new Uint8Array(this.map.memory.buffer).slice();
+    teamWords(image).fill(0);
+    // any number of threads goes on alike
+    new Float64Array(image.buffer)[H.THREADS] = 0;
+    return image;
   }
 
   restore(image: Uint8Array): void {
@@ -170,6 +185,17 @@ export class Compiled implements Simulation {
     if (image.length !== memory.length) {
       throw new RangeError(`restore: image holds ${image.length} bytes; this box needs ${memory.length}`);
     }
+    const words = teamWords(memory).slice();
+    const threads = this.map.header[H.THREADS];
     memory.set(image);
+    teamWords(memory).set(words);
+    this.map.header[H.THREADS] = threads;
+  }
+
+  dispose(): void {
+    if (this.map.header[H.THREADS] === 1) return;
+    this.map.header[H.THREADS] = 1;
+    abandoned.unregister(this);
+    endTeam(this.map.memory);
   }
 }

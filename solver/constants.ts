@@ -11,3 +11,14 @@ export const W0 = 4.0 / 9.0;
 export const W1 = 1.0 / 9.0;
 /** weight along a diagonal */
 export const W2 = 1.0 / 36.0;
+
+/** cells of a tile of one row, see kernel/tiles.ts */
+export const TILE = 16;
+/** rows of a block, over which sums are made in one go */
+export const BLOCK = 4;
+/** where the words begin by which threads agree, which are no part of the state, and their bytes; see kernel/team.ts */
+export const AT_TEAM = 1024;
+export const TEAM_BYTES = 512;
+/** words of the host: calls so far; 1 for the end */
+export const AT_CALLS = 1024;
+export const AT_QUIT = 1088;

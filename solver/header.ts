@@ -1,7 +1,7 @@
 // The header of the kernel's memory: one f64 per entry, at byte 8 * entry. Literals only, compiled by both compilers.
 
 /** checked by the host against the kernel's own copy when it is loaded */
-export const VERSION = 6;
+export const VERSION = 7;
 /** bytes kept for the header */
 export const HEADER_BYTES = 1024;
 
@@ -37,7 +37,6 @@ export const AT_RUNS = 16;
 export const RUNS = 17;
 /** f64: x, y, n, then n times x, y, weight */
 export const AT_GHOSTS = 18;
-export const GHOSTS = 19;
 /** per sample: four f64 (step, upflow, gas area, skimmed), then four rows of nx f32 (shear left, right, phi left, right) */
 export const AT_SAMPLES = 20;
 /** samples in the buffer */
@@ -78,7 +77,7 @@ export const SOUND_DAMPING = 49;
 export const NU0 = 50;
 /** 1 / (gas speed limit)^2 */
 export const GAS_LIMIT = 51;
-/** three rows: the sums of ux and of gas over each section so far; what sound damping takes from ux in the next step */
+/** three rows: the sums of velocity and of gas over each section; what sound damping takes from ux */
 export const AT_SECTIONS = 54;
 
 // ---- boxes with gas: what arrives at each cell
@@ -97,12 +96,40 @@ export const AT_N20 = 61;
 export const AT_N11 = 62;
 export const AT_J10 = 63;
 export const AT_J01 = 75;
-/** nine i32 each: place x, y, direction; then the same of the stand-in of f and of that of g */
+/** runs of what walls return, four i32 each: address it goes to, of the stand-in of f, of that of g, bytes; g goes to the same population of g */
 export const AT_RETURNS = 76;
-export const RETURNS = 77;
 /** f64: place, n, then n times cell, cell behind, 1 if there is one, speed of the wall along x, along y; places in bytes from cell (0, 0) */
 export const AT_WALL_GHOSTS = 78;
-export const WALL_GHOSTS = 79;
+/** ny + 1 i32 each: the address in AT_RETURNS, AT_GHOSTS, AT_WALL_GHOSTS where the entries that row y sees to begin */
+export const AT_RETURN_ROWS = 77;
+export const AT_GHOST_ROWS = 79;
+export const AT_WALL_GHOST_ROWS = 80;
+
+// ---- boxes with gas: tiles of one row and TILE cells, a byte each
+/** bytes of a row of tiles; the last four tell the work in the row */
+export const TILE_STRIDE = 81;
+/** what is done in a tile from the next collision on, and what was done as populations arrived; see kernel/tiles.ts */
+export const AT_TILES = 82;
+export const AT_WAS = 83;
+/** 1 where a tile holds gas or interface */
+export const AT_NEAR = 84;
+/** 1 where a tile holds fluid */
+export const AT_FLUID = 85;
+/** 1: tiles are to be told apart in the next step, whatever its number */
+export const STALE = 86;
+/** 1: every tile is active */
+export const ALL_ACTIVE = 87;
+
+// ---- sums, made in an order that does not depend on threads
+/** four f64 per row: sum of ux, of z, of what is skimmed of z, largest u^2 */
+export const AT_ROWS = 88;
+/** per block of BLOCK rows two rows: sums of m and of gas over each section of it */
+export const AT_BLOCKS = 89;
+
+// ---- what the threads of a call are to do
+export const THREADS = 90;
+export const ASKED_STEPS = 91;
+export const ASKED_SAMPLES = 92;
 
 // ---- state
 export const STEP = 64;

@@ -1,6 +1,9 @@
 import type { Box } from './box.ts';
+import { BLOCK } from './constants.ts';
 import * as H from './header.ts';
+import { listBytes, writeLists } from './lists.ts';
 import type { Side } from './setup.ts';
+import { tileBytes, writeTiles } from './tiles.ts';
 import { wallSpeed } from './walls.ts';
 
 /** First byte the host gives out: the header lies at 0, the kernel's own statics at 65536. */
@@ -31,7 +34,7 @@ export interface MemoryMap {
  *     | 16 bytes, the last number is ghost -1 | cells, padded to whole groups | 16 bytes |
  */
 export function layMemory(box: Box): MemoryMap {
-  const { nx, ny, geometry, setup, walls } = box;
+  const { nx, ny, setup } = box;
   const bytesPerNumber = setup.precision === 'f64' ? 8 : 4;
   const lanes = 16 / bytesPerNumber;
   const strideBytes = 32 + Math.ceil(nx / lanes) * 16;
@@ -44,7 +47,6 @@ export function layMemory(box: Box): MemoryMap {
     return at;
   };
   const ring = ny + 3;
-  const neighbours = geometry.ghosts.reduce((n, ghost) => n + ghost.neighbours.length, 0);
   const entries: [number, number][] = [
     [H.AT_POPULATIONS, take(ring * 18 * strideBytes) + 16],
     [H.AT_PRESSURE, take((ny + 4) * strideBytes) + 16 + 2 * strideBytes],
@@ -53,26 +55,27 @@ export function layMemory(box: Box): MemoryMap {
     [H.AT_SKIM, take(strideBytes)],
     [H.AT_WEIGHTS, take(4 * strideBytes)],
     [H.AT_SECTIONS, take(3 * strideBytes)],
-    [H.AT_LINKS, take(48 * geometry.links.length)],
-    [H.AT_RUNS, take(12 * geometry.runs.length)],
-    [H.AT_GHOSTS, take(24 * (geometry.ghosts.length + neighbours))],
-    [H.AT_RETURNS, take(36 * walls.returns.length)],
-    [H.AT_WALL_GHOSTS, take(8 * walls.ghosts.reduce((n, ghost) => n + 2 + 5 * ghost.faces.length, 0))],
+    [H.AT_ROWS, take(32 * ny)],
+    [H.AT_BLOCKS, take(2 * Math.ceil(ny / BLOCK) * strideBytes)],
+    ...[...listBytes(box), ...(box.twoPhase ? tileBytes(box) : [])].map(([at, bytes]): [number, number] => [at, take(bytes)]),
     [H.AT_SAMPLES, take(sampleCapacity * sampleBytes)],
   ];
   const pages = Math.ceil(end / 65536);
   if (pages > 32768) throw new RangeError(`setup: ${nx} x ${ny} cells need ${Math.round(end / 2 ** 20)} MiB; the limit is 2048 MiB`);
-  const memory = new WebAssembly.Memory({ initial: pages, maximum: pages, shared: true });
+  const shared = typeof SharedArrayBuffer === 'function';
+  const memory = new WebAssembly.Memory({ initial: pages, maximum: pages, shared });
   const header = new Float64Array(memory.buffer, 0, H.HEADER_BYTES / 8);
   for (const [at, value] of entries) header[at] = value;
   header[H.NX] = nx;
   header[H.NY] = ny;
   header[H.STRIDE] = strideBytes;
   header[H.RING] = ring;
+  header[H.THREADS] = 1;
   const map: MemoryMap = { memory, header, bytesPerNumber, stride: strideBytes / bytesPerNumber, sampleCapacity };
   writeNumbers(box, header);
-  writeLists(box, map);
-  if (box.twoPhase) writeWalls(box, map);
+  writeRows(box, map);
+  writeLists(box, header, bytesPerNumber);
+  if (box.twoPhase) writeTiles(box, header);
   return map;
 }
 
@@ -112,51 +115,20 @@ function writeNumbers(box: Box, header: Float64Array): void {
   header[H.DRIVE_VALUE] = box.drive === undefined ? 0 : box.drive.kind === 'loss' ? box.drive.coefficient : box.drive.target;
 }
 
-function writeLists(box: Box, map: MemoryMap): void {
-  const { nx, ny, geometry } = box;
-  const { header, memory } = map;
-  header[H.LINKS] = geometry.links.length;
-  header[H.RUNS] = geometry.runs.length;
-  header[H.GHOSTS] = geometry.ghosts.length;
-  geometry.links.forEach(({ x, y, k, fluidX, fluidY, second, weight }, n) => {
-    const link = header[H.AT_LINKS] + 48 * n;
-    new Int32Array(memory.buffer, link, 8).set([x, y, k, fluidX, fluidY, second.x, second.y, second.k]);
-    new Float64Array(memory.buffer, link + 32, 2).set(weight);
-  });
-  new Int32Array(memory.buffer, header[H.AT_RUNS], 3 * geometry.runs.length).set(geometry.runs.flat());
-  const ghosts = geometry.ghosts.flatMap(({ x, y, neighbours }) => [
-    ...[x, y, neighbours.length],
-    ...neighbours.flatMap((n) => [n.x, n.y, n.weight]),
-  ]);
-  new Float64Array(memory.buffer, header[H.AT_GHOSTS], ghosts.length).set(ghosts);
+function writeRows({ nx, ny, geometry, skim, twoPhase, walls }: Box, map: MemoryMap): void {
+  const { header, bytesPerNumber } = map;
   const rows = [...geometry.wallWeights.left, ...geometry.wallWeights.right];
   rows.forEach((row, n) => {
     numbers(map, header[H.AT_WEIGHTS] + n * header[H.STRIDE], nx).set(row);
   });
-  numbers(map, header[H.AT_SKIM], nx).set(box.skim);
+  numbers(map, header[H.AT_SKIM], nx).set(skim);
   for (let y = 0; y < ny; y++) {
     numbers(map, header[H.AT_MASK] + y * header[H.STRIDE], nx).set(geometry.fluid.subarray(y * nx, (y + 1) * nx));
   }
-}
-
-function writeWalls(box: Box, map: MemoryMap): void {
-  const { nx, ny, walls } = box;
-  const { header, memory, bytesPerNumber } = map;
-  header[H.RETURNS] = walls.returns.length;
-  header[H.WALL_GHOSTS] = walls.ghosts.length;
-  const returns = new Int32Array(memory.buffer, header[H.AT_RETURNS], 9 * walls.returns.length);
-  walls.returns.forEach(({ x, y, k, flow: f, interface: g }, n) => {
-    returns.set([x, y, k, f.x, f.y, f.k, g.x, g.y, g.k], 9 * n);
-  });
-  const place = (at: { x: number; y: number }): number => at.y * header[H.STRIDE] + at.x * bytesPerNumber;
-  const ghosts = walls.ghosts.flatMap((ghost) => [
-    ...[place(ghost), ghost.faces.length],
-    ...ghost.faces.flatMap((face) => [place(face), place(face.behind ?? face), face.behind ? 1 : 0, face.ux, face.uy]),
-  ]);
-  new Float64Array(memory.buffer, header[H.AT_WALL_GHOSTS], ghosts.length).set(ghosts);
+  if (!twoPhase) return;
   for (let y = -1; y <= ny; y++) {
     const row = walls.open.subarray((y + 1) * (nx + 2), (y + 2) * (nx + 2));
-    numbers(map, header[H.AT_OPEN] + place({ x: -1, y }), nx + 2).set(row);
+    numbers(map, header[H.AT_OPEN] + y * header[H.STRIDE] - bytesPerNumber, nx + 2).set(row);
   }
 }
 

@@ -341,10 +341,10 @@ export class Reference implements Simulation {
     const size = 1 + arrays.reduce((n, a) => n + a.length, 0);
     if (image.length !== size) throw new RangeError(`restore: image holds ${image.length} numbers; this box needs ${size}`);
     this.step = image[0];
-    let at = 1;
-    for (const array of arrays) {
+    arrays.reduce((at, array) => {
       array.set(image.subarray(at, at + array.length));
-      at += array.length;
-    }
+      return at + array.length;
+    }, 1);
   }
+  dispose(): void {}
 }

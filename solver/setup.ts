@@ -77,4 +77,6 @@ export interface Setup {
   speedLimit?: number;
   /** f32 by default; f64 serves validation */
   precision?: 'f32' | 'f64';
+  /** false: every cell takes the whole step, also where there is liquid alone; shows what that saves */
+  tiles?: boolean;
 }

@@ -54,4 +54,6 @@ export interface Simulation {
   /** The whole state as bytes; `restore` of it goes on bit for bit. */
   save(): Uint8Array;
   restore(image: Uint8Array): void;
+  /** Ends the threads, if there are any; the simulation still goes on, on one. */
+  dispose(): void;
 }

@@ -1,15 +1,17 @@
 // Force and both collisions of one row of a box with gas: the formulas of forces.ts and collide.ts, whose texts explain them, in
-// lanes along x. Reads what arrive.ts and pressure.ts left, with ghosts; writes f and g of the row in place, ux and uy, on demand phi
-// (flag FIELDS). Adds ux and gas to the sums of the sections and leaves the largest u^2 of the row in `topU2`.
+// lanes along x. Reads what arrive.ts and pressure.ts left, with ghosts; writes f and g of the row in place, on demand (flag FIELDS)
+// phi, ux and uy. Leaves the sum of ux and the largest u^2 of the row in its sums. Tiles of liquid alone: liquid.ts.
 import * as H from '../header';
 import { FIELDS } from './bulk';
-import { address, entry, fieldRow, nx, row, stride, zRow } from './rows';
+import { collideLiquid, fluxLiquid, INTERFACE } from './liquid';
+import { address, entry, fieldRow, nx, row, rowSums, stride, zRow } from './rows';
+import { ACTIVE, LIQUID, runBytes, SOLID, tileRow, tiles } from './tiles';
 import { tremble } from './tremble';
-import { add, atLeast, atMost, div, get, largest, mad, max, mul, nmad, noneBelow, PURE, put, root, share, splat, sub } from './vector';
+import { add, atLeast, atMost, div, get, largest, mad, max, mul, nmad, noneBelow, PURE, put, root, share, splat, sub, total } from './vector';
 
 const COUPLING: f64 = 0.25;
 
-export let topU2: f64 = 0;
+let flux: f64 = 0;
 
 /** eta at the face between two cells */
 @inline function thickness<T>(z: v128, other: v128, gas: v128, more: v128): v128 {
@@ -21,7 +23,33 @@ export let topU2: f64 = 0;
   return mul<T>(weight, sub<T>(mul<T>(splat<T>(3), sub<T>(beyond, own)), sub<T>(far, behind)));
 }
 
+/** Collides in row y, each tile as it arrived, and leaves what it will need next. */
 export function collideRow<T>(y: i32, flags: i32): void {
+  const was = tileRow(H.AT_WAS, y);
+  const will = tileRow(H.AT_TILES, y);
+  let top = splat<T>(0);
+  let sum: f64 = 0;
+  for (let t = 0; t < tiles(); ) {
+    const state = load<u8>(was + <usize>t);
+    const edge = load<u8>(will + <usize>t) > LIQUID;
+    const start = runBytes<T>(t);
+    do t++; while (load<u8>(was + <usize>t) == state && (state == ACTIVE || load<u8>(will + <usize>t) > LIQUID == edge));
+    const end = min<usize>(runBytes<T>(t), <usize>nx * sizeof<T>());
+    if (state == ACTIVE) {
+      top = collide<T>(y, flags, start, end, top);
+      sum += flux;
+    } else if (state != SOLID) {
+      top = collideLiquid<T>(y, edge ? flags | INTERFACE : flags, start, end, top);
+      sum += fluxLiquid;
+    }
+  }
+  const sums = rowSums(y);
+  store<f64>(sums, sum);
+  store<f64>(sums, largest<T>(top), 24);
+}
+
+/** Everything, from byte `start` to byte `end` of row y; returns the larger of `top` and the largest u^2, lane by lane. */
+function collide<T>(y: i32, flags: i32, start: usize, end: usize, top: v128): v128 {
   const size = sizeof<T>();
   const o0 = row(y);
   const r0 = o0 + 9 * stride;
@@ -49,8 +77,7 @@ export function collideRow<T>(y: i32, flags: i32): void {
   const uxAt = fieldRow(H.AT_UX, y);
   const uyAt = fieldRow(H.AT_UY, y);
   const phiOut = fieldRow(H.AT_PHI, y);
-  const sections = address(H.AT_SECTIONS);
-  const sound = sections + 2 * stride;
+  const sound = address(H.AT_SECTIONS) + 2 * stride;
 
   const rhoLiquid = entry(H.RHO_LIQUID);
   const drho = rhoLiquid - entry(H.RHO_GAS);
@@ -88,10 +115,8 @@ export function collideRow<T>(y: i32, flags: i32): void {
   const gasLimit = splat<T>(entry(H.GAS_LIMIT));
   const tiny = splat<T>(1e-12);
   const notDenormal = splat<T>(1e-20);
-  let top = zero;
-
-  const end = <usize>nx * size;
-  let i: usize = 0;
+  let fluxLanes = zero;
+  let i = start;
   do {
     // phi and its derivatives
     const z = get(zC + i);
@@ -202,12 +227,10 @@ export function collideRow<T>(y: i32, flags: i32): void {
       ux = mul<T>(ux, held);
       uy = mul<T>(uy, held);
     }
-    put(uxAt + i, ux);
-    put(uyAt + i, uy);
     const xx = mul<T>(ux, ux);
     const yy = mul<T>(uy, uy);
     const u2 = add<T>(xx, yy);
-    put(sections + i, add<T>(get(sections + i), ux));
+    fluxLanes = add<T>(fluxLanes, ux);
     top = max<T>(top, u2);
 
     // the flow
@@ -245,7 +268,11 @@ export function collideRow<T>(y: i32, flags: i32): void {
     const odd68 = mul<T>(quarter, sub<T>(q12, q21));
     put(f0 + 6 * stride, sub<T>(even68, odd68));
     put(f0 + 8 * stride, add<T>(even68, odd68));
-    if (flags & FIELDS) put(phiOut + i, phi);
+    if (flags & FIELDS) {
+      put(phiOut + i, phi);
+      put(uxAt + i, ux);
+      put(uyAt + i, uy);
+    }
 
     // the interface
     const skimmed = get(skim + i);
@@ -285,5 +312,6 @@ export function collideRow<T>(y: i32, flags: i32): void {
     put(g0 + 8 * stride, add<T>(gEven68, gOdd68));
     i += 16;
   } while (i < end);
-  topU2 = largest<T>(top);
+  flux = total<T>(fluxLanes);
+  return top;
 }

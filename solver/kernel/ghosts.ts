@@ -6,7 +6,7 @@
 // In a corner of two sides that are not periodic the diagonal goes straight back, with what both walls add.
 import * as H from '../header';
 import { W1, W2 } from '../constants';
-import { address, entry, nx, ny, row, stride } from './rows';
+import { address, entry, listRow, nx, ny, row, stride } from './rows';
 
 const PERIODIC: i32 = 0;
 const SLIP: i32 = 2;
@@ -26,33 +26,43 @@ export function fillGhosts<T>(): void {
   fillLinks<T>();
   const periodicX = <i32>entry(H.SIDE_BOTTOM) == PERIODIC;
   const periodicY = <i32>entry(H.SIDE_LEFT) == PERIODIC;
-  if (periodicX) wrapColumns<T>(0);
+  if (periodicX) for (let y = 0; y < ny; y++) wrapColumns<T>(0, y);
   else {
     reflectColumn<T>(0, 1, H.SIDE_BOTTOM, H.SPEED_BOTTOM, periodicY);
     reflectColumn<T>(nx - 1, -1, H.SIDE_TOP, H.SPEED_TOP, periodicY);
   }
-  if (periodicY) wrapRows<T>(0, periodicX);
+  if (periodicY) {
+    wrapRow<T>(0, 0, periodicX);
+    wrapRow<T>(0, ny - 1, periodicX);
+  }
   else {
     reflectRow<T>(0, 1, H.SIDE_LEFT, H.SPEED_LEFT, periodicX);
     reflectRow<T>(ny - 1, -1, H.SIDE_RIGHT, H.SPEED_RIGHT, periodicX);
   }
-  clearPadding<T>(9);
+  for (let y = 0; y < ny; y++) clearPadding<T>(9, y);
 }
 
-/** Of a box with gas: periodic sides wrap, all walls return what walls.ts lists. */
-export function fillReturns<T>(): void {
+/** Of a box with gas, what row y sees to: periodic sides wrap, all walls return what walls.ts lists. */
+export function fillReturns<T>(y: i32): void {
   const periodicX = <i32>entry(H.SIDE_BOTTOM) == PERIODIC;
   const periodicY = <i32>entry(H.SIDE_LEFT) == PERIODIC;
   for (let set = 0; set < 18; set += 9) {
-    if (periodicX) wrapColumns<T>(set);
-    if (periodicY) wrapRows<T>(set, periodicX);
+    if (periodicX) wrapColumns<T>(set, y);
+    if (periodicY) wrapRow<T>(set, y, periodicX);
   }
-  clearPadding<T>(18);
-  let item = address(H.AT_RETURNS);
-  for (let n = <i32>entry(H.RETURNS); n > 0; n--, item += 36) {
-    const to = at<T>(load<i32>(item), load<i32>(item, 4), load<i32>(item, 8));
-    store<T>(to, load<T>(at<T>(load<i32>(item, 12), load<i32>(item, 16), load<i32>(item, 20))));
-    store<T>(to + 9 * stride, load<T>(at<T>(load<i32>(item, 24), load<i32>(item, 28), 9 + load<i32>(item, 32))));
+  clearPadding<T>(18, y);
+  const end = listRow(H.AT_RETURN_ROWS, y + 1);
+  const g = 9 * stride;
+  for (let item = listRow(H.AT_RETURN_ROWS, y); item < end; item += 16) {
+    const to = <usize>load<i32>(item);
+    const bytes = <usize>load<i32>(item, 12);
+    if (bytes == sizeof<T>()) {
+      store<T>(to, load<T>(<usize>load<i32>(item, 4)));
+      store<T>(to + g, load<T>(<usize>load<i32>(item, 8) + g));
+    } else {
+      memory.copy(to, <usize>load<i32>(item, 4), bytes);
+      memory.copy(to + g, <usize>load<i32>(item, 8) + g, bytes);
+    }
   }
 }
 
@@ -69,12 +79,13 @@ function fillLinks<T>(): void {
   }
 }
 
-/** Solid cells hold zero after a step, whatever the row loop made of them. */
-export function clearSolids<T>(): void {
+/** Solid cells hold zero after a step, whatever the row loop made of them: those of rows `first` to `end`. */
+export function clearSolids<T>(first: i32, end: i32): void {
   const count = <i32>entry(H.RUNS);
   let run = address(H.AT_RUNS);
   for (let n = 0; n < count; n++, run += 12) {
     const y = load<i32>(run);
+    if (y < first || y >= end) continue;
     const x = load<i32>(run, 4);
     const bytes = <usize>(load<i32>(run, 8) - x) * sizeof<T>();
     for (let k = 0; k < 18; k++) memory.fill(at<T>(x, y, k), 0, bytes);
@@ -82,33 +93,30 @@ export function clearSolids<T>(): void {
 }
 
 /** Lanes beyond the last cell: nothing flows in there. Column nx is a ghost as well; only its ex < 0 is ever pulled. */
-function clearPadding<T>(populations: i32): void {
+function clearPadding<T>(populations: i32, y: i32): void {
   const lanes = 16 / <i32>sizeof<T>();
   const padded = (nx + lanes - 1) & -lanes;
   if (padded == nx) return;
-  for (let y = 0; y < ny; y++) {
-    for (let n = 0; n < populations; n++) {
-      if (ex(n % 9) >= 0) store<T>(at<T>(nx, y, n), <T>0);
-      for (let x = nx + 1; x < padded; x++) store<T>(at<T>(x, y, n), <T>0);
-    }
+  for (let n = 0; n < populations; n++) {
+    if (ex(n % 9) >= 0) store<T>(at<T>(nx, y, n), <T>0);
+    for (let x = nx + 1; x < padded; x++) store<T>(at<T>(x, y, n), <T>0);
   }
 }
 
-function wrapColumns<T>(first: i32): void {
-  for (let y = 0; y < ny; y++) {
-    for (let k = 1; k < 9; k++) {
-      if (ex(k) > 0) store<T>(at<T>(-1, y, first + k), load<T>(at<T>(nx - 1, y, first + k)));
-      if (ex(k) < 0) store<T>(at<T>(nx, y, first + k), load<T>(at<T>(0, y, first + k)));
-    }
+function wrapColumns<T>(first: i32, y: i32): void {
+  for (let k = 1; k < 9; k++) {
+    if (ex(k) > 0) store<T>(at<T>(-1, y, first + k), load<T>(at<T>(nx - 1, y, first + k)));
+    if (ex(k) < 0) store<T>(at<T>(nx, y, first + k), load<T>(at<T>(0, y, first + k)));
   }
 }
 
-function wrapRows<T>(first: i32, periodicX: bool): void {
+/** The ghost row beyond the far side, from row y. */
+function wrapRow<T>(first: i32, y: i32, periodicX: bool): void {
   const from = periodicX ? -1 : 0;
   const bytes = <usize>(periodicX ? nx + 2 : nx) * sizeof<T>();
   for (let k = 1; k < 9; k++) {
-    if (ey(k) > 0) memory.copy(at<T>(from, -1, first + k), at<T>(from, ny - 1, first + k), bytes);
-    if (ey(k) < 0) memory.copy(at<T>(from, ny, first + k), at<T>(from, 0, first + k), bytes);
+    if (ey(k) > 0 && y == ny - 1) memory.copy(at<T>(from, -1, first + k), at<T>(from, y, first + k), bytes);
+    if (ey(k) < 0 && y == 0) memory.copy(at<T>(from, ny, first + k), at<T>(from, y, first + k), bytes);
   }
 }
 

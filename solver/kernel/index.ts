@@ -1,170 +1,117 @@
 // Entry points of the kernel. One call does many steps; a failure is a status in the header, never a trap.
-// A step: ghosts; with gas what arrives, its ghosts, the pressure; one collision row after another; the drive, a sample.
+// A step with gas: what walls return; what arrives; ghosts of phi; pressure and its ghosts; collision. Between these all threads meet.
+// A step without gas, on one thread: ghosts, then one collision row after another.
 import * as H from '../header';
-import { arrive } from './arrive';
+import { arriveRow } from './arrive';
 import { FIELDS, STRESS, bulkRow, bulkTopU2 } from './bulk';
-import { collideRow, topU2 } from './flow';
+import { collideRow } from './flow';
 import { clearSolids, fillGhosts, fillReturns } from './ghosts';
-import { fillPhiGhosts } from './phi';
-import { press } from './pressure';
-import { PURE } from './vector';
-import { address, bind, entry, fieldRow, nx, ny, row, setEntry, stride, turn, zRow } from './rows';
+import { phiGhosts } from './phi';
+import { pressGhosts, pressRow } from './pressure';
+import { bind, entry, ny, row, rowSums, setEntry, turn } from './rows';
+import { sample } from './samples';
+import { addBlocks, addRows, checkSpeed, clearSections, dampSound, drive, meanFlux } from './sections';
+import { call, endRow, firstRow, join, meet, nextCall, share, thread } from './team';
+import { look, mark, refreshing, settle, wake } from './tiles';
 
 export function version(): i32 { return H.VERSION; }
 /** Address of the populations of row y, for the host. */
 export function populations(y: i32): usize { bind(); return row(y); }
 export function advance32(steps: i32, sampleEvery: i32): i32 { return advance<f32>(steps, sampleEvery); }
 export function advance64(steps: i32, sampleEvery: i32): i32 { return advance<f64>(steps, sampleEvery); }
+export function serve32(number: i32): void { serve<f32>(number); }
+export function serve64(number: i32): void { serve<f64>(number); }
+/** To be called before the host changes phi. */
+export function wake32(): void { bind(); wake<f32>(); }
+export function wake64(): void { bind(); wake<f64>(); }
 
-/** Does up to `steps` steps and returns the number done; phi and p are written in the last one. */
+/** Does up to `steps` steps and returns the number done; the fields are written in the last one. */
 function advance<T>(steps: i32, sampleEvery: i32): i32 {
   bind();
-  const twoPhase = entry(H.TWO_PHASE) != 0;
   setEntry(H.STATUS, 0);
+  if (entry(H.TWO_PHASE) == 0) return flowAlone<T>(steps, sampleEvery);
+  setEntry(H.ASKED_STEPS, <f64>steps);
+  setEntry(H.ASKED_SAMPLES, <f64>sampleEvery);
+  call();
+  return together<T>();
+}
+
+/** The life of a thread beside the first. */
+function serve<T>(number: i32): void {
+  join(number);
+  for (let seen = nextCall(0); seen != 0; seen = nextCall(seen)) {
+    bind();
+    together<T>();
+  }
+}
+
+function together<T>(): i32 {
+  const steps = <i32>entry(H.ASKED_STEPS);
+  const sampleEvery = <i32>entry(H.ASKED_SAMPLES);
+  let step = <i64>entry(H.STEP);
+  share();
   let done = 0;
-  while (done < steps && entry(H.STATUS) == 0) {
+  while (done < steps) {
+    for (let y = firstRow; y < endRow; y++) fillReturns<T>(y);
+    meet();
+    if (entry(H.STATUS) != 0) break;
     done++;
-    const step = <i64>entry(H.STEP) + 1;
-    const sampling = sampleEvery > 0 && step % <i64>sampleEvery == 0;
-    const fields = done == steps ? FIELDS : 0;
-    clearSections<T>();
-    if (twoPhase) {
-      fillReturns<T>();
-      arrive<T>();
-      dampSound<T>();
-      clearSections<T>();
-      fillPhiGhosts<T>();
-      press<T>();
-    } else fillGhosts<T>();
-    for (let y = 0; y < ny; y++) collide<T>(y, fields | (y < 2 || y >= ny - 2 ? STRESS : 0), twoPhase);
-    if (!twoPhase) turn();
-    clearSolids<T>();
-    setEntry(H.STEP, <f64>step);
-    drive(meanFlux<T>());
-    if (!twoPhase) dampSound<T>();
-    if (sampling) sample<T>();
+    step++;
+    const refresh = refreshing(step);
+    for (let y = firstRow; y < endRow; y++) {
+      arriveRow<T>(y);
+      if (refresh) look<T>(y);
+    }
+    meet();
+    addBlocks<T>();
+    for (let y = firstRow; y < endRow; y++) {
+      phiGhosts<T>(y);
+      if (refresh) mark(y);
+    }
+    meet();
+    dampSound<T>();
+    for (let y = firstRow; y < endRow; y++) pressRow<T>(y);
+    meet();
+    for (let y = firstRow; y < endRow; y++) pressGhosts<T>(y);
+    meet();
+    for (let y = firstRow; y < endRow; y++) {
+      collideRow<T>(y, done == steps ? FIELDS : 0);
+      if (refresh) settle(y);
+    }
+    clearSolids<T>(firstRow, endRow);
+    meet();
+    if (refresh) share();
+    if (thread == 0) finish<T>(step, sampleEvery > 0 && step % <i64>sampleEvery == 0);
   }
   return done;
 }
 
-/** One row; a speed that is not below the limit names its cell. */
-function collide<T>(y: i32, flags: i32, twoPhase: bool): void {
-  if (twoPhase) collideRow<T>(y, flags);
-  else bulkRow<T>(y, flags);
-  const limit = entry(H.SPEED_LIMIT);
-  const top = twoPhase ? topU2 : bulkTopU2;
-  if (top < limit * limit || entry(H.STATUS) != 0) return;
-  for (let x = 0; x < nx; x++) {
-    const ux = <f64>load<T>(fieldRow(H.AT_UX, y) + <usize>x * sizeof<T>());
-    const uy = <f64>load<T>(fieldRow(H.AT_UY, y) + <usize>x * sizeof<T>());
-    const speed = Math.sqrt(ux * ux + uy * uy);
-    if (speed < limit) continue;
-    setEntry(H.STATUS, isFinite(speed) ? 2 : 1);
-    setEntry(H.BAD_X, <f64>x);
-    setEntry(H.BAD_Y, <f64>y);
-    setEntry(H.BAD_SPEED, speed);
-    break;
-  }
+/** The end of a step, while other threads may have begun with what walls return in the next. */
+function finish<T>(step: i64, sampling: bool): void {
+  for (let y = 0; y < ny; y++) checkSpeed<T>(y, load<f64>(rowSums(y), 24));
+  setEntry(H.STALE, 0);
+  setEntry(H.STEP, <f64>step);
+  drive(addRows());
+  if (sampling) sample<T>();
 }
 
-function clearSections<T>(): void { memory.fill(address(H.AT_SECTIONS), 0, stride + <usize>nx * sizeof<T>()); }
-
-/** Mean of ux over all cells. */
-function meanFlux<T>(): f64 {
-  const sums = address(H.AT_SECTIONS);
-  let total: f64 = 0;
-  for (let x = 0; x < nx; x++) total += <f64>load<T>(sums + <usize>x * sizeof<T>());
-  return total / <f64>(nx * ny);
-}
-
-/**
- * What sound damping takes from the sections of liquid: with gas in this very step, from what arrives, since what is taken a step late
- * feeds velocities that change sign in every step; without gas in the next one, where viscosity takes care of those.
- */
-function dampSound<T>(): void {
-  const share = entry(H.SOUND_DAMPING);
-  if (share == 0) return;
-  const sums = address(H.AT_SECTIONS);
-  let ofLiquid: f64 = 0;
-  let weights: f64 = 0;
-  for (let x = 0; x < nx; x++) {
-    const at = sums + <usize>x * sizeof<T>();
-    const weight = liquidWeight(<f64>load<T>(at + stride));
-    ofLiquid += weight * <f64>load<T>(at);
-    weights += weight;
+function flowAlone<T>(steps: i32, sampleEvery: i32): i32 {
+  let done = 0;
+  while (done < steps && entry(H.STATUS) == 0) {
+    done++;
+    const step = <i64>entry(H.STEP) + 1;
+    clearSections<T>();
+    fillGhosts<T>();
+    for (let y = 0; y < ny; y++) {
+      bulkRow<T>(y, (done == steps ? FIELDS : 0) | (y < 2 || y >= ny - 2 ? STRESS : 0));
+      checkSpeed<T>(y, bulkTopU2);
+    }
+    turn();
+    clearSolids<T>(0, ny);
+    setEntry(H.STEP, <f64>step);
+    drive(meanFlux<T>());
+    dampSound<T>();
+    if (sampleEvery > 0 && step % <i64>sampleEvery == 0) sample<T>();
   }
-  const reference = weights > 0 ? ofLiquid / weights : 0;
-  for (let x = 0; x < nx; x++) {
-    const at = sums + <usize>x * sizeof<T>();
-    const weight = liquidWeight(<f64>load<T>(at + stride));
-    store<T>(at + 2 * stride, <T>(share * weight * (<f64>load<T>(at) - reference) / <f64>ny));
-  }
-}
-
-/** 1 for a section without gas, 0 for one with a fiftieth or more of it. */
-@inline function liquidWeight(gas: f64): f64 { return Math.max(0, 1 - 50 * gas / <f64>ny); }
-
-function drive(upflow: f64): void {
-  const before = entry(H.UPFLOW);
-  const kind = <i32>entry(H.DRIVE_KIND);
-  const value = entry(H.DRIVE_VALUE);
-  if (kind == 1) setEntry(H.DRIVE_FORCE, -value * upflow * Math.abs(upflow));
-  if (kind == 2) setEntry(H.DRIVE_FORCE, entry(H.DRIVE_FORCE) + 0.05 * entry(H.RHO_LIQUID) * (value - 2 * upflow + before));
-  setEntry(H.UPFLOW, upflow);
-  setEntry(H.UPFLOW_BEFORE, before);
-}
-
-function sample<T>(): void {
-  const n = <i32>entry(H.SAMPLES);
-  setEntry(H.SAMPLES, <f64>(n + 1));
-  const at = address(H.AT_SAMPLES) + <usize>n * (32 + 16 * <usize>nx);
-  store<f64>(at, entry(H.STEP));
-  store<f64>(at, entry(H.UPFLOW), 8);
-  store<f64>(at, entry(H.GAS_AREA), 16);
-  store<f64>(at, entry(H.SKIMMED), 24);
-  const bytes = 4 * <usize>nx;
-  if (entry(H.TWO_PHASE) != 0) {
-    friction<T>(at + 32, 0, -1);
-    friction<T>(at + 32 + bytes, ny - 1, ny);
-  } else {
-    wall<T>(at + 32, 0, 0, 1, 1);
-    wall<T>(at + 32 + bytes, 2, ny - 1, ny - 2, -1);
-  }
-  wallPhi<T>(at + 32 + 2 * bytes, 0, -1);
-  wallPhi<T>(at + 32 + 3 * bytes, ny - 1, ny);
-}
-
-/** The very force along x that the wall beyond the row `inside` took in this step; 0 under a solid and beyond a side that is no wall. */
-function friction<T>(to: usize, inside: i32, beyond: i32): void {
-  const gas = entry(H.FLUIDITY_GAS);
-  const more = entry(H.FLUIDITY_LIQUID) - gas;
-  for (let x = 0; x < nx; x++) {
-    const i = <usize>x * sizeof<T>();
-    const wall = load<T>(fieldRow(H.AT_OPEN, inside) + i) != 0 && load<T>(fieldRow(H.AT_OPEN, beyond) + i) == 0;
-    const phi = 1 + 0.5 * (<f64>load<T>(zRow(inside) + i) + <f64>load<T>(zRow(beyond) + i));
-    const liquid = Math.min(Math.max((phi - PURE) / (1 - 2 * PURE), 0), 1);
-    const slip = <f64>load<T>(fieldRow(H.AT_MX, inside) + i) - <f64>load<T>(fieldRow(H.AT_MX, beyond) + i);
-    store<f32>(to + 4 * <usize>x, wall ? <f32>(slip / (gas + liquid * more)) : 0);
-  }
-}
-
-/** Shear on a wall of a box without gas: the two nearest rows of tau with the weights of geometry.ts, `weights` and the next row of them. */
-function wall<T>(to: usize, weights: i32, first: i32, second: i32, sign: f64): void {
-  const a = fieldRow(H.AT_TAU, first);
-  const b = fieldRow(H.AT_TAU, max<i32>(min<i32>(second, ny - 1), 0));
-  const wa = fieldRow(H.AT_WEIGHTS, weights);
-  const wb = fieldRow(H.AT_WEIGHTS, weights + 1);
-  for (let x = 0; x < nx; x++) {
-    const i = <usize>x * sizeof<T>();
-    store<f32>(to + 4 * <usize>x, <f32>(sign * (<f64>load<T>(wa + i) * <f64>load<T>(a + i) + <f64>load<T>(wb + i) * <f64>load<T>(b + i))));
-  }
-}
-
-function wallPhi<T>(to: usize, inside: i32, ghost: i32): void {
-  const a = zRow(inside);
-  const b = zRow(ghost);
-  for (let x = 0; x < nx; x++) {
-    const i = <usize>x * sizeof<T>();
-    store<f32>(to + 4 * <usize>x, <f32>(1 + 0.5 * (<f64>load<T>(a + i) + <f64>load<T>(b + i))));
-  }
+  return done;
 }

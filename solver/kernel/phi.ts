@@ -2,7 +2,7 @@
 //   wall:    d(phi)/dn = -(4/W) cos(theta) phi (1 - phi), n into the fluid, solved for the value on the wall
 //   solid:   the same from the weighted mean of its fluid neighbours
 import * as H from '../header';
-import { address, entry, nx, ny, zRow } from './rows';
+import { above, below, entry, listRow, nx, ny, zRow } from './rows';
 
 /** z beyond a wall whose first cell holds `z`. */
 @inline function wettedGhost(z: f64, c: f64): f64 {
@@ -11,13 +11,13 @@ import { address, entry, nx, ny, zRow } from './rows';
   return z + 2 * (wall - inside);
 }
 
-export function fillPhiGhosts<T>(): void {
+/** The ghosts that row y sees to: in its solids, beyond its ends, and beyond a side that takes them from it. */
+export function phiGhosts<T>(y: i32): void {
   const c = entry(H.WETTING);
   const size = <i32>sizeof<T>();
-  let ghost = address(H.AT_GHOSTS);
-  for (let n = <i32>entry(H.GHOSTS); n > 0; n--) {
+  const end = listRow(H.AT_GHOST_ROWS, y + 1);
+  for (let ghost = listRow(H.AT_GHOST_ROWS, y); ghost < end; ) {
     const x = <i32>load<f64>(ghost);
-    const y = <i32>load<f64>(ghost, 8);
     const neighbours = <i32>load<f64>(ghost, 16);
     ghost += 24;
     let mean: f64 = 0;
@@ -27,16 +27,16 @@ export function fillPhiGhosts<T>(): void {
     }
     store<T>(zRow(y) + <usize>(x * size), <T>wettedGhost(mean, c));
   }
-  ghostRow<T>(0, -1, ny - 1, <i32>entry(H.SIDE_LEFT), c);
-  ghostRow<T>(ny - 1, ny, 0, <i32>entry(H.SIDE_RIGHT), c);
-  const bottom = <i32>entry(H.SIDE_BOTTOM);
-  const top = <i32>entry(H.SIDE_TOP);
-  for (let y = -1; y <= ny; y++) {
-    const first = zRow(y);
-    const last = first + <usize>((nx - 1) * size);
-    store<T>(first - size, beyond<T>(bottom, first, last, c));
-    store<T>(last + size, beyond<T>(top, last, first, c));
-  }
+  ghostColumns<T>(y, c);
+  if (y == below()) ghostRow<T>(y, -1, <i32>entry(H.SIDE_LEFT), c);
+  if (y == above()) ghostRow<T>(y, ny, <i32>entry(H.SIDE_RIGHT), c);
+}
+
+function ghostColumns<T>(y: i32, c: f64): void {
+  const first = zRow(y);
+  const last = first + <usize>(nx - 1) * sizeof<T>();
+  store<T>(first - sizeof<T>(), beyond<T>(<i32>entry(H.SIDE_BOTTOM), first, last, c));
+  store<T>(last + sizeof<T>(), beyond<T>(<i32>entry(H.SIDE_TOP), last, first, c));
 }
 
 /** Ghost value beyond a side: periodic 0, wall 1, slip 2. */
@@ -45,10 +45,11 @@ export function fillPhiGhosts<T>(): void {
   return side == 2 ? load<T>(inside) : <T>wettedGhost(<f64>load<T>(inside), c);
 }
 
-function ghostRow<T>(inside: i32, ghost: i32, across: i32, side: i32, c: f64): void {
-  const from = zRow(inside);
-  const far = zRow(across);
+/** The row `ghost` beyond a side from the row y that it is taken from. */
+function ghostRow<T>(y: i32, ghost: i32, side: i32, c: f64): void {
+  const from = zRow(y);
   const to = zRow(ghost);
   const end = <usize>nx * sizeof<T>();
-  for (let i: usize = 0; i < end; i += sizeof<T>()) store<T>(to + i, beyond<T>(side, from + i, far + i, c));
+  for (let i: usize = 0; i < end; i += sizeof<T>()) store<T>(to + i, beyond<T>(side, from + i, from + i, c));
+  ghostColumns<T>(ghost, c);
 }

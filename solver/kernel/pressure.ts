@@ -1,22 +1,24 @@
 // Pressure of a box with gas from the sum of f, as forces.ts says; 1/rho beside it; then the ghosts of velocity, P and 1/rho.
 // Reads the sum of f, z and its ghosts, p; writes p, P, 1/rho, and ghosts.
 import * as H from '../header';
-import { address, entry, fieldRow, nx, ny, stride, zRow } from './rows';
+import { above, address, below, entry, fieldRow, listRow, nx, ny, stride, zRow } from './rows';
+import { ACTIVE, endOfRun, runBytes, tileRow, tiles } from './tiles';
 import { add, atMost, div, get, mad, mul, nmad, put, share, splat } from './vector';
 
 const SOUND_FRICTION: f64 = 0.2;
 
-export function press<T>(): void {
-  for (let y = 0; y < ny; y++) pressRow<T>(y);
-  fillWallGhosts<T>();
-  fillImages<T>(address(H.AT_MX), -1, 1);
-  fillImages<T>(address(H.AT_MY), 1, -1);
-  fillImages<T>(address(H.AT_PRESSURE), 1, 1);
-  fillImages<T>(address(H.AT_LIGHT), 1, 1);
-  fillWide<T>(address(H.AT_PRESSURE));
+/** Pressure of what is not liquid alone in row y. */
+export function pressRow<T>(y: i32): void {
+  const was = tileRow(H.AT_WAS, y);
+  for (let t = 0; t < tiles(); ) {
+    const state = load<u8>(was + <usize>t);
+    const next = endOfRun(was, t, state);
+    if (state == ACTIVE) press<T>(y, runBytes<T>(t), min<usize>(runBytes<T>(next), <usize>nx * sizeof<T>()));
+    t = next;
+  }
 }
 
-function pressRow<T>(y: i32): void {
+function press<T>(y: i32, start: usize, end: usize): void {
   const size = sizeof<T>();
   const zS = zRow(y - 1);
   const zC = zRow(y);
@@ -32,8 +34,7 @@ function pressRow<T>(y: i32): void {
   const third = splat<T>(1.0 / 3.0);
   const toSum = splat<T>(3 / entry(H.RHO_LIQUID));
   const friction = splat<T>(SOUND_FRICTION);
-  const end = <usize>nx * size;
-  let i: usize = 0;
+  let i = start;
   do {
     const z = get(zC + i);
     const south = atMost<T>(atMost<T>(atMost<T>(zero, get(zS + i - size)), get(zS + i)), get(zS + i + size));
@@ -52,13 +53,23 @@ function pressRow<T>(y: i32): void {
   } while (i < end);
 }
 
+/** Ghosts of velocity, P and 1/rho that row y sees to: its own and those of a side that takes them from it. */
+export function pressGhosts<T>(y: i32): void {
+  fillWallGhosts<T>(y);
+  fillImages<T>(address(H.AT_MX), y, -1, 1);
+  fillImages<T>(address(H.AT_MY), y, 1, -1);
+  fillImages<T>(address(H.AT_PRESSURE), y, 1, 1);
+  fillImages<T>(address(H.AT_LIGHT), y, 1, 1);
+  fillWide<T>(address(H.AT_PRESSURE), y);
+}
+
 /** In walls and solids: velocity -2 m1 + m2/3 + 8/3 U (-m1 + 2 U where only one cell lies before it), P in a straight line. */
-function fillWallGhosts<T>(): void {
+function fillWallGhosts<T>(y: i32): void {
   const mx = address(H.AT_MX);
   const my = address(H.AT_MY);
   const P = address(H.AT_PRESSURE);
-  let ghost = address(H.AT_WALL_GHOSTS);
-  for (let n = <i32>entry(H.WALL_GHOSTS); n > 0; n--) {
+  const end = listRow(H.AT_WALL_GHOST_ROWS, y + 1);
+  for (let ghost = listRow(H.AT_WALL_GHOST_ROWS, y); ghost < end; ) {
     const to = <usize><i32>load<f64>(ghost);
     const faces = load<f64>(ghost, 8);
     ghost += 16;
@@ -83,42 +94,49 @@ function fillWallGhosts<T>(): void {
 }
 
 /** Ghosts of a field beyond periodic sides (copies) and slip sides (images; its sign turns across x by signX, across y by signY). */
-function fillImages<T>(field: usize, signX: f64, signY: f64): void {
-  imageRow<T>(field, -1, H.SIDE_LEFT, 0, ny - 1, signY);
-  imageRow<T>(field, ny, H.SIDE_RIGHT, ny - 1, 0, signY);
-  const bottom = <i32>entry(H.SIDE_BOTTOM);
-  const top = <i32>entry(H.SIDE_TOP);
-  for (let y = -1; y <= ny; y++) {
-    const first = field + <usize>(y * <i32>stride);
-    const last = first + <usize>(nx - 1) * sizeof<T>();
-    if (bottom == 0) store<T>(first - sizeof<T>(), load<T>(last));
-    if (bottom == 2) store<T>(first - sizeof<T>(), <T>signX * load<T>(first));
-    if (top == 0) store<T>(last + sizeof<T>(), load<T>(first));
-    if (top == 2) store<T>(last + sizeof<T>(), <T>signX * load<T>(last));
-  }
+function fillImages<T>(field: usize, y: i32, signX: f64, signY: f64): void {
+  imageColumns<T>(field, y, signX);
+  if (y == below()) imageRow<T>(field, -1, y, H.SIDE_LEFT, signX, signY);
+  if (y == above()) imageRow<T>(field, ny, y, H.SIDE_RIGHT, signX, signY);
 }
 
-function imageRow<T>(field: usize, ghost: i32, sideAt: i32, inside: i32, across: i32, sign: f64): void {
+function imageColumns<T>(field: usize, y: i32, sign: f64): void {
+  const bottom = <i32>entry(H.SIDE_BOTTOM);
+  const top = <i32>entry(H.SIDE_TOP);
+  const first = field + <usize>(y * <i32>stride);
+  const last = first + <usize>(nx - 1) * sizeof<T>();
+  if (bottom == 0) store<T>(first - sizeof<T>(), load<T>(last));
+  if (bottom == 2) store<T>(first - sizeof<T>(), <T>sign * load<T>(first));
+  if (top == 0) store<T>(last + sizeof<T>(), load<T>(first));
+  if (top == 2) store<T>(last + sizeof<T>(), <T>sign * load<T>(last));
+}
+
+function imageRow<T>(field: usize, ghost: i32, y: i32, sideAt: i32, signX: f64, signY: f64): void {
   const side = <i32>entry(sideAt);
-  if (side == 1) return;
-  const to = field + <usize>(ghost * <i32>stride) - sizeof<T>();
-  const from = field + <usize>((side == 0 ? across : inside) * <i32>stride) - sizeof<T>();
-  const factor = side == 0 ? <T>1 : <T>sign;
-  const end = <usize>(nx + 2) * sizeof<T>();
-  for (let i: usize = 0; i < end; i += sizeof<T>()) store<T>(to + i, factor * load<T>(from + i));
+  if (side != 1) {
+    const to = field + <usize>(ghost * <i32>stride) - sizeof<T>();
+    const from = field + <usize>(y * <i32>stride) - sizeof<T>();
+    const factor = side == 0 ? <T>1 : <T>signY;
+    const end = <usize>(nx + 2) * sizeof<T>();
+    for (let i: usize = 0; i < end; i += sizeof<T>()) store<T>(to + i, factor * load<T>(from + i));
+  }
+  imageColumns<T>(field, ghost, signX);
 }
 
 /** Second ghosts, which only the coupling across a periodic or slip side reads. */
-function fillWide<T>(field: usize): void {
+function fillWide<T>(field: usize, y: i32): void {
   const size = <i32>sizeof<T>();
   const acrossY = <i32>entry(H.SIDE_LEFT) == 0;
   const acrossX = <i32>entry(H.SIDE_BOTTOM) == 0;
   const bytes = <usize>(nx * size);
-  memory.copy(field - 2 * stride, field + <usize>((acrossY ? ny - 2 : 1) * <i32>stride), bytes);
-  memory.copy(field + <usize>((ny + 1) * <i32>stride), field + <usize>((acrossY ? 1 : ny - 2) * <i32>stride), bytes);
-  for (let y = 0; y < ny; y++) {
-    const at = field + <usize>(y * <i32>stride);
-    store<T>(at - 2 * sizeof<T>(), load<T>(at + <usize>((acrossX ? nx - 2 : 1) * size)));
-    store<T>(at + <usize>((nx + 1) * size), load<T>(at + <usize>((acrossX ? 1 : nx - 2) * size)));
-  }
+  const at = field + <usize>(y * <i32>stride);
+  const low = acrossY ? ny - 2 : 1;
+  const high = ny - 1 - low;
+  if (y == within(low)) memory.copy(field - 2 * stride, field + <usize>(low * <i32>stride), bytes);
+  if (y == within(high)) memory.copy(field + <usize>((ny + 1) * <i32>stride), field + <usize>(high * <i32>stride), bytes);
+  store<T>(at - 2 * sizeof<T>(), load<T>(at + <usize>((acrossX ? nx - 2 : 1) * size)));
+  store<T>(at + <usize>((nx + 1) * size), load<T>(at + <usize>((acrossX ? 1 : nx - 2) * size)));
 }
+
+/** The row of the box next to row y. */
+@inline function within(y: i32): i32 { return max<i32>(min<i32>(y, ny - 1), 0); }

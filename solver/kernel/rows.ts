@@ -6,6 +6,7 @@
 //
 // Without gas a step writes its new row y over the old row y - 2, which no later row pulls from, and then turns the ring by two
 // slots. With gas all that arrives is taken in before anything is written, and each row stays in its place.
+import { BLOCK } from '../constants';
 import * as H from '../header';
 
 /** Entry of the header. */
@@ -52,3 +53,19 @@ export function turn(): void {
 /** A field at (0, y); y from -1 to ny where it has ghosts. */
 @inline export function fieldRow(at: i32, y: i32): usize { return address(at) + <usize>(y * <i32>stride); }
 
+
+/** The four sums of row y. */
+@inline export function rowSums(y: i32): usize { return address(H.AT_ROWS) + <usize>(32 * y); }
+
+/** The two rows of sums of the block that row y lies in. */
+export function blockSums(y: i32): usize { return address(H.AT_BLOCKS) + <usize>(y / BLOCK) * 2 * stride; }
+
+/** Where row y begins a block, its sums begin at zero. */
+export function clearBlock(y: i32): void { if (y % BLOCK == 0) memory.fill(blockSums(y), 0, 2 * stride); }
+
+/** The row that sees to the ghosts of the row below the first, and above the last: the one they are taken from. */
+@inline export function below(): i32 { return <i32>entry(H.SIDE_LEFT) == 0 ? ny - 1 : 0; }
+@inline export function above(): i32 { return <i32>entry(H.SIDE_LEFT) == 0 ? 0 : ny - 1; }
+
+/** Where the entries of a list begin that row y sees to. */
+@inline export function listRow(rowsAt: i32, y: i32): usize { return <usize>load<i32>(address(rowsAt) + (<usize>y << 2)); }

@@ -47,3 +47,12 @@ export function largest<T>(a: v128): f64 {
   if (sizeof<T>() == 4) top = f64.max(top, f64.max(<f64>v128.extract_lane<T>(a, 2), <f64>v128.extract_lane<T>(a, 3)));
   return top;
 }
+
+/** Least product of the numbers of two rows, from byte `from` to byte `end`. */
+export function least<T>(a: usize, b: usize, from: usize, end: usize): f64 {
+  let low = splat<T>(0);
+  for (let i = from; i < end; i += 16) low = atMost<T>(low, mul<T>(get(a + i), get(b + i)));
+  let value = f64.min(<f64>v128.extract_lane<T>(low, 0), <f64>v128.extract_lane<T>(low, 1));
+  if (sizeof<T>() == 4) value = f64.min(value, f64.min(<f64>v128.extract_lane<T>(low, 2), <f64>v128.extract_lane<T>(low, 3)));
+  return value;
+}
