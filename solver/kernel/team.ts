@@ -34,7 +34,7 @@ export function meet(): void {
 
 /** Sets the other threads to work. */
 export function call(): void {
-  if (threads == 1) return;
+  if (entry(H.THREADS) == 1) return;
   atomic.add<i32>(AT_CALLS, 1);
   atomic.notify(AT_CALLS, -1);
 }
@@ -60,7 +60,7 @@ export function share(): void {
   if (threads == 1) return;
   let all = 0;
   for (let y = 0; y < ny; y++) all += work(y);
-  firstRow = cut(<i64>all * thread / threads);
+  firstRow = thread == 0 ? 0 : cut(<i64>all * thread / threads);
   endRow = thread == threads - 1 ? ny : cut(<i64>all * (thread + 1) / threads);
 }
 

@@ -1,0 +1,90 @@
+import { afterAll, describe, expect, it } from 'vitest';
+import { createSimulation, type Setup, type Simulation } from '../../solver/index.ts';
+import { cornerSolids, fieldValues, MILD_PAIR, randomState, roundBubble } from './boxes.ts';
+
+const THREADS = [2, 3, 5];
+const made: Simulation[] = [];
+
+async function create(setup: Setup, threads: number): Promise<Simulation> {
+  const simulation = await createSimulation(setup, threads);
+  made.push(simulation);
+  return simulation;
+}
+
+afterAll(() => {
+  for (const simulation of made) simulation.dispose();
+});
+
+const walls = { left: 'wall', right: 'wall', bottom: 'periodic', top: 'periodic' } as const;
+const everything: Pick<Setup, 'gravity' | 'drive' | 'soundDamping' | 'contactAngle'> = {
+  gravity: { x: -1e-5, y: 3e-6 },
+  drive: { kind: 'loss', coefficient: 1e-4 },
+  soundDamping: 0.01,
+  contactAngle: 1,
+};
+
+/** Bubbles in a channel long enough for tiles of every kind, with solids, skim, drive and walls that wet. */
+const channel: Setup = {
+  ...{ nx: 250, ny: 45, sides: walls, ...MILD_PAIR, ...everything },
+  solid: cornerSolids(250, 45),
+  skim: Float64Array.from({ length: 250 }, (_, x) => (x > 220 ? 0.01 : 0)),
+  initial: { phi: roundBubble(60, 20, 9), velocity: (_, y) => ({ x: (0.2 * (y + 0.5) * (44.5 - y)) / 45 ** 2, y: 0 }) },
+};
+const boxes: Record<string, Setup> = {
+  'a channel with bubbles, solids and skimming': channel,
+  'a box periodic all round': { ...channel, sides: { left: 'periodic', right: 'periodic', bottom: 'periodic', top: 'periodic' } },
+  'a random state between walls all round, in f64': {
+    ...{ nx: 33, ny: 26, sides: { left: 'wall', right: 'slip', bottom: { speed: 0.02 }, top: 'wall' }, ...MILD_PAIR, ...everything },
+    initial: randomState(33, 26, 7),
+    precision: 'f64',
+  },
+  'liquid alone': { nx: 40, ny: 20, sides: walls, liquid: MILD_PAIR.liquid, force: { x: 1e-6, y: 0 }, initial: randomState(40, 20, 3) },
+};
+
+/** A run in pieces, with samples, gas placed on the way and a state that is taken and put back. */
+function story(simulation: Simulation): unknown {
+  const seen: unknown[] = [simulation.advance(23, 5)];
+  if (simulation.setup.gas !== undefined) seen.push(simulation.placeGas({ x: 16, y: 12, radius: 6 }));
+  seen.push(simulation.advance(1, 5), simulation.advance(40, 5));
+  const { steps, shear, phi, upflow, gasArea, skimmed } = simulation.takeSamples();
+  return [seen, steps, shear.left.data, phi.right.data, upflow, gasArea, skimmed, simulation.totals(), fieldValues(simulation)];
+}
+
+describe('any number of threads gives the same bits', () => {
+  it.each(Object.entries(boxes))('%s', async (_, setup) => {
+    const alone = await create(setup, 1);
+    const told = story(alone);
+    for (const threads of THREADS) {
+      const team = await create(setup, threads);
+      expect(story(team)).toEqual(told);
+      expect(Buffer.compare(team.save(), alone.save())).toBe(0);
+    }
+  });
+
+  it('goes on alike from the state of a run with another number', async () => {
+    const [one, three] = [await create(channel, 1), await create(channel, 3)];
+    three.advance(37, 4);
+    one.restore(three.save());
+    three.restore(three.save());
+    three.takeSamples();
+    expect(one.advance(30, 4)).toEqual(three.advance(30, 4));
+    expect(one.takeSamples().gasArea).toEqual(three.takeSamples().gasArea);
+    expect(Buffer.compare(one.save(), three.save())).toBe(0);
+  });
+
+  it('names the same bad cell in the same step', async () => {
+    const fast: Setup = { ...channel, speedLimit: 0.0505 };
+    const alone = (await create(fast, 1)).advance(200);
+    expect(alone.kind).toBe('tooFast');
+    for (const threads of THREADS) expect((await create(fast, threads)).advance(200)).toEqual(alone);
+  });
+
+  it('goes on alone after its threads have ended', async () => {
+    const [one, two] = [await create(channel, 1), await create(channel, 2)];
+    for (const simulation of [one, two]) simulation.advance(10);
+    two.dispose();
+    two.dispose();
+    for (const simulation of [one, two]) simulation.advance(10);
+    expect(Buffer.compare(two.save(), one.save())).toBe(0);
+  });
+});
