@@ -93,7 +93,7 @@ export class Compiled implements Simulation {
       }
     }
     this.map.header[H.UPFLOW] = this.map.header[H.UPFLOW_BEFORE] = sum / (nx * ny);
-    this.map.header[H.GAS_AREA] = gas;
+    this.map.header[H.GAS_AREA] = this.map.header[H.GAS_DUE] = gas;
   }
 
   private setCell(x: number, y: number, phi: number, ux: number, uy: number, p: number): void {
@@ -163,6 +163,7 @@ export class Compiled implements Simulation {
       set: (...cell) => this.setCell(...cell),
     });
     this.map.header[H.GAS_AREA] += added;
+    this.map.header[H.GAS_DUE] += added;
     return added;
   }
 

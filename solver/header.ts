@@ -106,7 +106,7 @@ export const AT_GHOST_ROWS = 79;
 export const AT_WALL_GHOST_ROWS = 80;
 
 // ---- boxes with gas: tiles of one row and TILE cells, a byte each
-/** bytes of a row of tiles; the last four tell the work in the row */
+/** bytes of a row of tiles; the last four tell the work in the row, the four before them its tiles of liquid */
 export const TILE_STRIDE = 81;
 /** what is done in a tile from the next collision on, and what was done as populations arrived; see kernel/tiles.ts */
 export const AT_TILES = 82;
@@ -125,6 +125,10 @@ export const ALL_ACTIVE = 87;
 export const AT_ROWS = 88;
 /** per block of BLOCK rows two rows: sums of m and of gas over each section of it */
 export const AT_BLOCKS = 89;
+
+/** gas there should be by what was placed and skimmed; what tiles of liquid add to z in each cell so that there is as much */
+export const GAS_DUE = 93;
+export const AMENDS = 94;
 
 // ---- what the threads of a call are to do
 export const THREADS = 90;

@@ -1,5 +1,5 @@
 // Tiles of liquid alone in a box with gas: arrive.ts, pressure.ts and flow.ts with phi = 1 and no gradient of it. There
-//   p = P = rho/3 sum f,   z += 3 (p - p before)/rho,   u - m = force/rho + (nu - nu0 where momentum passes) div S
+//   p = P = rho/3 sum f,   z += 3 (p - p before)/rho + amends,   u - m = force/rho + (nu - nu0 where momentum passes) div S
 // Reads f, mask, open, P, z; writes f in place, m and its moments, P, z; on demand (FIELDS) the fields, for the edge (INTERFACE) g and p.
 import * as H from '../header';
 import { FIELDS } from './bulk';
@@ -36,6 +36,7 @@ export function arriveLiquid<T>(y: i32, start: usize, end: usize): void {
   const sections = blockSums(y);
   const fromSum = splat<T>(entry(H.RHO_LIQUID) / 3);
   const toSum = splat<T>(3 / entry(H.RHO_LIQUID));
+  const amends = splat<T>(entry(H.AMENDS));
   let lanes = splat<T>(0);
   let i = start;
   do {
@@ -60,7 +61,7 @@ export function arriveLiquid<T>(y: i32, start: usize, end: usize): void {
     put(n20Out + i, sub<T>(sub<T>(x13, y24), sub<T>(mul<T>(mx, mx), mul<T>(my, my))));
     put(n11Out + i, nmad<T>(mx, my, sub<T>(b57, b86)));
     const sum = add<T>(add<T>(get(here + i), add<T>(x13, y24)), add<T>(b57, b86));
-    const z = add<T>(get(zAt + i), nmad<T>(toSum, get(pAt + i), sum));
+    const z = add<T>(add<T>(get(zAt + i), amends), nmad<T>(toSum, get(pAt + i), sum));
     put(pAt + i, mul<T>(fromSum, sum));
     put(zAt + i, z);
     const fluid = get(mask + i);

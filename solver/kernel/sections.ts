@@ -1,8 +1,9 @@
 // Sums over sections (all y at one x) and over the box, each in an order fixed by the rows alone; sound damping and the drive.
 import * as H from '../header';
-import { BLOCK } from '../constants';
+import { BLOCK, TILE } from '../constants';
 import { address, entry, fieldRow, nx, ny, row, rowSums, setEntry, stride } from './rows';
 import { threads, thread } from './team';
+import { liquidTiles } from './tiles';
 
 /** Adds up the blocks: each thread a part of the sections. */
 export function addBlocks<T>(): void {
@@ -73,8 +74,14 @@ export function addRows(): f64 {
     less += load<f64>(rowSums(y), 8);
     skimmed += load<f64>(rowSums(y), 16);
   }
-  setEntry(H.GAS_AREA, skimmed - less);
+  const area = skimmed - less;
+  const due = entry(H.GAS_DUE) + skimmed;
+  setEntry(H.GAS_AREA, area);
+  setEntry(H.GAS_DUE, due);
   setEntry(H.SKIMMED, entry(H.SKIMMED) - skimmed);
+  let liquid = 0;
+  for (let y = 0; y < ny; y++) liquid += liquidTiles(y);
+  setEntry(H.AMENDS, liquid == 0 ? 0 : (area - due) / <f64>(liquid * TILE));
   return flux / <f64>(nx * ny);
 }
 
