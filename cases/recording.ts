@@ -87,6 +87,8 @@ export interface Hooks {
   frameEvery_s?: number;
   onFrame?: (snapshot: Snapshot) => void | Promise<void>;
   onProgress?: (progress: Progress) => void;
+  /** most threads to compute with, 1 without it; the recording has the same bits for any number */
+  threads?: number;
   /** least wall-clock time between checkpoints, s */
   checkpointEvery_s?: number;
   onCheckpoint?: (checkpoint: Checkpoint) => void | Promise<void>;

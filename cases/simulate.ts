@@ -33,10 +33,15 @@ interface Saved {
  */
 export async function simulate(panel: Case, hooks: Hooks = {}): Promise<Recording> {
   const { setup, derived } = layOut(panel);
-  const run = new Run(panel, derived, await createSimulation(setup), hooks);
-  if (hooks.resume === undefined) await run.events();
-  else run.resume(hooks.resume);
-  return run.toEnd();
+  const simulation = await createSimulation(setup, hooks.threads);
+  try {
+    const run = new Run(panel, derived, simulation, hooks);
+    if (hooks.resume === undefined) await run.events();
+    else run.resume(hooks.resume);
+    return await run.toEnd();
+  } finally {
+    simulation.dispose();
+  }
 }
 
 class Run {

@@ -15,6 +15,8 @@ const RUNS = {
 
 /** Pictures a run may ask for: more fill a disk and help nobody. */
 const FRAMES = { least: 2, most: 10_000, whole: true };
+/** More threads than this no box has rows for. */
+const THREADS = { least: 1, most: 64, whole: true };
 /** Seconds between checkpoints: writing them more often takes longer than the run, more seldom loses hours. */
 const CHECKPOINT = { least: 0.01, most: 3600, whole: false };
 /** Pictures of each case of a sweep, and cases at a time. */
@@ -59,9 +61,10 @@ export async function commandLine(words: string[]): Promise<number> {
         const word = required('run', args.case);
         const frames = args['no-frames'] ? 0 : numberWithin('frames', single('frames', args.frames) ?? '', FRAMES);
         const checkpoint_s = numberWithin('checkpoint', single('checkpoint', args.checkpoint) ?? '', CHECKPOINT);
+        const threads = args.threads === undefined ? undefined : numberWithin('threads', single('threads', args.threads) ?? '', THREADS);
         const out = single('out', args.out);
         const { run } = await import('./run.ts');
-        exit = await run({ word, sets: args.set ?? [], out, again: args.again, frames, checkpoint_s, quiet: args.quiet, words });
+        exit = await run({ word, sets: args.set ?? [], out, again: args.again, frames, threads, checkpoint_s, quiet: args.quiet, words });
       },
     )
     .command(

@@ -1,3 +1,4 @@
+import { availableParallelism } from 'node:os';
 import { join } from 'node:path';
 import { type Case, type Checkpoint, type Derived, type Hooks, layOut, type Recording, simulate } from '../cases/index.ts';
 import { allSure, type Beginning, drawFrame, measure, RunFolder, surenessOf } from '../output/index.ts';
@@ -20,6 +21,8 @@ export interface RunOptions {
   again: boolean;
   /** number of pictures, from start to end; 0 for none */
   frames: number;
+  /** threads to compute with; as many as there are cores without it */
+  threads?: number | undefined;
   /** wall time between checkpoints */
   checkpoint_s: number;
   quiet: boolean;
@@ -96,6 +99,7 @@ async function compute(
         sure = sureLine(found);
         return allSure(found);
       },
+      threads: options.threads ?? availableParallelism(),
       checkpointEvery_s: options.checkpoint_s,
       onCheckpoint: (checkpoint) => folder.writeCheckpoint(checkpoint),
       signal: interrupt.signal,

@@ -1,3 +1,4 @@
+import { availableParallelism } from 'node:os';
 import type { Case, Derived } from '../cases/index.ts';
 import { createSimulation, type Setup } from '../solver/index.ts';
 
@@ -14,7 +15,7 @@ const GUESSED_RISE_M_S = 0.25;
 
 /** Runs the set-up, with about as many bubbles in it as it will hold, for `wall_s` seconds. */
 export async function trial(panel: Case, setup: Setup, derived: Derived, wall_s = 0.5): Promise<Trial> {
-  const simulation = await createSimulation(setup);
+  const simulation = await createSimulation(setup, availableParallelism());
   if (setup.gas !== undefined && derived.bubblesPerSecond > 0) {
     const radius = derived.cellsPerBubble / 2;
     const expected = (derived.bubblesPerSecond * panel.channel.height_m) / GUESSED_RISE_M_S;
@@ -33,6 +34,7 @@ export async function trial(panel: Case, setup: Setup, derived: Derived, wall_s 
     passed_s = (performance.now() - start) / 1000;
     chunk = Math.max(1, Math.min(2 * chunk, Math.ceil((steps / passed_s) * 0.05)));
   }
+  simulation.dispose();
   return {
     updatesPerSecond: (steps * derived.nx * derived.ny) / passed_s,
     // fields are views on the one memory of the kernel

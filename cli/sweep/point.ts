@@ -129,6 +129,9 @@ function words({ caseFile, sets, folder, again }: Task, limits: Limits): string[
     ...pictures,
     '--checkpoint',
     String(limits.checkpoint_s),
+    // the cores go to the cases
+    '--threads',
+    '1',
     ...(again ? ['--again'] : []),
     '--quiet',
   ];

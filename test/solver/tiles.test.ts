@@ -1,6 +1,6 @@
 import { expect, it } from 'vitest';
 import { createSimulation, type Setup, type Simulation } from '../../solver/index.ts';
-import { FIELDS, roundBubble } from './boxes.ts';
+import { FIELDS, MILD_PAIR, roundBubble } from './boxes.ts';
 
 /** Water and air in lattice units, as in a channel of 8 mm with 80 cells across. */
 const PAIR = {
@@ -28,19 +28,38 @@ async function both(setup: Setup, steps: number): Promise<{ found: Record<string
   return { found: differences(tiled, whole), tiled, whole };
 }
 
+/** Differences that are allowed, with what was seen at most beside. phi differs in the liquid, where it is no part of the flow. */
+const ALLOWED: Record<string, number> = {
+  phi: 1e-2, // 3.3e-3
+  ux: 5e-4, // 9.7e-5, at speeds of 0.05 to 0.38
+  uy: 5e-4, // 5.6e-5
+  pressure: 5e-6, // 6.5e-7
+};
+/** of the gas: 7e-6 were seen */
+const GAS = 5e-5;
+
+async function check(setup: Setup, steps: number): Promise<void> {
+  const { found, tiled, whole } = await both(setup, steps);
+  for (const name of FIELDS) {
+    expect(found[name], name).toBeLessThan(ALLOWED[name]);
+    // the same bits would mean that no tile was ever left alone
+    expect(found[name]).toBeGreaterThan(0);
+  }
+  expect(Math.abs(tiled.totals().gasArea / whole.totals().gasArea - 1)).toBeLessThan(GAS);
+}
+
 it('follows a bubble at the limit of speed across many tiles as if every tile were active', async () => {
-  const [nx, ny] = [320, 96];
   const setup: Setup = {
-    ...{ nx, ny, ...PAIR, precision: 'f64', gasSpeedLimit: Number.POSITIVE_INFINITY, speedLimit: 0.6 },
+    ...{ nx: 320, ny: 96, ...MILD_PAIR, surfaceTension: 0.003, precision: 'f64' },
+    gasSpeedLimit: Number.POSITIVE_INFINITY,
     sides: { left: 'periodic', right: 'periodic', bottom: 'periodic', top: 'periodic' },
-    // 0.39: just below the limit of speed that cases have
-    initial: { phi: roundBubble(60, 40, 14), velocity: () => ({ x: 0.35, y: 0.18 }) },
+    // 0.38 of the 0.4 at which a run ends
+    initial: { phi: roundBubble(60, 40, 14), velocity: () => ({ x: 0.34, y: 0.17 }) },
   };
-  const { found, tiled, whole } = await both(setup, 300);
-  console.log(found, tiled.totals(), whole.totals());
+  await check(setup, 400);
 });
 
-it('gives the flow of a driven channel with a bubble as if every tile were active, and makes no gas', async () => {
+it('gives the flow of a driven channel with a bubble of air as if every tile were active, and makes no gas', async () => {
   const [nx, ny] = [400, 64];
   const setup: Setup = {
     ...{ nx, ny, ...PAIR, soundDamping: 0.01, precision: 'f64' },
@@ -49,6 +68,5 @@ it('gives the flow of a driven channel with a bubble as if every tile were activ
     drive: { kind: 'loss', coefficient: 1e-4 },
     initial: { phi: roundBubble(100, 30, 14), velocity: (_, y) => ({ x: (0.2 * (y + 0.5) * (ny - 0.5 - y)) / ny ** 2, y: 0 }) },
   };
-  const { found, tiled, whole } = await both(setup, 1000);
-  console.log(found, tiled.totals(), whole.totals());
+  await check(setup, 1000);
 });
