@@ -13,7 +13,7 @@ export const W1 = 1.0 / 9.0;
 export const W2 = 1.0 / 36.0;
 
 /** cells of a tile of one row, see kernel/tiles.ts */
-export const TILE = 16;
+export const TILE = 8;
 /** rows of a block, over which sums are made in one go */
 export const BLOCK = 4;
 /** where the words begin by which threads agree, which are no part of the state, and their bytes; see kernel/team.ts */

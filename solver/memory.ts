@@ -2,6 +2,7 @@ import type { Box } from './box.ts';
 import { BLOCK } from './constants.ts';
 import * as H from './header.ts';
 import { listBytes, writeLists } from './lists.ts';
+import { sharesMemory } from './module.ts';
 import type { Side } from './setup.ts';
 import { tileBytes, writeTiles } from './tiles.ts';
 import { wallSpeed } from './walls.ts';
@@ -62,8 +63,7 @@ export function layMemory(box: Box): MemoryMap {
   ];
   const pages = Math.ceil(end / 65536);
   if (pages > 32768) throw new RangeError(`setup: ${nx} x ${ny} cells need ${Math.round(end / 2 ** 20)} MiB; the limit is 2048 MiB`);
-  const shared = typeof SharedArrayBuffer === 'function';
-  const memory = new WebAssembly.Memory({ initial: pages, maximum: pages, shared });
+  const memory = new WebAssembly.Memory({ initial: pages, maximum: pages, shared: sharesMemory() });
   const header = new Float64Array(memory.buffer, 0, H.HEADER_BYTES / 8);
   for (const [at, value] of entries) header[at] = value;
   header[H.NX] = nx;

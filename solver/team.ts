@@ -2,6 +2,7 @@
 import { AT_CALLS, AT_QUIT, AT_TEAM, TEAM_BYTES } from './constants.ts';
 import * as H from './header.ts';
 import type { MemoryMap } from './memory.ts';
+import { sharesMemory } from './module.ts';
 import type { Task } from './worker.ts';
 
 /** Most threads of a simulation. */
@@ -13,8 +14,7 @@ const MOST = 64;
  * @returns how many threads there are, the first included
  */
 export async function startTeam(map: MemoryMap, code: WebAssembly.Module, threads: number, blocks: number): Promise<number> {
-  const shared = typeof SharedArrayBuffer === 'function' && map.memory.buffer instanceof SharedArrayBuffer;
-  const all = shared ? Math.max(1, Math.min(threads, blocks, MOST)) : 1;
+  const all = sharesMemory() ? Math.max(1, Math.min(threads, blocks, MOST)) : 1;
   map.header[H.THREADS] = all;
   const { memory, bytesPerNumber } = map;
   const starts = Array.from({ length: all - 1 }, (_, n) => start({ code, memory, number: n + 1, bytesPerNumber }));

@@ -1,8 +1,21 @@
+import { execFileSync } from 'node:child_process';
 import { afterAll, describe, expect, it } from 'vitest';
 import { createSimulation, type Setup, type Simulation } from '../../solver/index.ts';
 import { cornerSolids, fieldValues, MILD_PAIR, randomState, roundBubble } from './boxes.ts';
 
 const THREADS = [2, 3, 5];
+/** A program that says what memory it has and what state a bubble of gas comes to. */
+const ALONE = `
+  const { createHash } = await import('node:crypto');
+  const { createSimulation } = await import('${new URL('../../.build/solver/index.js', import.meta.url)}');
+  const sides = { left: 'wall', right: 'wall', bottom: 'periodic', top: 'periodic' };
+  const fluids = { liquid: { density: 1, viscosity: 0.05 }, gas: { density: 0.1, viscosity: 0.01 }, surfaceTension: 0.01 };
+  const simulation = await createSimulation({ nx: 100, ny: 30, sides, ...fluids }, 3);
+  simulation.placeGas({ x: 30, y: 12, radius: 8 });
+  simulation.advance(20);
+  const hash = createHash('sha256').update(simulation.save()).digest('hex');
+  process.stdout.write(simulation.phi.data.buffer.constructor.name + ' ' + hash);
+`;
 const made: Simulation[] = [];
 
 async function create(setup: Setup, threads: number): Promise<Simulation> {
@@ -86,5 +99,13 @@ describe('any number of threads gives the same bits', () => {
     two.dispose();
     for (const simulation of [one, two]) simulation.advance(10);
     expect(Buffer.compare(two.save(), one.save())).toBe(0);
+  });
+
+  it('takes one thread, and gives the same bits, where threads share no memory', () => {
+    const hash = (first: string): string =>
+      execFileSync(process.execPath, ['--input-type=module', '-e', first + ALONE], { encoding: 'utf8' });
+    const without = hash('delete globalThis.SharedArrayBuffer;');
+    expect(without).toMatch(/^ArrayBuffer [0-9a-f]{64}$/);
+    expect(hash('')).toBe(`Shared${without}`);
   });
 });
