@@ -1,4 +1,5 @@
 import { type Case, type Derived, layOut } from '../cases/index.ts';
+import { airMeasures } from '../output/index.ts';
 import { count, duration, percent, plain, size } from './numbers.ts';
 import { readSource } from './source.ts';
 import { type Trial, trial } from './trial.ts';
@@ -52,6 +53,8 @@ function spanText({ record: { span_s, until } }: Case): string {
 
 function page(panel: Case, derived: Derived, forecast: Forecast, bites: string[]): string {
   const { channel, record, gas } = panel;
+  const air = airMeasures({ case: panel, derived });
+  const energy = air.energy_J_m3 === null ? '' : `, ${plain(air.energy_J_m3 / 3.6e6)} kWh per m3 of permeate`;
   const most = record.until === undefined ? '' : 'at most ';
   const mm = (length_m: number): string => `${plain(1000 * length_m)} mm`;
   const tilt = channel.tilt_rad === 0 ? 'vertical' : `tilted ${plain((180 / Math.PI) * channel.tilt_rad)} deg`;
@@ -79,6 +82,10 @@ function page(panel: Case, derived: Derived, forecast: Forecast, bites: string[]
     ],
     ['wall samples', `every ${plain(1000 * derived.sampleEvery * derived.dt_s)} ms (${derived.sampleEvery} steps)`],
     ['swept', `above ${plain(panel.swept.above_Pa)} Pa within ${plain(panel.swept.within_s)} s`],
+    [
+      'air',
+      `${plain(3600 * air.supply_m_s)} m3/(m2 h) against ${plain(air.overpressure_Pa / 1000)} kPa, blower ${percent(panel.air.efficiency)}: ${plain(air.power_W_m2)} W/m2${energy}`,
+    ],
     ['memory', size(forecast.memory_bytes)],
     [
       'wall time',

@@ -15,10 +15,8 @@ import {
   writeComparison,
 } from '../output/index.ts';
 import { UsageError } from '../solver/index.ts';
-import { type Job, runChildren } from './children.ts';
 import { comparePage } from './comparepage.ts';
-import { catchInterrupts } from './interrupt.ts';
-import { duration } from './numbers.ts';
+import { type Job, runJobs } from './jobs.ts';
 import { readSource } from './source.ts';
 import { commandToGoOn, suggestion } from './words.ts';
 
@@ -38,6 +36,9 @@ export interface CompareOptions {
   /** the words after `swathe`, to say how to go on */
   given: readonly string[];
 }
+
+/** Pictures of the run with the case's own seed, as swathe run makes them. */
+const OWN_FRAMES = 25;
 
 /** A run that takes part, there or to be computed. */
 interface Part {
@@ -99,8 +100,8 @@ async function folderPart(folder: string): Promise<Part[]> {
   const text = await runCase(folder);
   const panel = readCase(text, join(folder, 'case.yaml'));
   const name = groupName(resolve(folder));
-  const words = ['run', join(folder, 'case.yaml'), '--out', folder];
-  const job = { label: folder, words: [...words, '--quiet'], updates: updatesOf(panel) };
+  const task = { caseFile: join(folder, 'case.yaml'), sets: [], folder, again: false };
+  const job = { label: folder, task, frames: 0, updates: updatesOf(panel) };
   return [{ name, folder, key: geometryKey(panel), job: (await holdsFinished(folder, text)) ? undefined : job }];
 }
 
@@ -112,8 +113,8 @@ async function caseParts(word: string, sets: string[], seeds: number): Promise<P
     Array.from({ length: seeds }, async (_, i): Promise<Part> => {
       const folder = join('runs', i === 0 ? name : `${name}-seed-${first + i}`);
       const own = i === 0 ? sets : [...sets, `gas.seed=${first + i}`];
-      const words = ['run', word, ...own.flatMap((set) => ['--set', set]), '--out', folder, '--quiet', ...(i === 0 ? [] : ['--no-frames'])];
-      const job = { label: `${name}, seed ${first + i}`, words, updates: updatesOf(panel) };
+      const task = { caseFile: word, sets: own, folder, again: false };
+      const job = { label: `${name}, seed ${first + i}`, task, frames: i === 0 ? OWN_FRAMES : 0, updates: updatesOf(panel) };
       const { text } = readSource(word, own);
       return { name, folder, key: geometryKey(panel), job: (await holdsFinished(folder, text)) ? undefined : job };
     }),
@@ -130,49 +131,17 @@ async function compute(parts: readonly Part[], { quiet, given, ...options }: Com
   const jobs = parts.flatMap(({ job }) => (job === undefined ? [] : [job]));
   if (jobs.length === 0) return 0;
   const atOnce = Math.min(jobs.length, options.atOnce ?? availableParallelism());
-  const say = (text: string): void => {
-    if (!quiet) process.stderr.write(`${text}\n`);
+  const say = (line: string): void => {
+    if (!quiet) process.stderr.write(`${line}\n`);
   };
   const there = parts.length - jobs.length;
   say(`${jobs.length} ${jobs.length === 1 ? 'run' : 'runs'} to compute, ${atOnce} at once${there === 0 ? '' : `; ${there} already there`}`);
-  const interrupt = catchInterrupts(() => say('stopping: the runs keep a checkpoint; once more ends at once'));
-  const left = timeLeft(jobs);
-  try {
-    let ended = 0;
-    const endings = await runChildren(jobs, {
-      atOnce,
-      signal: interrupt.signal,
-      onEnd: ({ job, exit }) => {
-        ended++;
-        if (!interrupt.signal.aborted) say(`${ended} of ${jobs.length}: ${job.label} ${exit === 0 ? 'done' : 'failed'}${left(job)}`);
-      },
-    });
-    const stopped = interrupt.exit();
-    if (stopped !== undefined) {
-      process.stderr.write(`stopped; finished runs and checkpoints are kept. To go on:\n  ${commandToGoOn(given)}\n`);
-      return stopped;
-    }
-    const failed = endings.filter(({ exit }) => exit !== 0);
-    for (const { job, said } of failed) process.stderr.write(`${job.label} failed:\n${said}`);
-    if (failed.length > 0) {
-      const rest =
-        'finished runs are kept: the same command computes what is missing, and folders of runs can be compared without the rest';
-      process.stderr.write(`${rest}, as in swathe compare ${parts[0].folder} ${parts[parts.length - 1].folder}\n`);
-    }
-    return failed[0]?.exit ?? 0;
-  } finally {
-    interrupt.release();
+  const { exit, stopped } = await runJobs(jobs, atOnce, say);
+  if (stopped) {
+    process.stderr.write(`stopped; finished runs and checkpoints are kept. To go on:\n  ${commandToGoOn(given)}\n`);
+  } else if (exit !== 0) {
+    const rest = 'Finished runs are kept: the same command computes what is missing, and their folders can be compared without the rest';
+    process.stderr.write(`${rest}, as in swathe compare ${parts[0].folder} ${parts[parts.length - 1].folder}\n`);
   }
-}
-
-/** Says the wall time still needed, at the pace of the runs that ended. */
-function timeLeft(jobs: readonly Job[]): (ended: Job) => string {
-  const began = performance.now();
-  const all = jobs.reduce((sum, { updates }) => sum + updates, 0);
-  let done = 0;
-  return ({ updates }) => {
-    done += updates;
-    const passed_s = (performance.now() - began) / 1000;
-    return done >= all ? `, ${duration(passed_s)} in all` : `, about ${duration((passed_s * (all - done)) / done)} left`;
-  };
+  return exit;
 }

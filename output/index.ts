@@ -4,6 +4,7 @@ export type { Difference } from './compare/pooled.ts';
 export { geometryKey, grouped, groupName, holdsFinished, readRun, runCase } from './compare/run.ts';
 export { RunFolder } from './folder/folder.ts';
 export type { Beginning, RunRecord } from './folder/record.ts';
+export { airMeasures } from './measures/air.ts';
 export { ANSWERS, rangeOf } from './measures/answers.ts';
 export { type Measures, measure } from './measures/measures.ts';
 export { allSure, type Sureness, surenessOf } from './measures/sure.ts';

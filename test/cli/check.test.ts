@@ -79,6 +79,13 @@ describe('swathe check', () => {
     expect(out).toContain('warning: a bubble of 4 mm has 8 cells');
   });
 
+  it('says what the air costs, and what a cubic metre of permeate takes where a flux is given', async () => {
+    const { out } = await bench.swathe('check', 'tiny.yaml', '--set', 'air.flux=25 L/(m2 h)');
+    // by hand: 0.8 m3/(m2 h) of 1.204 kg/m3 at 42.6 kJ/kg are 11.4 W/m2; by 25 L/(m2 h) 0.456 kWh/m3
+    expect(out).toMatch(/^air +0\.8 m3\/\(m2 h\) against 34\.3 kPa, blower 60 %: 11\.4 W\/m2, 0\.45\d kWh per m3 of permeate$/m);
+    expect((await bench.swathe('check', 'tiny.yaml')).out).toMatch(/W\/m2$/m);
+  });
+
   it('prints the same as JSON', async () => {
     const { exit, out } = await bench.swathe('check', 'tiny.yaml', '--json', '--set', 'channel.tilt=0 deg');
     expect(exit).toBe(0);
