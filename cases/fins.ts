@@ -1,7 +1,7 @@
 /** Fins: groups resolved to outlines, and outlines to the cells they fill. */
 import type { Outline } from './case.ts';
 import type { FinEntry } from './finkeys.ts';
-import { band, extent, inside } from './polygon.ts';
+import { band, distanceToEdge, extent, inside } from './polygon.ts';
 
 /** A fin and the entry of the case file it comes from. */
 export interface PlacedFin {
@@ -58,6 +58,25 @@ export function solidCells(fins: readonly Outline[], nx: number, ny: number, dx_
   const solid = new Uint8Array(nx * ny);
   for (const fin of fins) for (const cell of cellsWithin(fin, nx, ny, dx_m)) solid[cell] = 1;
   return solid;
+}
+
+/**
+ * Distance of a point from the nearest face of the fins, cells, negative in fins; x and y as cells are numbered. Fins more than two cells
+ * away are left out: Infinity where there is no other.
+ */
+export function finDistance(fins: readonly Outline[], dx_m: number): (x: number, y: number) => number {
+  const near = fins.map((outline) => ({ outline, ...extent(outline) }));
+  const beyond = (at: number, [low, high]: [number, number]): boolean => at < low - 2 * dx_m || at > high + 2 * dx_m;
+  return (x, y) => {
+    const [across_m, along_m] = [(y + 0.5) * dx_m, (x + 0.5) * dx_m];
+    let least = Number.POSITIVE_INFINITY;
+    for (const { outline, across, along } of near) {
+      if (beyond(across_m, across) || beyond(along_m, along)) continue;
+      const distance = distanceToEdge(outline, across_m, along_m) / dx_m;
+      least = Math.min(least, inside(outline, across_m, along_m) ? -distance : distance);
+    }
+    return least;
+  };
 }
 
 /** Indices of the cells whose centre lies in one fin. */

@@ -114,7 +114,11 @@ function direction(path: Outline, i: number): Point {
 
 /** Distance of a point from the outline's area; 0 inside. */
 export function distanceTo(outline: Outline, across: number, along: number): number {
-  if (inside(outline, across, along)) return 0;
+  return inside(outline, across, along) ? 0 : distanceToEdge(outline, across, along);
+}
+
+/** Distance of a point from the nearest edge of the outline, inside or outside. */
+export function distanceToEdge(outline: Outline, across: number, along: number): number {
   let least = Number.POSITIVE_INFINITY;
   for (let i = 0; i < outline.length; i++) {
     const [ax, ay] = corner(outline, i);

@@ -2,7 +2,7 @@
 import type { Setup } from '../solver/index.ts';
 import { bandsOf, gridOf, skimRates, stepsOf } from './bands.ts';
 import type { Case } from './case.ts';
-import { solidCells } from './fins.ts';
+import { finDistance, solidCells } from './fins.ts';
 import { fitting_m } from './gas.ts';
 import { meanArea_m2 } from './mixture.ts';
 import { onShare } from './pulse.ts';
@@ -69,7 +69,7 @@ export function layOut(panel: Case): { setup: Setup; derived: Derived } {
     mobility: MOBILITY,
     soundDamping: SOUND_DAMPING,
     contactAngle: panel.contactAngle_rad,
-    ...(panel.fins.length === 0 ? {} : { solid: solidCells(panel.fins, nx, ny, dx_m) }),
+    ...(panel.fins.length === 0 ? {} : { solid: solidCells(panel.fins, nx, ny, dx_m), solidDistance: finDistance(panel.fins, dx_m) }),
     gravity: { x: -g * Math.cos(panel.channel.tilt_rad), y: 0 - g * Math.sin(panel.channel.tilt_rad) },
     buoyancy: (rhoLiquid - panel.gas.airDensity_kg_m3) / (rhoLiquid - panel.gas.density_kg_m3),
     drive: driveOf(panel, derived),

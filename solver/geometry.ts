@@ -64,7 +64,7 @@ function neighbour(setup: Setup, x: number, y: number, k: number): [number, numb
  * Share of the way from the fluid cell, one along `k` from the solid cell (x, y), to the solid cell at which the face lies: where the
  * distance vanishes, by bisection; 1/2 where none is told or it has the same sign at both ends.
  */
-function wayToFace(setup: Setup, x: number, y: number, k: number): number {
+export function wayToFace(setup: Setup, x: number, y: number, k: number): number {
   const distance = setup.solidDistance;
   if (!distance || !(distance(x, y) <= 0) || !(distance(x + ex[k], y + ey[k]) > 0)) return 0.5;
   let [low, high] = [0, 1];

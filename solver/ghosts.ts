@@ -64,8 +64,8 @@ export function fillReturns(box: Box, set: Float64Array[], which: 'flow' | 'inte
 }
 
 /**
- * Ghosts of the arriving velocity and of P. In walls: -2 m1 + m2/3 + 8/3 U of the first and second cell, so that the velocity is U on
- * the wall and its slope there that of a parabola; P goes on straight. Slip sides hold images, periodic sides copies.
+ * Ghosts of the arriving velocity and of P. In walls: of the first and second cell with the weights of walls.ts, halfway
+ * -2 m1 + m2/3 + 8/3 U, so that the velocity is U on the wall and its slope there that of a parabola; P goes on straight. Slip sides hold images, periodic sides copies.
  */
 export function fillWallGhosts(box: Box, { mx, my, P }: FlowFields): void {
   const { nx, ny, setup, walls } = box;
@@ -75,9 +75,8 @@ export function fillWallGhosts(box: Box, { mx, my, P }: FlowFields): void {
     for (const face of faces) {
       const i = at(face.x, face.y);
       const j = face.behind ? at(face.behind.x, face.behind.y) : i;
-      const wall = face.behind ? 8 / 3 : 2;
-      u += wall * face.ux + (face.behind ? mx[j] / 3 - 2 * mx[i] : -mx[i]);
-      v += wall * face.uy + (face.behind ? my[j] / 3 - 2 * my[i] : -my[i]);
+      u += face.ux + face.weight[0] * mx[i] + face.weight[1] * mx[j];
+      v += face.uy + face.weight[0] * my[i] + face.weight[1] * my[j];
       p += 2 * P[wideIndex(box, i)] - P[wideIndex(box, j)];
     }
     const to = at(x, y);

@@ -1,7 +1,7 @@
 // The header of the kernel's memory: one f64 per entry, at byte 8 * entry. Literals only, compiled by both compilers.
 
 /** checked by the host against the kernel's own copy when it is loaded */
-export const VERSION = 7;
+export const VERSION = 8;
 /** bytes kept for the header */
 export const HEADER_BYTES = 1024;
 
@@ -98,7 +98,7 @@ export const AT_J10 = 63;
 export const AT_J01 = 75;
 /** runs of what walls return, four i32 each: address it goes to, of the stand-in of f, of that of g, bytes; g goes to the same population of g */
 export const AT_RETURNS = 76;
-/** f64: place, n, then n times cell, cell behind, 1 if there is one, speed of the wall along x, along y; places in bytes from cell (0, 0) */
+/** f64: place, n, then n times cell, cell behind, their weights, what the wall adds to ux, to uy; places in bytes from cell (0, 0) */
 export const AT_WALL_GHOSTS = 78;
 /** ny + 1 i32 each: the address in AT_RETURNS, AT_GHOSTS, AT_WALL_GHOSTS where the entries that row y sees to begin */
 export const AT_RETURN_ROWS = 77;

@@ -17,7 +17,7 @@ export function listBytes({ ny, geometry, walls }: Box): [number, number][] {
     [H.AT_RUNS, 12 * geometry.runs.length],
     [H.AT_GHOSTS, 24 * (geometry.ghosts.length + neighbours)],
     [H.AT_RETURNS, 16 * walls.returns.length],
-    [H.AT_WALL_GHOSTS, 8 * walls.ghosts.reduce((n, ghost) => n + 2 + 5 * ghost.faces.length, 0)],
+    [H.AT_WALL_GHOSTS, 8 * walls.ghosts.reduce((n, ghost) => n + 2 + 6 * ghost.faces.length, 0)],
     ...[H.AT_GHOST_ROWS, H.AT_RETURN_ROWS, H.AT_WALL_GHOST_ROWS].map((at): [number, number] => [at, rows]),
   ];
 }
@@ -46,7 +46,7 @@ export function writeLists(box: Box, header: Float64Array, bytesPerNumber: numbe
     row: seenToBy(box, ghost.y),
     numbers: [
       ...[place(ghost), ghost.faces.length],
-      ...ghost.faces.flatMap((face) => [place(face), place(face.behind ?? face), face.behind ? 1 : 0, face.ux, face.uy]),
+      ...ghost.faces.flatMap((face) => [place(face), place(face.behind ?? face), ...face.weight, face.ux, face.uy]),
     ],
   }));
   writeByRow(box, header, H.AT_WALL_GHOSTS, H.AT_WALL_GHOST_ROWS, true, wallGhosts);

@@ -3,6 +3,7 @@
  * A wall reflects the flow populations like a mirror, so that they carry no friction at all; the friction is a viscous force of
  * its own, made from ghost values of the velocity. What a wall sends back and what it is felt by therefore agree to round-off.
  */
+import { wayToFace } from './geometry.ts';
 import { ex, ey, mirrorX, mirrorY, opposite } from './lattice.ts';
 import type { Setup, Side } from './setup.ts';
 
@@ -22,8 +23,15 @@ interface Return {
 interface WallGhost {
   x: number;
   y: number;
-  /** cell at the face, the cell behind it (undefined: none), velocity of the wall */
-  faces: { x: number; y: number; behind: { x: number; y: number } | undefined; ux: number; uy: number }[];
+  /** cell at the face, the cell behind it (undefined: none), weights of their velocities, what the velocity of the wall adds */
+  faces: {
+    x: number;
+    y: number;
+    behind: { x: number; y: number } | undefined;
+    weight: [own: number, behind: number];
+    ux: number;
+    uy: number;
+  }[];
 }
 
 export interface Walls {
@@ -81,11 +89,29 @@ export function walls(setup: Setup, fluid: Uint8Array): Walls {
   return { returns, ghosts: ghosts(setup, kind, wrapX, wrapY), open };
 }
 
+/**
+ * Weights of the first cell and of the one behind in the ghost value whose parabola through both takes the wall's velocity at the
+ * share q of the way to the ghost; of the straight line where no cell lies behind.
+ */
+function slopeWeights(q: number, behind: boolean): [number, number] {
+  return behind ? [(-2 * (1 - q)) / q, (1 - q) / (1 + q)] : [-(1 - q) / q, 0];
+}
+
+/**
+ * Least q that the explicit friction bears: what a face takes in a step, 2 nu (1 + 2 (1 - q)/q), stays below what it takes halfway at
+ * the highest viscosity a box may have (box.ts).
+ */
+function leastWay({ liquid, gas = liquid }: Setup): number {
+  const nu = Math.max(liquid.viscosity / liquid.density, gas.viscosity / gas.density);
+  return Math.min(0.5, 1 / (1 + (0.48 / nu - 1) / 2));
+}
+
 type Wrap = (at: number) => number;
 
 function ghosts(setup: Setup, kind: (x: number, y: number) => Kind, wrapX: Wrap, wrapY: Wrap): WallGhost[] {
   const { nx, ny, sides } = setup;
   const found: WallGhost[] = [];
+  const least = leastWay(setup);
   for (let y = -1; y <= ny; y++) {
     for (let x = -1; x <= nx; x++) {
       // images of a wall beyond a periodic side are copied, not made
@@ -98,7 +124,10 @@ function ghosts(setup: Setup, kind: (x: number, y: number) => Kind, wrapX: Wrap,
         if (kind(x + ex[k], y + ey[k]) !== 'fluid') continue;
         const [bx, by] = [x + 2 * ex[k], y + 2 * ey[k]];
         const behind = kind(bx, by) === 'fluid' ? { x: wrapX(bx), y: wrapY(by) } : undefined;
-        faces.push({ x: wrapX(x + ex[k]), y: wrapY(y + ey[k]), behind, ux, uy });
+        const inSolid = x >= 0 && x < nx && y >= 0 && y < ny;
+        const weight = slopeWeights(inSolid ? Math.max(wayToFace(setup, x, y, k), least) : 0.5, behind !== undefined);
+        const ofWall = 1 - weight[0] - weight[1];
+        faces.push({ x: wrapX(x + ex[k]), y: wrapY(y + ey[k]), behind, weight, ux: ofWall * ux, uy: ofWall * uy });
       }
       if (faces.length > 0) found.push({ x, y, faces });
     }

@@ -63,7 +63,7 @@ export function pressGhosts<T>(y: i32): void {
   fillWide<T>(address(H.AT_PRESSURE), y);
 }
 
-/** In walls and solids: velocity -2 m1 + m2/3 + 8/3 U (-m1 + 2 U where only one cell lies before it), P in a straight line. */
+/** In walls and solids: velocity by the weights of walls.ts, P in a straight line. */
 function fillWallGhosts<T>(y: i32): void {
   const mx = address(H.AT_MX);
   const my = address(H.AT_MY);
@@ -76,15 +76,13 @@ function fillWallGhosts<T>(y: i32): void {
     let u: f64 = 0;
     let v: f64 = 0;
     let p: f64 = 0;
-    for (let face = <i32>faces; face > 0; face--, ghost += 40) {
+    for (let face = <i32>faces; face > 0; face--, ghost += 48) {
       const i = <usize><i32>load<f64>(ghost);
       const j = <usize><i32>load<f64>(ghost, 8);
-      const two = load<f64>(ghost, 16) != 0;
-      const wall = two ? 8.0 / 3.0 : 2;
-      const own = two ? -2.0 : -1.0;
-      const behind = two ? 1.0 / 3.0 : 0;
-      u += wall * load<f64>(ghost, 24) + own * <f64>load<T>(mx + i) + behind * <f64>load<T>(mx + j);
-      v += wall * load<f64>(ghost, 32) + own * <f64>load<T>(my + i) + behind * <f64>load<T>(my + j);
+      const own = load<f64>(ghost, 16);
+      const behind = load<f64>(ghost, 24);
+      u += load<f64>(ghost, 32) + own * <f64>load<T>(mx + i) + behind * <f64>load<T>(mx + j);
+      v += load<f64>(ghost, 40) + own * <f64>load<T>(my + i) + behind * <f64>load<T>(my + j);
       p += 2 * <f64>load<T>(P + i) - <f64>load<T>(P + j);
     }
     store<T>(mx + to, <T>(u / faces));

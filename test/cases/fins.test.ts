@@ -212,3 +212,19 @@ describe('an outline', () => {
     expect(crossesItself([square[0], square[2], square[1], square[3]] as [number, number][])).toBe(true);
   });
 });
+
+describe('the distance told to the solver', () => {
+  it('is that from the nearest face of a fin that leans, in cells, negative inside', () => {
+    const { setup, derived } = layOut(withFins('{from: 40 mm, across: 4 mm, length: 6 mm, thickness: 1.2 mm, angle: 30 deg}'));
+    const at = (across_mm: number, along_mm: number): number =>
+      setup.solidDistance?.(along_mm / 1000 / derived.dx_m - 0.5, across_mm / 1000 / derived.dx_m - 0.5) as number;
+    const cell_mm = derived.dx_m * 1000;
+    // its long faces lie 0.6 mm to both sides of its middle, along (cos 30, -sin 30)
+    expect(at(4, 40)).toBeCloseTo(-0.6 / cell_mm, 9);
+    const away = (s_mm: number): number => at(4 + s_mm * Math.cos(Math.PI / 6), 40 - s_mm * Math.sin(Math.PI / 6));
+    expect(away(0.6)).toBeCloseTo(0, 9);
+    expect(away(0.7)).toBeCloseTo(0.1 / cell_mm, 9);
+    expect(away(-0.5)).toBeCloseTo(-0.1 / cell_mm, 9);
+    expect(at(1, 80)).toBe(Number.POSITIVE_INFINITY);
+  });
+});

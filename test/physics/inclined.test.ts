@@ -22,4 +22,15 @@ describe('liquid between two solids that lean', () => {
     // seen: 0.009
     expect((await inclinedFlow({ slope: [1, 2], width: 32, viscosity: 0.125, stairs: true })).velocity).toBeGreaterThan(0.005);
   });
+
+  it.each([
+    // seen: 0.0112 against 0.0448; 0.0372 against 0.0826; 0.0130 against 0.0196
+    [[1, 1], 0.4],
+    [[1, 2], 0.6],
+    [[1, 4], 0.8],
+  ] as [[number, number], number][])('is slowed less than by stairs in a box with gas: slope %s', async (slope, share) => {
+    const channel = { slope, width: 10, viscosity: 0.1, gas: { density: 0.01, viscosity: 0.0005 } };
+    const faces = (await inclinedFlow(channel)).velocity;
+    expect(faces).toBeLessThan(share * (await inclinedFlow({ ...channel, stairs: true })).velocity);
+  });
 });
