@@ -1,6 +1,6 @@
 // How fast the step is on this machine: `npm run bench`, `npm run bench -- --json`.
 // Million cell updates a second, median and spread of five after a warm-up, by the clock and by the processor time of a thread (the
-// second is the fairer one where the machine is shared); beside it the plain f64 twin, a straightforward ndarray program, and what the
+// second is the fairer one where the machine is shared, but tells nothing of threads that sleep until others are done); beside it the plain f64 twin, a straightforward ndarray program, and what the
 // machine can do at most. A panel's minute: seconds of a panel of 8 mm with 80 cells across, 0.3 m/s at 0.02, in a minute of the clock.
 import { availableParallelism, cpus } from 'node:os';
 import { createReference, createSimulation } from '../../.build/solver/index.js';
