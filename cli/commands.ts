@@ -21,6 +21,7 @@ const THREADS = { least: 1, most: 64, whole: true };
 const CHECKPOINT = { least: 0.01, most: 3600, whole: false };
 /** Pictures of each case of a sweep, and cases at a time. */
 const SWEEP_FRAMES = { least: 0, most: 10_000, whole: true };
+const POINT = { least: 1, most: 100_000, whole: true };
 const AT_ONCE = { least: 1, most: 1000, whole: true };
 /** Percent of a value that an error of the grid may have. */
 const WITHIN = { least: 0.1, most: 50, whole: false };
@@ -107,12 +108,20 @@ export async function commandLine(words: string[]): Promise<number> {
       async (args) => {
         const word = required('sweep', args.plan);
         const atOnce = single('at-once', args['at-once']);
+        const point = single('point', args.point);
         const { sweep } = await import('./sweep/sweep.ts');
         exit = await sweep({
           word,
           out: single('out', args.out),
           list: args.list,
           status: args.status,
+          engine: single('engine', args.engine) ?? '',
+          partition: single('partition', args.partition),
+          cpus: numberWithin('cpus', single('cpus', args.cpus) ?? '', AT_ONCE),
+          time: single('time', args.time),
+          cancel: args.cancel,
+          point: point === undefined ? undefined : numberWithin('point', point, POINT),
+          gather: args.gather,
           atOnce: atOnce === undefined ? undefined : numberWithin('at-once', atOnce, AT_ONCE),
           memory: single('memory', args.memory),
           limit: single('limit', args.limit),
