@@ -113,8 +113,25 @@ export function plainText(text: string): string {
     .trim();
 }
 
+/** Texts and limits that were read before: a plan reads the same few thousands of times. */
+const known = { quantities: new Map<string, { value: number } | Finding>(), limits: new Map<string, number>() };
+const MOST_KNOWN = 10_000;
+
+function remembered<T>(memory: Map<string, T>, key: string, make: () => T): T {
+  const found = memory.get(key);
+  if (found !== undefined) return found;
+  if (memory.size >= MOST_KNOWN) memory.clear();
+  const made = make();
+  memory.set(key, made);
+  return made;
+}
+
 /** The SI value of `text`, or what is wrong with it. */
 export function readQuantity(text: string, measure: Measure): { value: number } | Finding {
+  return remembered(known.quantities, `${measure} ${text}`, () => parseQuantity(text, measure));
+}
+
+function parseQuantity(text: string, measure: Measure): { value: number } | Finding {
   const { si, named, example } = MEASURES[measure];
   const parts = NUMBER.exec(plainText(text));
   const remedy = `Write ${named} as in "${example}"`;
@@ -194,7 +211,7 @@ function capital(text: string): string {
 export function inSI(number: number, unit: string, measure: Measure): number {
   const { si } = MEASURES[measure];
   if (si === '') return unit === '%' ? number / 100 : number;
-  return new (unitClass())(number, unit).toNumeric(si);
+  return remembered(known.limits, `${measure} ${number} ${unit}`, () => new (unitClass())(number, unit).toNumeric(si));
 }
 
 /** A length in mm with four figures at most, for messages. */

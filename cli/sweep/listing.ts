@@ -6,7 +6,7 @@ import { trial } from '../trial.ts';
 import { workOfPoint } from './standing.ts';
 
 /** Wall time of the one trial that the expected time rests on, s. */
-const TRIAL_S = 0.2;
+const TRIAL_S = 0.1;
 
 /** Prints the points of a plan and how long they will take, without running any. */
 export async function listPoints(plan: Plan, atOnce: number): Promise<void> {

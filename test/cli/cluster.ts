@@ -3,6 +3,7 @@ import { randomBytes } from 'node:crypto';
 import { chmodSync, existsSync, mkdirSync, mkdtempSync, readFileSync, rmSync, writeFileSync } from 'node:fs';
 import { hostname, tmpdir } from 'node:os';
 import { join } from 'node:path';
+import { isAlive } from './sweeps.ts';
 
 /** What is needed for a cluster of one node; the reason why there is none, or undefined. */
 export function noCluster(): string | undefined {
@@ -104,14 +105,5 @@ PartitionName=bench Nodes=${this.host} Default=YES MaxTime=INFINITE State=UP
       while (Date.now() < end && isAlive(pid)) await new Promise((resolve) => setTimeout(resolve, 100));
     }
     rmSync(this.folder, { recursive: true, force: true });
-  }
-}
-
-function isAlive(pid: number): boolean {
-  try {
-    process.kill(pid, 0);
-    return true;
-  } catch {
-    return false;
   }
 }

@@ -1,0 +1,127 @@
+import { existsSync } from 'node:fs';
+import { afterAll, beforeAll, describe, expect, it } from 'vitest';
+import { chunks, ranges } from '../../cli/sweep/arrays.ts';
+import { Cluster, noCluster } from './cluster.ts';
+import { Bench } from './swathe.ts';
+import { PIECE, PLAN, rowsOf, timeless, until } from './sweeps.ts';
+
+const reason = noCluster();
+const bench = new Bench();
+bench.file('piece.yaml', PIECE);
+afterAll(() => bench.remove());
+
+describe('the arrays of a large sweep', () => {
+  it('hold each point once, with indices below what the cluster takes', () => {
+    const numbers = [1, 2, 3, 9, 10, 11, 25];
+    const found = chunks(numbers, 10);
+    expect(found).toEqual([
+      { offset: 0, indices: [1, 2, 3, 9] },
+      { offset: 10, indices: [0, 1] },
+      { offset: 20, indices: [5] },
+    ]);
+    expect(found.flatMap(({ offset, indices }) => indices.map((index) => offset + index))).toEqual(numbers);
+  });
+
+  it('are written with ranges', () => {
+    expect(ranges([1, 2, 3, 7, 9, 10])).toBe('1-3,7,9-10');
+    expect(ranges([])).toBe('');
+  });
+});
+
+describe.skipIf(reason !== undefined)(`a sweep on Slurm${reason === undefined ? '' : ` (left out: ${reason})`}`, () => {
+  const cluster = new Cluster();
+  beforeAll(async () => {
+    await cluster.start();
+    process.env.SLURM_CONF = cluster.configuration;
+  }, 120_000);
+  afterAll(async () => {
+    delete process.env.SLURM_CONF;
+    await cluster.stop();
+  }, 60_000);
+
+  const queue = (): string => cluster.command('squeue', '--noheader', '--array', '--format=%F_%K %T');
+  /** A task put back waits two minutes before it starts anew; the tests do not. */
+  const hurry = (job: string): void => {
+    if (cluster.command('squeue', '--noheader', '--array', `--jobs=${job}`, '--format=%r').includes('BeginTime')) {
+      cluster.command('scontrol', 'update', `JobId=${job}`, 'StartTime=now');
+    }
+  };
+  const ON_SLURM = ['--engine', 'slurm', '--partition', 'bench', '--at-once', '2', '--memory', '300 MB', '--checkpoint', '0.05'];
+
+  it('gives the table of the local engine, with one task cancelled and one put back midway, in more than one array', async () => {
+    // twelve points, ten to an array
+    bench.file(
+      'plan.yaml',
+      PLAN.replace('7 mm, 8 mm, 9 mm', '7 mm, 7.5 mm, 8 mm, 8.5 mm, 9 mm, 9.5 mm').replace('base:', 'set: {record.span: 150 ms}\nbase:'),
+    );
+    const submitted = await bench.swathe('sweep', 'plan.yaml', '--out', 'cluster/plan', ...ON_SLURM);
+    expect(submitted.error).toBe('');
+    expect(submitted.out).toMatch(/: 12 of 12 cases submitted \(jobs \d+, \d+, \d+; the last one gathers the table\)/);
+    const [first] = /jobs (\d+)/.exec(submitted.out)?.slice(1) ?? [];
+
+    const twice = await bench.swathe('sweep', 'plan.yaml', '--out', 'cluster/plan', ...ON_SLURM);
+    expect(twice.exit).toBe(4);
+    expect(twice.error).toMatch(
+      /the sweep is on the cluster already \(jobs .*\); see how it stands with --status, or end it with --cancel/,
+    );
+
+    await until(() => existsSync(bench.path('cluster/plan/points/0001/checkpoint-a.bin')), 120_000);
+    expect(queue().match(/RUNNING/g)?.length).toBeLessThanOrEqual(2);
+    cluster.command('scontrol', 'requeue', `${first}_1`);
+    cluster.command('scancel', `${first}_5`);
+    const { out } = await bench.swathe('sweep', 'cluster/plan', '--status');
+    expect(out).toMatch(/^on Slurm: jobs \d+, \d+, \d+$/m);
+    await until(() => {
+      if (queue() !== '') hurry(`${first}_1`);
+      return queue() === '';
+    }, 400_000);
+    const statuses = rowsOf(bench, 'cluster/plan').map(({ status }) => status);
+    expect(statuses.filter((status) => status === 'done')).toHaveLength(11);
+    expect(statuses[4]).toBe('open');
+    expect((bench.json('cluster/plan/points/0001/run.json').notes as string[]).join()).toContain('Resumed at step');
+
+    // only what is missing is submitted again
+    const again = await bench.swathe('sweep', 'plan.yaml', '--out', 'cluster/plan', ...ON_SLURM);
+    expect(again.out).toContain('1 of 12 cases submitted');
+    await until(() => queue() === '', 120_000);
+    const local = await bench.swathe('sweep', 'plan.yaml', '--out', 'here/plan', '--quiet');
+    expect(local.exit).toBe(0);
+    expect(timeless(bench, 'cluster/plan')).toBe(timeless(bench, 'here/plan'));
+    expect(bench.bytes('cluster/plan/overview.png').equals(bench.bytes('here/plan/overview.png'))).toBe(true);
+  }, 900_000);
+
+  it.skipIf(process.env.SWATHE_SLOW !== '1')(
+    'goes on after the end of its time, which it was warned of, and can be cancelled',
+    async () => {
+      bench.file('long.yaml', PLAN.replace('7 mm, 8 mm, 9 mm', '8 mm').replace('base:', 'set: {record.span: 500 s}\nbase:'));
+      const { exit, out: told } = await bench.swathe('sweep', 'long.yaml', '--out', 'long/long', ...ON_SLURM, '--time', '1 min');
+      expect(exit).toBe(0);
+      const [job] = /jobs (\d+)/.exec(told)?.slice(1) ?? [];
+      const notes = (): string[] =>
+        existsSync(bench.path('long/long/points/0001/run.json')) ? (bench.json('long/long/points/0001/run.json').notes as string[]) : [];
+      await until(() => {
+        hurry(`${job}_1`);
+        return notes().some((note) => note.startsWith('Resumed at step'));
+      }, 400_000);
+      const { out } = await bench.swathe('sweep', 'long/long', '--cancel');
+      expect(out).toMatch(/^cancelled: jobs/);
+      await until(() => queue() === '', 60_000);
+      expect(bench.json('long/long/points/0001/run.json').status).toBe('stopped');
+      const { out: nothing } = await bench.swathe('sweep', 'long/long', '--cancel');
+      expect(nothing).toBe('nothing of this sweep is on the cluster\n');
+    },
+    900_000,
+  );
+
+  const wrong: [string[], string][] = [
+    [['--partition', 'nowhere'], '--partition nowhere: the cluster has no such partition'],
+    [['--cpus', '900'], '--cpus 900: no node there has more than'],
+    [['--time', 'soon'], '--time soon: not a time above zero'],
+  ];
+  it.each(wrong)('with %j is refused before anything is submitted', async (words, message) => {
+    const { exit, error } = await bench.swathe('sweep', 'plan.yaml', '--out', 'none/plan', '--engine', 'slurm', ...words);
+    expect(error).toContain(message);
+    expect(exit).toBe(2);
+    expect(queue()).toBe('');
+  });
+});
