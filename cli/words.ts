@@ -69,7 +69,7 @@ export function numberWithin(option: string, text: string, limits: { least: numb
 }
 
 /** A word as a shell takes it back: quoted where it has to be. */
-function shellWord(word: string): string {
+export function shellWord(word: string): string {
   return /^[\w./:=@%+-]+$/.test(word) ? word : `'${word.replaceAll("'", "'\\''")}'`;
 }
 

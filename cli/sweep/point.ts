@@ -11,6 +11,8 @@ export interface Limits {
   memory_bytes: number;
   /** wall time over all sittings; undefined: as long as it takes */
   time_s: number | undefined;
+  /** 1 where as many cases run as there are cores */
+  threads: number;
   frames: number;
   checkpoint_s: number;
 }
@@ -126,12 +128,11 @@ function words({ caseFile, sets, folder, again }: Task, limits: Limits): string[
     ...sets.flatMap((set) => ['--set', set]),
     '--out',
     folder,
+    '--threads',
+    String(limits.threads),
     ...pictures,
     '--checkpoint',
     String(limits.checkpoint_s),
-    // the cores go to the cases
-    '--threads',
-    '1',
     ...(again ? ['--again'] : []),
     '--quiet',
   ];

@@ -74,12 +74,14 @@ function limitsOf({
   frames,
   memory,
   limit,
+  cpus,
   checkpoint_s,
 }: SweepOptions): Omit<Limits, 'memory_bytes'> & { memory_bytes: number | undefined } {
   if (frames === 1) throw new UsageError('frames', '--frames 1: a run has none, or two or more: its start and its end');
   return {
     memory_bytes: memory === undefined ? undefined : bytesOf('memory', memory),
     time_s: limit === undefined ? undefined : secondsOf('limit', limit),
+    threads: cpus,
     frames,
     checkpoint_s,
   };
@@ -90,12 +92,13 @@ function slurmOf(options: SweepOptions): SlurmOptions | undefined {
   const { engine, partition, cpus, time, atOnce, retry, memory, limit, frames, checkpoint_s, quiet } = options;
   if (engine !== 'local' && engine !== 'slurm') throw new UsageError('engine', `--engine ${engine}: neither local nor slurm`);
   const only = partition !== undefined ? 'partition' : time !== undefined ? 'time' : cpus !== 1 ? 'cpus' : undefined;
-  if (engine === 'local' && only !== undefined) throw new UsageError(only, `--${only} goes with --engine slurm`);
+  if (engine === 'local' && options.point === undefined && only !== undefined)
+    throw new UsageError(only, `--${only} goes with --engine slurm`);
   if (engine === 'local') return undefined;
   const words = [
     ...(memory === undefined ? [] : ['--memory', memory]),
     ...(limit === undefined ? [] : ['--limit', limit]),
-    ...['--frames', String(frames), '--checkpoint', String(checkpoint_s)],
+    ...['--cpus', String(cpus), '--frames', String(frames), '--checkpoint', String(checkpoint_s)],
   ];
   const memory_bytes = memory === undefined ? undefined : bytesOf('memory', memory) / TASK_SHARE;
   const time_s = time === undefined ? undefined : secondsOf('time', time);
