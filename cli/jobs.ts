@@ -37,7 +37,7 @@ export async function runJobs(
   const left = timeLeft(jobs);
   let ended = 0;
   const runJob = async ({ label, task, frames, updates }: Job): Promise<Ended> => {
-    const limits = { memory_bytes: memoryPerCase(atOnce), time_s: undefined, frames, checkpoint_s: CHECKPOINT_S };
+    const limits = { threads: 1, memory_bytes: memoryPerCase(atOnce), time_s: undefined, frames, checkpoint_s: CHECKPOINT_S };
     const ending = await runPoint(task, limits, interrupt.signal);
     ended++;
     if (ending.status === 'done') say(`${ended} of ${jobs.length}: ${label} done${left(updates)}`);
