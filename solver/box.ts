@@ -105,7 +105,7 @@ export function resolve(setup: Setup): Box {
     W,
     mobility,
     omegaPhi: 1 / (mobility / CS2 + 0.5),
-    wetting: (4 / W) * Math.cos(within('contactAngle', setup.contactAngle ?? Math.PI / 2, 0, Math.PI, '0 to pi')),
+    wetting: Math.exp((4 / W) * Math.cos(within('contactAngle', setup.contactAngle ?? Math.PI / 2, 0, Math.PI, '0 to pi'))),
     sigma,
     forceX: finite('force.x', setup.force?.x ?? 0),
     forceY: finite('force.y', setup.force?.y ?? 0),

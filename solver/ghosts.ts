@@ -152,9 +152,7 @@ function reflect(box: Box, set: Float64Array[], side: Side, axis: 'x' | 'y', edg
 
 /** phi at a wall whose first cell holds `phi`, from d(phi)/dn = -(4/W) cos(theta) phi (1 - phi), and the ghost beyond it. */
 function wettedGhost(c: number, phi: number): number {
-  const inside = Math.min(Math.max(phi, 0), 1);
-  const wall = (4 * inside) / (2 - c + Math.sqrt((2 - c) * (2 - c) + 8 * c * inside));
-  return phi + 2 * (wall - inside);
+  return phi < 0 || phi > 1 ? phi : (phi * c) / (1 - phi + phi * c);
 }
 
 /** Ghosts of phi: walls and solids carry the wetting, slip sides images, periodic sides copies. */

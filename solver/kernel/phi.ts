@@ -6,9 +6,7 @@ import { above, below, entry, listRow, nx, ny, zRow } from './rows';
 
 /** z beyond a wall whose first cell holds `z`. */
 @inline function wettedGhost(z: f64, c: f64): f64 {
-  const inside = Math.min(Math.max(1 + z, 0), 1);
-  const wall = (4 * inside) / (2 - c + Math.sqrt((2 - c) * (2 - c) + 8 * c * inside));
-  return z + 2 * (wall - inside);
+  return z > 0 || z < -1 ? z : z / ((1 + z) * c - z);
 }
 
 /** The ghosts that row y sees to: in its solids, beyond its ends, and beyond a side that takes them from it. */

@@ -6,6 +6,7 @@
 import { createSimulation, type Simulation } from '../../../solver/index.ts';
 import { advance, outline, profile } from '../channel.ts';
 import { type Check, row } from '../row.ts';
+import { pressureAtRest } from '../start.ts';
 
 /** Means of three independent groups. */
 export const ANSWERS = {
@@ -47,11 +48,14 @@ export async function rise(N: number, until = 3, precision: 'f32' | 'f64' = 'f32
   const viscosity = (eta: number) => (eta * dt * N * N) / 1000;
   const phi = (x: number, y: number) => profile(Math.hypot(x + 0.5 - N / 2, y + 0.5 - N / 2) - N / 4, W);
   const surfaceTension = (24.5 * dt * dt * N ** 3) / 1000;
+  const box = {
+    ...{ nx: 2 * N, ny: N, liquid: { density: 1, viscosity: viscosity(10) }, gas: { density: 0.1, viscosity: viscosity(1) } },
+    ...{ surfaceTension, interfaceWidth: W, gravity: { x: -0.98 * dt * dt * N, y: 0 } },
+  };
+  const p = pressureAtRest(box, phi);
   const s = await createSimulation({
-    ...{ nx: 2 * N, ny: N, sides: { left: 'slip', right: 'slip', bottom: 'wall', top: 'wall' }, precision },
-    ...{ liquid: { density: 1, viscosity: viscosity(10) }, gas: { density: 0.1, viscosity: viscosity(1) } },
-    ...{ surfaceTension, interfaceWidth: W, mobility: MOBILITY, gravity: { x: -0.98 * dt * dt * N, y: 0 } },
-    initial: { phi, pressure: (x, y) => ((1 - phi(x, y)) * surfaceTension) / (N / 4) },
+    ...{ ...box, mobility: MOBILITY, sides: { left: 'slip', right: 'slip', bottom: 'wall', top: 'wall' }, precision },
+    initial: { phi, pressure: (x, y) => p[y * box.nx + x] },
   });
   const seen: Rise = { speed: 0, circularity: 1, height: 0 };
   const moments = Math.round(until * 50);
