@@ -1,5 +1,6 @@
 import { CS2 } from './constants.ts';
 import { type Geometry, geometry } from './geometry.ts';
+import { type Profile, profileOf } from './profile.ts';
 import type { Drive, Fluid, Setup, Side } from './setup.ts';
 import { type Walls, walls } from './walls.ts';
 
@@ -14,9 +15,9 @@ export interface Box {
   /** 1 / eta of both phases: 1/eta is linear in phi (harmonic mixing) */
   fluidityLiquid: number;
   fluidityGas: number;
-  /** mu = 4 beta phi (phi - 1) (phi - 1/2) - kappa lap phi */
-  beta: number;
+  /** mu = kappa (2 bend phi (phi - 1) (phi - 1/2)/(1 + bend phi (1 - phi)) - lap phi), see profile.ts */
   kappa: number;
+  profile: Profile;
   W: number;
   mobility: number;
   omegaPhi: number;
@@ -86,9 +87,7 @@ export function resolve(setup: Setup): Box {
   const W = positive('interfaceWidth', setup.interfaceWidth ?? 5);
   if (W <= 2) fail(`interfaceWidth is ${W}; it must be more than 2 cells`);
   const mobility = positive('mobility', setup.mobility ?? 0.1);
-  // mu grad(phi) with the gradient and the Laplacian of the grid pulls 16/(15 W^2) less than sigma: both are h^2/6 and h^2/12 short
-  // in the second derivative, and the tanh profile has int phi''^2 / int phi'^2 = 16/(5 W^2)
-  const onGrid = sigma / (1 - 16 / (15 * W * W));
+  const profile = profileOf(W);
   const solids = geometry(setup);
   const buoyancy = finite('buoyancy', setup.buoyancy ?? 1);
   return {
@@ -100,8 +99,8 @@ export function resolve(setup: Setup): Box {
     rhoGas: positive('gas.density', gas.density),
     fluidityLiquid: 1 / positive('liquid.viscosity', setup.liquid.viscosity),
     fluidityGas: 1 / positive('gas.viscosity', gas.viscosity),
-    beta: (12 * onGrid) / W,
-    kappa: (3 * onGrid * W) / 2,
+    kappa: sigma / profile.pull,
+    profile,
     W,
     mobility,
     omegaPhi: 1 / (mobility / CS2 + 0.5),

@@ -95,8 +95,8 @@ export function collideVelocity(box: Box, cell: Cell): void {
   const d11 = keep * (f[5] - f[6] + f[7] - f[8] - mx * my);
   const d20 = 0.5 * keep * (f[1] + f[3] - f[2] - f[4] - (mx * mx - my * my));
   velocityMoments(f, (3 * cell.p) / box.rhoLiquid, cell.P / box.rhoLiquid, u, v, d20, d11);
-  cell.ux = u;
-  cell.uy = v;
+  cell.ux = (fastX - 0.5 * Fx) * held;
+  cell.uy = (fastY - 0.5 * Fy) * held;
 }
 
 /**

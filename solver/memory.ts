@@ -98,7 +98,7 @@ function writeNumbers(box: Box, header: Float64Array): void {
   header[H.RHO_GAS] = box.rhoGas;
   header[H.FLUIDITY_LIQUID] = box.fluidityLiquid;
   header[H.FLUIDITY_GAS] = box.fluidityGas;
-  header[H.BETA] = box.beta;
+  header[H.BEND] = box.profile.bend;
   header[H.KAPPA] = box.kappa;
   header[H.WIDTH] = box.W;
   header[H.OMEGA_PHI] = box.omegaPhi;

@@ -213,7 +213,7 @@ export class Reference implements Simulation {
         upflow += cell.ux;
         if (y < 2) this.stress[y][x] = cell.tauXY;
         if (y >= ny - 2) this.stress[2 + ny - 1 - y][x] = cell.tauXY;
-        const speed = Math.hypot(cell.ux, cell.uy);
+        const speed = this.box.twoPhase ? Math.hypot(...firstMoment(cell.f)) : Math.hypot(cell.ux, cell.uy);
         if (!(speed < speedLimit) && bad === undefined) {
           bad = { kind: Number.isFinite(speed) ? 'tooFast' : 'nonFinite', step: this.step + 1, x, y, speed };
         }
@@ -256,9 +256,13 @@ export class Reference implements Simulation {
     cell.phiY = (N - So) / 3 + (NE - SE + NW - SW) / 12;
     const laplacian = (4 * (E + W + N + So) + NE + NW + SE + SW - 20 * a) / 6;
     const gas = 1 - clip(a);
-    cell.sharpness = ((4 / box.W) * (1 - gas) * gas) / Math.sqrt(cell.phiX ** 2 + cell.phiY ** 2 + 1e-12);
-    const mu = 4 * box.beta * a * (a - 1) * (a - 0.5) - box.kappa * laplacian;
-    const heavy = (1 - share(a)) * (box.rhoLiquid - box.rhoGas);
+    const Y = (1 - gas) * gas;
+    const { bend, theta, weight } = box.profile;
+    cell.sharpness = (Y * (theta[0] + Y * (theta[1] + Y * theta[2]))) / Math.sqrt(cell.phiX ** 2 + cell.phiY ** 2 + 1e-12);
+    const mu = box.kappa * ((2 * bend * a * (a - 1) * (a - 0.5)) / (1 + bend * Y) - laplacian);
+    const whole = share(a);
+    const pulled = whole ** 2 * (weight[0] + whole * (weight[1] + whole * (weight[2] + whole * weight[3])));
+    const heavy = (1 - pulled) * (box.rhoLiquid - box.rhoGas);
     const forceX = mu * cell.phiX - heavy * box.gravityX + cell.Fx;
     const forceY = mu * cell.phiY - heavy * box.gravityY + cell.Fy;
     [cell.Fx, cell.Fy] = kick(box, fields, i, forceX, forceY);

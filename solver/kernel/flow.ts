@@ -91,7 +91,8 @@ function collide<T>(y: i32, flags: i32, start: usize, end: usize, top: v128): v1
   const twelfth = splat<T>(1.0 / 12.0);
   const fluidityGas = splat<T>(entry(H.FLUIDITY_GAS));
   const dFluidity = splat<T>(entry(H.FLUIDITY_LIQUID) - entry(H.FLUIDITY_GAS));
-  const beta4 = splat<T>(4 * entry(H.BETA));
+  const bend = splat<T>(entry(H.BEND));
+  const bent = splat<T>(2 * entry(H.KAPPA) * entry(H.BEND));
   const kappaSixth = splat<T>(entry(H.KAPPA) / 6);
   const driveX = entry(H.FORCE_X) + entry(H.DRIVE_FORCE);
   const driveY = entry(H.FORCE_Y);
@@ -110,7 +111,18 @@ function collide<T>(y: i32, flags: i32, start: usize, end: usize, top: v128): v1
   const keepF = splat<T>(1 - 1 / (3 * entry(H.NU0) + 0.5));
   const coupled = splat<T>(0.25 * COUPLING);
   const keepPhi = splat<T>(1 - omegaPhi);
-  const slope = splat<T>(4 / entry(H.WIDTH));
+  const slope = 4 / entry(H.WIDTH);
+  const cubed = slope * slope * slope;
+  const fifth = cubed * slope * slope;
+  const square = slope * slope / 3;
+  const norm = 1 / (1.0 / 6 - square / 30);
+  const weight0 = splat<T>(norm * (1 + square) / 2);
+  const weight1 = splat<T>(-norm * (1 + 7 * square) / 3);
+  const weight2 = splat<T>(3 * norm * square);
+  const weight3 = splat<T>(-1.2 * norm * square);
+  const theta0 = splat<T>(slope - cubed / 12 + fifth / 120);
+  const theta1 = splat<T>(cubed / 2 - fifth / 4);
+  const theta2 = splat<T>(fifth);
   const sharp = splat<T>((1 - 0.5 * omegaPhi) / 3);
   const gasLimit = splat<T>(entry(H.GAS_LIMIT));
   const tiny = splat<T>(1e-12);
@@ -139,10 +151,11 @@ function collide<T>(y: i32, flags: i32, start: usize, end: usize, top: v128): v1
     const inside = atMost<T>(atLeast<T>(phi, zero), one);
     const gas = sub<T>(one, inside);
     const steep = root<T>(mad<T>(phiX, phiX, mad<T>(phiY, phiY, tiny)));
-    const sharpness = div<T>(mul<T>(slope, mul<T>(inside, gas)), steep);
+    const both = mul<T>(inside, gas);
+    const sharpness = div<T>(mul<T>(both, mad<T>(both, mad<T>(both, theta2, theta1), theta0)), steep);
 
     // forces
-    const mu = sub<T>(mul<T>(mul<T>(beta4, mul<T>(phi, z)), sub<T>(phi, half)), mul<T>(kappaSixth, lap6));
+    const mu = sub<T>(div<T>(mul<T>(mul<T>(bent, mul<T>(phi, z)), sub<T>(phi, half)), mad<T>(bend, both, one)), mul<T>(kappaSixth, lap6));
     let accelX = mad<T>(mu, phiX, forceX);
     let accelY = mad<T>(mu, phiY, forceY);
 
@@ -175,7 +188,8 @@ function collide<T>(y: i32, flags: i32, start: usize, end: usize, top: v128): v1
       const Py = mad<T>(sub<T>(PNorth, PSouth), third, mul<T>(sub<T>(PA, PB), twelfth));
       const light = get(lightC + i);
       const lighter = sub<T>(light, liquidLight);
-      const heavy = sub<T>(one, share<T>(z));
+      const whole = share<T>(z);
+      const heavy = nmad<T>(mul<T>(whole, whole), mad<T>(whole, mad<T>(whole, mad<T>(whole, weight3, weight2), weight1), weight0), one);
       accelX = nmad<T>(lighter, Px, mul<T>(light, nmad<T>(heavy, heavyX, accelX)));
       accelY = nmad<T>(lighter, Py, mul<T>(light, nmad<T>(heavy, heavyY, accelY)));
       etaE = mul<T>(light, thickness<T>(z, zE, fluidityGas, dFluidity));
@@ -219,18 +233,24 @@ function collide<T>(y: i32, flags: i32, start: usize, end: usize, top: v128): v1
 
     // velocity
     const fluid = get(mask + i);
-    let ux = mul<T>(add<T>(sub<T>(mx, get(sound + i)), Fx), fluid);
-    let uy = mul<T>(add<T>(my, Fy), fluid);
+    const halfX = mul<T>(half, Fx);
+    const halfY = mul<T>(half, Fy);
+    let midX = mul<T>(add<T>(sub<T>(mx, get(sound + i)), halfX), fluid);
+    let midY = mul<T>(add<T>(my, halfY), fluid);
+    let ux = mad<T>(halfX, fluid, midX);
+    let uy = mad<T>(halfY, fluid, midY);
     if (!liquidAlone) {
       const excess = atLeast<T>(sub<T>(mul<T>(mad<T>(ux, ux, mul<T>(uy, uy)), gasLimit), one), zero);
       const held = div<T>(one, root<T>(mad<T>(sub<T>(one, share<T>(z)), excess, one)));
       ux = mul<T>(ux, held);
       uy = mul<T>(uy, held);
+      midX = mul<T>(midX, held);
+      midY = mul<T>(midY, held);
     }
     const xx = mul<T>(ux, ux);
     const yy = mul<T>(uy, uy);
     const u2 = add<T>(xx, yy);
-    fluxLanes = add<T>(fluxLanes, ux);
+    fluxLanes = add<T>(fluxLanes, midX);
     top = max<T>(top, u2);
 
     // the flow
@@ -270,8 +290,8 @@ function collide<T>(y: i32, flags: i32, start: usize, end: usize, top: v128): v1
     put(f0 + 8 * stride, add<T>(even68, odd68));
     if (flags & FIELDS) {
       put(phiOut + i, phi);
-      put(uxAt + i, ux);
-      put(uyAt + i, uy);
+      put(uxAt + i, midX);
+      put(uyAt + i, midY);
     }
 
     // the interface
@@ -279,16 +299,16 @@ function collide<T>(y: i32, flags: i32, start: usize, end: usize, top: v128): v1
     const zAfter = add<T>(nmad<T>(z, skimmed, z), notDenormal);
     const phiAfter = add<T>(one, zAfter);
     const sharpen = mul<T>(sharp, sharpness);
-    const vx = mul<T>(phiAfter, ux);
-    const vy = mul<T>(phiAfter, uy);
+    const vx = mul<T>(phiAfter, midX);
+    const vy = mul<T>(phiAfter, midY);
     const h10 = mad<T>(sharpen, phiX, mad<T>(keepPhi, sub<T>(get(j10C + i), vx), vx));
     const h01 = mad<T>(sharpen, phiY, mad<T>(keepPhi, sub<T>(get(j01C + i), vy), vy));
     const zThird = mul<T>(third, zAfter);
-    const vxx = mul<T>(vx, ux);
-    const vyy = mul<T>(vy, uy);
+    const vxx = mul<T>(vx, midX);
+    const vyy = mul<T>(vy, midY);
     const h20 = add<T>(zThird, vxx);
     const h02 = add<T>(zThird, vyy);
-    const h11 = mul<T>(vx, uy);
+    const h11 = mul<T>(vx, midY);
     const h21 = mul<T>(third, h01);
     const h12 = mul<T>(third, h10);
     const h22 = mul<T>(third, add<T>(zThird, add<T>(vxx, vyy)));

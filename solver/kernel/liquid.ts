@@ -129,9 +129,10 @@ export function collideLiquid<T>(y: i32, flags: i32, start: usize, end: usize, t
     const Fx = add<T>(accelX, mad<T>(two, stretchX, shearX));
     const Fy = add<T>(accelY, mad<T>(two, stretchY, shearY));
     const fluid = get(mask + i);
-    const ux = mul<T>(add<T>(sub<T>(mx, get(sound + i)), Fx), fluid);
+    const before = mul<T>(sub<T>(mx, get(sound + i)), fluid);
+    const ux = mad<T>(Fx, fluid, before);
     const uy = mul<T>(add<T>(my, Fy), fluid);
-    flux = add<T>(flux, ux);
+    flux = mad<T>(half, add<T>(before, ux), flux);
     const xx = mul<T>(ux, ux);
     const yy = mul<T>(uy, uy);
     const u2 = add<T>(xx, yy);
@@ -189,6 +190,10 @@ function leave<T>(y: i32, flags: i32, start: usize, end: usize): void {
   const uxOut = fieldRow(H.AT_UX, y);
   const uyOut = fieldRow(H.AT_UY, y);
   const phiOut = fieldRow(H.AT_PHI, y);
+  const mxC = fieldRow(H.AT_MX, y);
+  const myC = fieldRow(H.AT_MY, y);
+  const mask = fieldRow(H.AT_MASK, y);
+  const sound = address(H.AT_SECTIONS) + 2 * stride;
   const half = splat<T>(0.5);
   const quarter = splat<T>(0.25);
   const one = splat<T>(1);
@@ -198,8 +203,12 @@ function leave<T>(y: i32, flags: i32, start: usize, end: usize): void {
     const f0 = f + i;
     const a57 = sub<T>(get(f0 + 5 * stride), get(f0 + 7 * stride));
     const a86 = sub<T>(get(f0 + 8 * stride), get(f0 + 6 * stride));
-    const ux = add<T>(sub<T>(get(f0 + stride), get(f0 + 3 * stride)), add<T>(a57, a86));
-    const uy = add<T>(sub<T>(get(f0 + 2 * stride), get(f0 + 4 * stride)), sub<T>(a57, a86));
+    // the velocity in the middle of the kick
+    const fluid = get(mask + i);
+    const beforeX = mul<T>(sub<T>(get(mxC + i), get(sound + i)), fluid);
+    const beforeY = mul<T>(get(myC + i), fluid);
+    const ux = mul<T>(half, add<T>(beforeX, add<T>(sub<T>(get(f0 + stride), get(f0 + 3 * stride)), add<T>(a57, a86))));
+    const uy = mul<T>(half, add<T>(beforeY, add<T>(sub<T>(get(f0 + 2 * stride), get(f0 + 4 * stride)), sub<T>(a57, a86))));
     const z = get(zAt + i);
     const phi = add<T>(one, z);
     put(to + i, get(from + i));

@@ -16,7 +16,8 @@ function diffuseSurface(delta: number): number {
   const [cells, reach] = [4000, delta + AIR];
   const h = reach / cells;
   const at = (n: number) => profile(delta - (n + 0.5) * h, W);
-  const weight = (n: number) => 1 / 832 + at(n) * (1 - 1 / 832);
+  // gravity acts where surface tension would: see solver/profile.ts
+  const weight = (n: number) => 1 / 832 + at(n) ** 2 * (3 - 2 * at(n)) * (1 - 1 / 832);
   let outside = 0;
   for (let n = 0; n < cells; n++) outside += weight(n) * h;
   let u = 0;
