@@ -8,11 +8,13 @@ describe('a drop on a wall', () => {
     for (const [asked_deg, ratio] of SEGMENTS) expect(angle_deg(ratio)).toBeCloseTo(asked_deg, 2);
   });
 
-  // How far the angle may lie off, in degrees: away from 90 it comes out some 3 to 4 degrees nearer to it.
+  // How far the angle may lie off, in degrees; seen 0.4, 0.2, 0.1, 0.1 and 1.2
   it.each([
-    [60, 5],
-    [90, 1],
-    [120, 5],
+    [30, 2],
+    [60, 1],
+    [90, 0.5],
+    [120, 1],
+    [150, 3],
   ])('comes to rest at the %d degrees asked for', async (asked_deg, limit_deg) => {
     const seen = await restingAngle(asked_deg, R);
     expect(Math.abs(seen.angle_deg - asked_deg)).toBeLessThan(limit_deg);

@@ -8,10 +8,10 @@ const STEPS = process.env.SWATHE_SLOW === '1' ? 100_000 : 20_000;
 describe('a bubble at rest', () => {
   it('holds the Laplace pressure sigma/R within 1 %, air in water', async () => {
     const seen = await resting(20, 12_000);
-    // seen 1.0015
+    // seen 1.0045
     expect(Math.abs(seen.jump - 1)).toBeLessThan(0.01);
-    // seen 7e-3; a sharp interface would have none, and the gate is 1e-4
-    expect(seen.capillary).toBeLessThan(0.02);
+    // seen 2.3e-4; a sharp interface would have none, and the gate is 1e-4
+    expect(seen.capillary).toBeLessThan(1e-3);
   });
 
   it(`neither drifts nor loses gas in ${STEPS} steps in f32, with the viscosity of water`, async () => {

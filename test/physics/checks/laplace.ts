@@ -19,10 +19,13 @@ export function bubble(R: number, viscosity: number, sides: Setup['sides'] = PER
   });
 }
 
-/** p in the middle less p in the far corner, over sigma/R of the circle of the same area. */
+/**
+ * p in the middle less p in the far corner, over sigma/R of the circle phi = 1/2. The profile puts pi^2 W^2/48 more into the gas area over
+ * pi than that circle holds: the variance of a tanh profile [V].
+ */
 function jump(s: Simulation): number {
   const { nx, ny } = s.setup;
-  const radius = Math.sqrt(s.totals().gasArea / Math.PI);
+  const radius = Math.sqrt(s.totals().gasArea / Math.PI - (Math.PI * W) ** 2 / 48);
   return (s.pressure.get(nx / 2, ny / 2) - s.pressure.get(0, 0)) / (SIGMA / radius);
 }
 
