@@ -43,3 +43,10 @@ export function profileOf(W: number): Profile {
   const weight: Profile['weight'] = [(norm * (1 + a)) / 2, (-norm * (1 + 7 * a)) / 3, 3 * norm * a, -1.2 * norm * a];
   return { weight, bend, theta: [s - s ** 3 / 12 + s ** 5 / 120, s ** 3 / 2 - s ** 5 / 4, s ** 5], pull };
 }
+
+/** theta at Y = phi (1 - phi). */
+export const sharpening = ({ theta }: Profile, Y: number): number => Y * (theta[0] + Y * (theta[1] + Y * theta[2]));
+
+/** h at phi. */
+export const pulled = ({ weight }: Profile, phi: number): number =>
+  phi ** 2 * (weight[0] + phi * (weight[1] + phi * (weight[2] + phi * weight[3])));
