@@ -246,9 +246,8 @@ export class Reference implements Simulation {
 
   /** Forces and both collisions of a cell of a box with gas. */
   private collideTwoPhase(i: number): void {
-    const { box, cell, fields } = this;
+    const { box, cell, fields, S } = this;
     const { phi, p, P } = fields;
-    const { S } = this;
     const [E, N, W, So] = [phi[i + 1], phi[i + S], phi[i - 1], phi[i - S]];
     const [NE, NW, SW, SE] = [phi[i + S + 1], phi[i + S - 1], phi[i - S - 1], phi[i - S + 1]];
     const a = phi[i];
@@ -256,8 +255,7 @@ export class Reference implements Simulation {
     cell.phiX = (E - W) / 3 + (NE - NW + SE - SW) / 12;
     cell.phiY = (N - So) / 3 + (NE - SE + NW - SW) / 12;
     const laplacian = (4 * (E + W + N + So) + NE + NW + SE + SW - 20 * a) / 6;
-    const gas = 1 - clip(a);
-    const Y = (1 - gas) * gas;
+    const Y = clip(a) * (1 - clip(a));
     cell.sharpness = sharpening(box.profile, Y) / Math.sqrt(cell.phiX ** 2 + cell.phiY ** 2 + 1e-12);
     const mu = box.kappa * ((2 * box.profile.bend * a * (a - 1) * (a - 0.5)) / (1 + box.profile.bend * Y) - laplacian);
     const heavy = (1 - pulled(box.profile, share(a))) * (box.rhoLiquid - box.rhoGas);
