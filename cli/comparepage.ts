@@ -1,10 +1,13 @@
 import { type Comparison, type Pair, rangeOf } from '../output/index.ts';
-import { duration, percent, plain } from './numbers.ts';
+import { count, duration, percent, plain } from './numbers.ts';
 import { table } from './summary.ts';
 import { CAUTION } from './warnings.ts';
 
 /** Pairs told on the screen; all stand in the tables. */
 const MOST_PAIRS = 12;
+
+/** A difference that may be so many times what was seen takes too long to find out. */
+const HOPELESS = 5;
 
 /** A comparison on a page: the ranking, what the differences are and which of them are more than chance. */
 export function comparePage(found: Comparison, path: string): string {
@@ -41,12 +44,13 @@ function pairLine({ first, second, difference, verdict }: Pair, { by }: Comparis
   const points = rangeOf(by).most === 1 ? ' points' : '';
   const end = (share: number | null): string => show(share).replace(/ %$/, '');
   const interval = low === null ? 'no interval' : `95 %: ${end(low)} to ${end(high)}${points}`;
+  const farthest = Math.max(-(low ?? 0), high ?? 0);
   const from =
     basis === 'recording' ? "from the runs' own intervals" : paired ? `${runs[0]} pairs of equal seeds` : `${runs[0]} and ${runs[1]} runs`;
-  return `${first} less ${second}: ${end(value)}${points} (${interval}; ${from}): ${words(first, verdict)}`;
+  return `${first} less ${second}: ${end(value)}${points} (${interval}; ${from}): ${words(first, verdict, farthest > HOPELESS * Math.abs(value), `${end(farthest)}${points}`)}`;
 }
 
-function words(first: string, { state, more_s, moreRuns }: Pair['verdict']): string {
+function words(first: string, { state, more_s, moreRuns }: Pair['verdict'], hopeless: boolean, farthest: string): string {
   switch (state) {
     case 'better':
     case 'worse':
@@ -56,9 +60,11 @@ function words(first: string, { state, more_s, moreRuns }: Pair['verdict']): str
     case 'missing':
       return 'no interval, so nothing can be said; record longer or run three seeds or more';
     case "can't tell": {
-      if (more_s === null) return "can't tell: no difference was seen, and the interval says how large one might be";
-      const instead = moreRuns === null ? '' : `, or ${moreRuns} seeds instead`;
-      return `can't tell yet: record about ${plain(more_s, 2)} s more in each run${instead}, if the difference stays what it is`;
+      if (more_s === null) return `can't tell: no difference was seen, and it is hardly more than ${farthest}`;
+      const longer = `record about ${rough(more_s)} s more in each run`;
+      if (hopeless) return `can't tell: they may well be alike, the difference is hardly more than ${farthest}. To know, ${longer}`;
+      const instead = moreRuns === null ? '' : `, or take ${moreRuns} seeds`;
+      return `can't tell yet: ${longer}${instead}; that is if the difference stays what it is`;
     }
   }
 }
@@ -66,4 +72,8 @@ function words(first: string, { state, more_s, moreRuns }: Pair['verdict']): str
 /** How a value of the measure is written: shares in percent. */
 function shower(by: string): (value: number | null) => string {
   return rangeOf(by).most === 1 ? percent : plain;
+}
+
+function rough(seconds: number): string {
+  return seconds < 100 ? plain(seconds, 2) : count(Number(seconds.toPrecision(2)));
 }
