@@ -4,7 +4,8 @@ export interface Row {
   quantity: string;
   /** where the reference comes from, with its mark: [L] read, [M] from memory, [V] derived or recomputed independently */
   source: string;
-  reference: number;
+  /** of a finding its sign alone */
+  reference: number | '> 0' | '< 0';
   /** coarse to fine; `grid` says what the cells count */
   ours: { grid: string; value: number; error: number }[];
   /** unit of the errors: '%' of the scale, or the quantity's own */
@@ -13,8 +14,10 @@ export interface Row {
   order: number | undefined;
   /** what the error at the gated grid must stay below; a row without a gate records what was seen */
   gate: number | undefined;
+  /** of a finding half the 95 % interval */
   error: number;
-  verdict: 'pass' | 'FAIL' | 'seen';
+  /** of a finding: the interval lies on the published side of 0, on the other, or on both */
+  verdict: 'pass' | 'FAIL' | 'seen' | "can't tell";
 }
 
 /** A check by name; `long` adds the grids and steps that take more than some minutes. */
@@ -69,4 +72,27 @@ export function row(parts: RowParts): Row {
     (parts.orderGate === undefined || Math.abs((order ?? Number.NaN) - parts.orderGate) <= 0.1);
   const asked = gate !== undefined || parts.orderGate !== undefined;
   return { check, quantity, source, reference, ours, unit, order, gate, error, verdict: asked ? (held ? 'pass' : 'FAIL') : 'seen' };
+}
+
+export interface FindingParts {
+  check: string;
+  quantity: string;
+  source: string;
+  /** published sign of the quantity */
+  sign: 1 | -1;
+  /** ours with its 95 % interval, infinite where it cannot be told */
+  seen: { value: number; low: number; high: number };
+  unit: string;
+  /** what it was seen on, such as '4 seeds' */
+  grid: string;
+}
+
+/** A published sign, held against an interval: a finding can come out the other way, or not be told. */
+export function finding({ sign, seen, grid, ...parts }: FindingParts): Row {
+  const error = (seen.high - seen.low) / 2;
+  const least = Math.min(sign * seen.low, sign * seen.high);
+  const most = Math.max(sign * seen.low, sign * seen.high);
+  const verdict = least > 0 ? 'pass' : most < 0 || Number.isNaN(seen.value) ? 'FAIL' : "can't tell";
+  const ours = [{ grid, value: seen.value, error }];
+  return { ...parts, reference: sign > 0 ? '> 0' : '< 0', ours, order: undefined, gate: undefined, error, verdict };
 }

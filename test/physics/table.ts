@@ -1,7 +1,8 @@
 import type { Row } from './row.ts';
 import { shortfallOf } from './shortfalls.ts';
 
-const digits = (value: number): string => {
+const digits = (value: Row['reference']): string => {
+  if (typeof value === 'string') return value;
   if (value === 0 || !Number.isFinite(value)) return String(value);
   const size = Math.abs(value);
   return size >= 1e5 || size < 1e-3 ? value.toExponential(2) : String(Number(value.toPrecision(5)));

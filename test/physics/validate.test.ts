@@ -2,7 +2,7 @@ import { execFileSync, spawnSync } from 'node:child_process';
 import { basename } from 'node:path';
 import { describe, expect, it } from 'vitest';
 import { CHECKS } from './checks/index.ts';
-import { type Row, row } from './row.ts';
+import { finding, type Row, row } from './row.ts';
 import { KNOWN, shortfallOf } from './shortfalls.ts';
 import { csvTable, markdownTable, plainTable } from './table.ts';
 
@@ -39,6 +39,15 @@ describe('the validation table', () => {
   it('fails what is not a number', () => {
     const nothing = [{ cells: 10, value: Number.NaN }];
     expect(row({ check: 'made', quantity: 'q', source: '', reference: 1, gate: 1, ours: nothing }).verdict).toBe('FAIL');
+  });
+
+  it('holds a published sign against an interval', () => {
+    const verdict = (sign: 1 | -1, low: number, high: number) =>
+      finding({ check: 'made', quantity: 'q', source: '', sign, unit: 'Pa', grid: '3 seeds', seen: { value: (low + high) / 2, low, high } })
+        .verdict;
+    expect([verdict(1, 0.1, 0.3), verdict(1, -0.1, 0.3), verdict(1, -0.3, -0.1)]).toEqual(['pass', "can't tell", 'FAIL']);
+    expect([verdict(-1, 0.1, 0.3), verdict(-1, -0.1, 0.3), verdict(-1, -0.3, -0.1)]).toEqual(['FAIL', "can't tell", 'pass']);
+    expect(verdict(1, Number.NaN, Number.NaN)).toBe('FAIL');
   });
 
   it('stands in text, Markdown and CSV', () => {

@@ -5,6 +5,7 @@ import { check as cavity } from './cavity.ts';
 import { check as contactAngle } from './contact-angle.ts';
 import { check as cylinders } from './cylinders.ts';
 import { check as film } from './film.ts';
+import { findingChecks } from './findings.ts';
 import { check as inclined } from './inclined.ts';
 import { drift, check as laplace } from './laplace.ts';
 import { check as oscillating } from './oscillating.ts';
@@ -18,5 +19,6 @@ import { check as twoLayer } from './two-layer.ts';
 export const CHECKS: readonly Check[] = [
   ...[poiseuille, oscillating, taylorGreen, cavity, cylinders, inclined],
   ...[twoLayer, film, laplace, capillaryWave, contactAngle],
+  ...findingChecks,
   ...[risingBubble, stallCheck, longCheck, atRest, drift],
 ];
