@@ -22,24 +22,30 @@ function cells(row: Row): string[] {
   return [row.check, row.quantity, row.source, digits(row.reference), ours, withUnit(row.error, row.unit), order, gate, verdict];
 }
 
+/** What is held to the last bit and therefore stands in the tests, not in a table of errors. */
+const BESIDE =
+  'Any number of threads, a periodic shift, and a restart after a stop or a kill give the same bits, a mirrored or turned box the same values to round-off: ' +
+  'tests (threads, properties, symmetry, simulate, resume). The published table of Celik et al. 2008 is a test as well (convergence).';
+const FINDINGS =
+  'A finding-... row holds a published sign against our 95 % interval: its error is half that interval, FAIL means that ours has the other sign.';
+
 /** For a terminal: columns of equal width. */
 export function plainTable(rows: readonly Row[]): string {
   const lines = [HEADER, ...rows.map(cells)];
   const widths = HEADER.map((_, n) => Math.max(...lines.map((line) => line[n].length)));
-  return lines
-    .map((line) =>
-      line
-        .map((text, n) => text.padEnd(widths[n]))
-        .join('  ')
-        .trimEnd(),
-    )
-    .join('\n');
+  const padded = lines.map((line) =>
+    line
+      .map((text, n) => text.padEnd(widths[n]))
+      .join('  ')
+      .trimEnd(),
+  );
+  return [...padded, '', FINDINGS, BESIDE].join('\n');
 }
 
 /** For the README. */
 export function markdownTable(rows: readonly Row[]): string {
   const line = (texts: string[]): string => `| ${texts.map((text) => text.replaceAll('|', '\\|')).join(' | ')} |`;
-  return [line(HEADER), line(HEADER.map(() => '---')), ...rows.map((row) => line(cells(row)))].join('\n');
+  return [line(HEADER), line(HEADER.map(() => '---')), ...rows.map((row) => line(cells(row))), '', FINDINGS, '', BESIDE].join('\n');
 }
 
 /** One line a grid, so that a reader needs to split no cell. */

@@ -19,6 +19,6 @@ import { check as twoLayer } from './two-layer.ts';
 export const CHECKS: readonly Check[] = [
   ...[poiseuille, oscillating, taylorGreen, cavity, cylinders, inclined],
   ...[twoLayer, film, laplace, capillaryWave, contactAngle],
-  ...findingChecks,
   ...[risingBubble, stallCheck, longCheck, atRest, drift],
+  ...findingChecks,
 ];
