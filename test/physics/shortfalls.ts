@@ -1,16 +1,17 @@
 import type { Row } from './row.ts';
 
 const THICK =
-  'the thickness of the interface slows the wave (frequency^2 by some 0.2 W k), to first order; tried: sound-free start (no change), 4 times ' +
-  'smaller steps (0.003 a0 less), depth (none), W 5 (0.056), mobility 0.01 to 0.5 (best near 0.2)';
-const MEET = 'left are currents of the grid where the interface lies askew to it, and at its ends; 1e-4 of sigma/eta and less';
+  'the wave is slow, as if the thickness of the interface took some 0.2 W k of frequency^2 (an estimate that fits, not a cause shown); some 30 ' +
+  'set-ups were tried, mostly set A at 32 and 64 cells: W 3 to 5 (W 5: 0.056 at 128), mobility 0.01 to 0.5 (best near 0.2), sound-free start ' +
+  '(no change), depth, and smaller steps, which help at 128 cells';
+const MEET = 'currents beside the walls and where the interface lies askew to the grid; their cause is not shown';
 
 /** Gates not held yet: check, words the quantity begins with, why, and the figure that was seen. */
 export const KNOWN: readonly { check: string; quantity: string; reason: string }[] = [
   {
     ...{ check: 'laplace', quantity: 'capillary number of parasitic currents' },
     reason:
-      '2.3e-4 at R 20: it goes with the mobility, 0.8e-4 at 0.05 where the default of 0.1 is asked for (4.6e-4 at 0.02). At R 10 a jet of gas ' +
+      '2.3e-4 at R 20 with the default mobility of 0.1 (0.8e-4 at 0.05, 4.6e-4 at 0.02). At R 10 a jet of gas ' +
       'starts by itself after 12 000 steps, in f64 as well, at 832:1 only (200:1: none), sooner in thinner gas; its cause is not found',
   },
   {
@@ -25,8 +26,8 @@ export const KNOWN: readonly { check: string; quantity: string; reason: string }
     check: 'stall',
     quantity: 'rho g H^2/sigma 2.4',
     reason:
-      'creeps by 0.064 H at 32 cells when water wets fully, through a film thinner than the interface; with a contact angle of 20 degrees the ' +
-      'films tear and it stays (6e-6 H), but then at 3.6 as well (0.009 H at 24 cells)',
+      'creeps by 0.064 H at 32 cells when water wets fully, as the reference has it; its film is thinner than the interface. With a contact ' +
+      'angle of 20 degrees it stays (6e-6 H), but then at 3.6 it hardly rises (0.009 H at 24 cells)',
   },
   {
     check: 'long-bubble',

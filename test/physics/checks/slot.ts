@@ -8,7 +8,7 @@ import { createSimulation, type Fluid, type Simulation } from '../../../solver/i
 import { advance, CLOSED, crossings, profile } from '../channel.ts';
 import { type Check, row } from '../row.ts';
 
-/** Interface width, cells; the water wets fully: at 20 degrees the films tear at rho g H^2/sigma = 3.6, and what fills the slot stays. */
+/** Interface width, cells; the water wets fully, as the references have it; at 20 degrees a bubble that fills the slot hardly rises at rho g H^2/sigma = 3.6. */
 const [W, ANGLE] = [5, 0];
 
 interface Slot {
