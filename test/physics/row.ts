@@ -96,3 +96,6 @@ export function finding({ sign, seen, grid, ...parts }: FindingParts): Row {
   const ours = [{ grid, value: seen.value, error }];
   return { ...parts, reference: sign > 0 ? '> 0' : '< 0', ours, order: undefined, gate: undefined, error, verdict };
 }
+
+/** The row holds a published sign, which a plane section may not have; a finding that could not be computed is a plain failure. */
+export const isFinding = ({ reference, error }: Row): boolean => typeof reference === 'string' && !Number.isNaN(error);

@@ -2,7 +2,7 @@ import { execFileSync, spawnSync } from 'node:child_process';
 import { basename } from 'node:path';
 import { describe, expect, it } from 'vitest';
 import { CHECKS } from './checks/index.ts';
-import { finding, type Row, row } from './row.ts';
+import { finding, isFinding, type Row, row } from './row.ts';
 import { KNOWN, shortfallOf } from './shortfalls.ts';
 import { csvTable, markdownTable, plainTable } from './table.ts';
 
@@ -48,6 +48,7 @@ describe('the validation table', () => {
     expect([verdict(1, 0.1, 0.3), verdict(1, -0.1, 0.3), verdict(1, -0.3, -0.1)]).toEqual(['pass', "can't tell", 'FAIL']);
     expect([verdict(-1, 0.1, 0.3), verdict(-1, -0.1, 0.3), verdict(-1, -0.3, -0.1)]).toEqual(['FAIL', "can't tell", 'pass']);
     expect(verdict(1, Number.NaN, Number.NaN)).toBe('FAIL');
+    expect(isFinding(first(0.7))).toBe(false);
   });
 
   it('stands in text, Markdown and CSV', () => {

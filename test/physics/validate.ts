@@ -1,14 +1,15 @@
 /**
  * `npm run validate -- [name ...] [--long] [--readme]`: runs the checks of checks/, as many at once as there are cores, prints one
  * table and writes it to test/physics/validation.csv, with --readme between README.md's validation markers as well. A run of some
- * checks by name leaves both files alone. The exit code is 1 where a gate is missed that shortfalls.ts does not list.
+ * checks by name leaves both files alone. The exit code is 1 where a gate is missed that shortfalls.ts does not list; a
+ * published sign that comes out the other way is reported alone.
  */
 import { existsSync, readFileSync } from 'node:fs';
 import { availableParallelism } from 'node:os';
 import { isMainThread, parentPort, Worker, workerData } from 'node:worker_threads';
 import writeFileAtomic from 'write-file-atomic';
 import { CHECKS } from './checks/index.ts';
-import type { Row } from './row.ts';
+import { isFinding, type Row } from './row.ts';
 import { shortfallOf } from './shortfalls.ts';
 import { csvTable, markdownTable, plainTable } from './table.ts';
 
@@ -80,8 +81,9 @@ async function main(): Promise<void> {
   const rows = await runAll(names, asked.includes('--long'));
   process.stdout.write(`${plainTable(rows)}\n`);
   const failed = rows.filter(({ verdict }) => verdict === 'FAIL');
-  for (const row of failed) process.stdout.write(`\nFAIL ${row.check}, ${row.quantity}: ${shortfallOf(row) ?? 'not known before'}`);
-  const fresh = failed.filter((row) => shortfallOf(row) === undefined);
+  const reasonOf = (row: Row): string | undefined => (isFinding(row) ? 'the plane section shows the other sign' : shortfallOf(row));
+  for (const row of failed) process.stdout.write(`\nFAIL ${row.check}, ${row.quantity}: ${reasonOf(row) ?? 'not known before'}`);
+  const fresh = failed.filter((row) => reasonOf(row) === undefined);
   const held = rows.filter(({ verdict }) => verdict === 'pass').length;
   const untold = rows.filter(({ verdict }) => verdict === "can't tell").length;
   const more = untold === 0 ? '' : `, ${untold} findings that these runs can't tell`;
