@@ -1,3 +1,11 @@
+/** A liquid that thins under shear: eta = K rate^(n - 1) + yield stress / rate, not less than `least_Pa_s`. */
+export interface Rheology {
+  consistency_Pa_sn: number;
+  index: number;
+  yieldStress_Pa: number;
+  least_Pa_s: number;
+}
+
 /** A case in SI: what the text of a case file says, checked and with every default filled in. Angles in radians. */
 export interface Case {
   title: string;
@@ -12,7 +20,14 @@ export interface Case {
   };
   /** closed outlines of all fins, [across, along] in m, groups resolved to single fins */
   fins: Outline[];
-  liquid: { kind: 'water' | 'custom'; temperature_K?: number; density_kg_m3: number; viscosity_Pa_s: number };
+  liquid: {
+    kind: 'water' | 'sludge' | 'thinning' | 'custom';
+    temperature_K?: number;
+    density_kg_m3: number;
+    /** apparent viscosity at 100 1/s where there is a rheology */
+    viscosity_Pa_s: number;
+    rheology?: Rheology;
+  };
   /** of the liquid against the gas */
   surfaceTension_N_m: number;
   /** at membranes and fins, measured in the liquid */

@@ -92,10 +92,6 @@ function wrongType(path: Path, value: unknown, expected: string, schema: () => o
 function wrongKind(path: Path, value: unknown, issue: { options?: string[] }): PlacedFinding {
   const allowed = (issue.options ?? []).join(', ');
   if (value === undefined || value === '') return { path, problem: 'is missing', allowed };
-  if (value === 'sludge') {
-    const remedy = 'Sludge is not computed yet: take custom with the density, viscosity and surface tension at a typical shear rate';
-    return { path, problem: 'is not a liquid that can be computed', allowed, remedy };
-  }
   return { path, problem: 'is not one of the words allowed', allowed };
 }
 

@@ -11,3 +11,4 @@ export { type Derived, layOut } from './scale.ts';
 export { caseSchema } from './schema.ts';
 export { simulate } from './simulate.ts';
 export { caseText } from './text.ts';
+export { SLUDGE_CAUTION } from './thinning.ts';

@@ -8,6 +8,7 @@ import { waterDensity_kg_m3, waterSurfaceTension_N_m, waterViscosity_Pa_s } from
 import { gasOf } from './gas.ts';
 import { type CaseEntries, caseTable } from './schema.ts';
 import { type CaseTree, parseTree, plain } from './text.ts';
+import { apparentViscosity_Pa_s, sludge, TYPICAL_RATE_1_s } from './thinning.ts';
 import { untilOf } from './until.ts';
 
 /** Permeate flux of a deposit where the case tells none: 20 L/(m2 h), common practice. */
@@ -86,7 +87,17 @@ function liquidOf({ liquid }: CaseEntries): Pick<Case, 'liquid' | 'surfaceTensio
     const { density: density_kg_m3, viscosity: viscosity_Pa_s } = liquid;
     return { liquid: { kind, temperature_K, density_kg_m3, viscosity_Pa_s }, surfaceTension_N_m: liquid['surface tension'] };
   }
-  const density_kg_m3 = waterDensity_kg_m3(temperature_K);
-  const viscosity_Pa_s = waterViscosity_Pa_s(temperature_K, density_kg_m3);
-  return { liquid: { kind, temperature_K, density_kg_m3, viscosity_Pa_s }, surfaceTension_N_m: waterSurfaceTension_N_m(temperature_K) };
+  const water_kg_m3 = waterDensity_kg_m3(temperature_K);
+  const water_Pa_s = waterViscosity_Pa_s(temperature_K, water_kg_m3);
+  const surfaceTension_N_m = waterSurfaceTension_N_m(temperature_K);
+  if (kind === 'water')
+    return { liquid: { kind, temperature_K, density_kg_m3: water_kg_m3, viscosity_Pa_s: water_Pa_s }, surfaceTension_N_m };
+  const law =
+    kind === 'sludge'
+      ? { ...sludge(liquid.solids), yieldStress_Pa: 0 }
+      : { consistency_Pa_sn: liquid.consistency, index: liquid.index, yieldStress_Pa: liquid['yield stress'] };
+  const rheology = { ...law, least_Pa_s: water_Pa_s };
+  const viscosity_Pa_s = apparentViscosity_Pa_s(rheology, TYPICAL_RATE_1_s);
+  const density_kg_m3 = kind === 'sludge' ? water_kg_m3 : liquid.density;
+  return { liquid: { kind, temperature_K, density_kg_m3, viscosity_Pa_s, rheology }, surfaceTension_N_m };
 }

@@ -1,11 +1,12 @@
 /** From SI to the lattice: the one place where units are converted. Lattice density 1 is the liquid's, length 1 a cell, time 1 a step. */
 import type { Setup } from '../solver/index.ts';
 import { bandsOf, gridOf, skimRates, stepsOf } from './bands.ts';
-import type { Case } from './case.ts';
+import type { Case, Rheology } from './case.ts';
 import { finDistance, solidCells } from './fins.ts';
 import { fitting_m } from './gas.ts';
 import { meanArea_m2 } from './mixture.ts';
 import { onShare } from './pulse.ts';
+import { rateOf_1_s } from './thinning.ts';
 
 /** Sizes and numbers that follow from a case; all the conversion factors there are. */
 export interface Derived {
@@ -16,7 +17,10 @@ export interface Derived {
   /** steps of settling and recording together; steps between wall samples */
   steps: number;
   sampleEvery: number;
+  /** at 100 1/s where the liquid thins */
   tauLiquid: number;
+  /** of a liquid that thins: the thickest it is computed, and the shear rate below which that bites */
+  thickest?: { viscosity_Pa_s: number; below_1_s: number };
   tauGas: number;
   densityRatio: number;
   /** of the mean diameter of the bubbles let in and the expected rise speed */
@@ -62,7 +66,7 @@ export function layOut(panel: Case): { setup: Setup; derived: Derived } {
     nx,
     ny,
     sides: { left: 'wall', right: 'wall', bottom: 'periodic', top: 'periodic' },
-    liquid: { density: 1, viscosity: viscosity(panel.liquid.viscosity_Pa_s) },
+    liquid: { density: 1, viscosity: viscosity(panel.liquid.viscosity_Pa_s), ...rheologyOf(panel.liquid.rheology, viscosity, dt_s) },
     gas: { density: gasDensity, viscosity: viscosity(panel.gas.viscosity_Pa_s) },
     surfaceTension,
     interfaceWidth: INTERFACE_WIDTH,
@@ -77,6 +81,18 @@ export function layOut(panel: Case): { setup: Setup; derived: Derived } {
     ...startOf(panel, dx_m, surfaceTension),
   };
   return { setup, derived };
+}
+
+/** Shear rates times the step make lattice rates, viscosities go with `viscosity`. */
+function rheologyOf(
+  rheology: Rheology | undefined,
+  viscosity: (eta_Pa_s: number) => number,
+  dt_s: number,
+): Pick<Setup['liquid'], 'rheology'> {
+  if (rheology === undefined) return {};
+  const { consistency_Pa_sn, index, yieldStress_Pa, least_Pa_s } = rheology;
+  const consistency = viscosity(consistency_Pa_sn) * dt_s ** (1 - index);
+  return { rheology: { consistency, index, yieldStress: viscosity(yieldStress_Pa) * dt_s, least: viscosity(least_Pa_s) } };
 }
 
 function driveOf({ channel }: Case, { nx, unit }: Derived): NonNullable<Setup['drive']> {
@@ -121,6 +137,7 @@ function derive(panel: Case): Derived {
     sampleEvery,
     tauLiquid: tau(liquid.viscosity_Pa_s, liquid.density_kg_m3),
     tauGas: tau(gas.viscosity_Pa_s, gas.density_kg_m3),
+    ...thickestOf(liquid, dx_m, dt_s),
     densityRatio: liquid.density_kg_m3 / gas.density_kg_m3,
     Re: (liquid.density_kg_m3 * riseSpeed_m_s(panel) * diameter_m) / liquid.viscosity_Pa_s,
     Eo: (difference_kg_m3 * GRAVITY_m_s2 * diameter_m ** 2) / surfaceTension_N_m,
@@ -132,6 +149,15 @@ function derive(panel: Case): Derived {
     unit: { velocity_m_s: dx_m / dt_s, stress_Pa: liquid.density_kg_m3 * (dx_m / dt_s) ** 2, area_m2: dx_m ** 2 },
     ...bandsOf(panel),
   };
+}
+
+/** Most kinematic viscosity the solver carries beside gas, lattice units. */
+const MOST_NU = 0.16;
+
+function thickestOf({ rheology, density_kg_m3 }: Case['liquid'], dx_m: number, dt_s: number): Pick<Derived, 'thickest'> {
+  if (rheology === undefined) return {};
+  const viscosity_Pa_s = (MOST_NU * density_kg_m3 * dx_m ** 2) / dt_s;
+  return { thickest: { viscosity_Pa_s, below_1_s: rateOf_1_s(rheology, viscosity_Pa_s) } };
 }
 
 /**

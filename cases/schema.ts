@@ -48,6 +48,26 @@ const water = z.strictObject({
   temperature: quantity('temperature', { unit: 'degC', least: 1, most: 60, default: '20 degC', says: 'of water and air' }),
 });
 
+const sludge = z.strictObject({
+  kind: z.literal('sludge'),
+  solids: quantity('density', { unit: 'g/L', least: 2, most: 20, says: 'suspended solids of the activated sludge' }),
+  temperature: quantity('temperature', { unit: 'degC', least: 1, most: 60, default: '20 degC', says: 'of sludge and air' }),
+});
+
+const thinning = z.strictObject({
+  kind: z.literal('thinning'),
+  consistency: quantity('viscosity', {
+    unit: 'mPa s',
+    least: 0.2,
+    most: 5000,
+    says: 'K of viscosity = K rate^(n - 1), that is the viscosity at a shear rate of 1 1/s without the yield stress',
+  }),
+  index: plainNumber({ least: 0.2, most: 1, says: 'n of viscosity = K rate^(n - 1)' }),
+  'yield stress': quantity('stress', { unit: 'Pa', least: 0, most: 10, default: '0 Pa', says: 'below which the liquid hardly flows' }),
+  density: quantity('density', { unit: 'kg/m3', least: 500, most: 2000, default: '1000 kg/m3', says: 'of the liquid' }),
+  temperature: quantity('temperature', { unit: 'degC', least: 1, most: 60, default: '20 degC', says: 'of liquid and air' }),
+});
+
 const custom = z.strictObject({
   kind: z.literal('custom'),
   density: quantity('density', { unit: 'kg/m3', least: 500, most: 2000, says: 'of the liquid' }),
@@ -83,7 +103,7 @@ export const caseTable = z
     title: line(200, 'one line for people', 'Untitled panel'),
     channel,
     fins: finKeys,
-    liquid: leftOut(z.discriminatedUnion('kind', [water, custom]), { kind: 'water' }),
+    liquid: leftOut(z.discriminatedUnion('kind', [water, sludge, thinning, custom]), { kind: 'water' }),
     gas: gasKeys,
     grid: leftOut(grid),
     record: leftOut(recordKeys),

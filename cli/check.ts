@@ -67,6 +67,14 @@ function page(panel: Case, derived: Derived, forecast: Forecast, bites: string[]
       'bubbles',
       `${gas.bubble.kinds.map((kind) => mm(kind.diameter_m)).join(' and ')}, ${plain(derived.bubblesPerSecond)} per second, gas velocity ${plain(1000 * derived.gasVelocity_m_s)} mm/s${pulseText(gas)}`,
     ],
+    ...(derived.thickest === undefined
+      ? []
+      : ([
+          [
+            'liquid',
+            `${panel.liquid.kind}, ${plain(1000 * panel.liquid.viscosity_Pa_s)} mPa s at 100 1/s, at most ${plain(1000 * derived.thickest.viscosity_Pa_s)} (below ${plain(derived.thickest.below_1_s, 2)} 1/s)`,
+          ],
+        ] as [string, string][])),
     ['numbers', `Re ${plain(derived.Re)}, Eo ${plain(derived.Eo)}, Mo ${plain(derived.Mo)}`],
     [
       'grid',

@@ -1,4 +1,4 @@
-import type { Case, Derived } from '../cases/index.ts';
+import { type Case, type Derived, SLUDGE_CAUTION } from '../cases/index.ts';
 import { plain } from './numbers.ts';
 
 const GRAVITY_M_S2 = 9.80665;
@@ -8,6 +8,9 @@ const GRAVITY_M_S2 = 9.80665;
  * @see Bretherton 1961, J. Fluid Mech. 10, 166; its plane form gives rho g H^2 / sigma = 2.871 (derived, not printed there)
  */
 const STALL_GAP = 1.694;
+
+/** Shear rate below which viscosity hardly matters to scoured walls, which see some 100 1/s. */
+const SLOW_1_S = 1;
 
 /** Cells across a bubble, least: the interface alone takes five. */
 const LEAST_CELLS = 16;
@@ -19,6 +22,7 @@ const FEW_BUBBLES = 20;
 export function warnings(panel: Case, derived: Derived): string[] {
   return [
     stalled(panel),
+    ...thinning(panel, derived),
     coarse(panel, derived),
     softened(panel, derived),
     shortRecord(panel),
@@ -35,6 +39,18 @@ function stalled({ channel, liquid, gas, surfaceTension_N_m }: Case): string | u
     `gap ${plain(1000 * channel.gap_m)} mm is below ${plain(1000 * limit_m)} mm (${STALL_GAP} capillary lengths): a plane bubble that spans it ` +
     'does not rise by itself, though a real one does. Widen channel.gap, or set an upflow'
   );
+}
+
+function thinning({ liquid: { kind } }: Case, { thickest }: Derived): string[] {
+  if (thickest === undefined) return [];
+  const { viscosity_Pa_s, below_1_s } = thickest;
+  const found = kind === 'sludge' ? [SLUDGE_CAUTION] : [];
+  if (below_1_s > SLOW_1_S)
+    found.push(
+      `below a shear rate of ${plain(below_1_s)} 1/s the liquid is computed with ${plain(1000 * viscosity_Pa_s)} mPa s, thinner than it is. ` +
+        'Raise grid.speed, or take fewer cells across',
+    );
+  return found;
 }
 
 function coarse({ grid, gas }: Case, { cellsPerBubble }: Derived): string | undefined {

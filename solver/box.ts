@@ -1,6 +1,7 @@
 import { CS2 } from './constants.ts';
 import { type Geometry, geometry } from './geometry.ts';
 import { type Profile, profileOf } from './profile.ts';
+import { NU_LIMIT } from './rheology.ts';
 import type { Drive, Fluid, Setup, Side } from './setup.ts';
 import { type Walls, walls } from './walls.ts';
 
@@ -48,7 +49,6 @@ const LEAST_BYTES = 72;
 
 /** nu0 over the kinematic viscosity of the liquid */
 const NU0_SHARE = 0.01;
-const NU_LIMIT = 0.16;
 
 const fail = (what: string): never => {
   throw new RangeError(`setup: ${what}`);
@@ -83,6 +83,7 @@ export function resolve(setup: Setup): Box {
   if (twoPhase && setup.surfaceTension === undefined) fail('surfaceTension is missing; a box with gas needs it (0 is allowed)');
   const sigma = finite('surfaceTension', setup.surfaceTension ?? 0);
   if (sigma < 0) fail(`surfaceTension is ${sigma}; it must not be negative`);
+  checkRheology(setup);
   const gas = setup.gas ?? setup.liquid;
   const W = positive('interfaceWidth', setup.interfaceWidth ?? 5);
   if (W <= 2) fail(`interfaceWidth is ${W}; it must be more than 2 cells`);
@@ -128,6 +129,19 @@ function sharedViscosity(liquid: Fluid, gas: Fluid): number {
     if (nu > NU_LIMIT) fail(`${name}.viscosity / ${name}.density is ${nu}; it must be at most ${NU_LIMIT} in a box with gas`);
   }
   return (NU0_SHARE * liquid.viscosity) / liquid.density;
+}
+
+function checkRheology({ liquid, gas }: Setup): void {
+  if (gas?.rheology !== undefined) fail('gas.rheology is given; only a liquid has one');
+  if (liquid.rheology === undefined) return;
+  if (gas === undefined) fail('liquid.rheology is given; it needs a box with gas');
+  const { consistency, index, yieldStress, least, most = NU_LIMIT } = liquid.rheology;
+  positive('liquid.rheology.consistency', consistency);
+  within('liquid.rheology.index', index, 0.1, 1, '0.1 to 1');
+  if (finite('liquid.rheology.yieldStress', yieldStress) < 0)
+    fail(`liquid.rheology.yieldStress is ${yieldStress}; it must not be negative`);
+  within('liquid.rheology.most', positive('liquid.rheology.most', most), 0, NU_LIMIT, `0 to ${NU_LIMIT}`);
+  within('liquid.rheology.least', positive('liquid.rheology.least', least), 0, most * liquid.density, `0 to ${most * liquid.density}`);
 }
 
 function share(value: number): number {

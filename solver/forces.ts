@@ -12,6 +12,7 @@
  *              1/rho - 1/rhoLiquid of both sides: keeps neighbours from parting into a checkerboard
  */
 import type { Box } from './box.ts';
+import { lookUp } from './rheology.ts';
 
 /** share of the change of pressure that acts at once */
 const SOUND_FRICTION = 0.2;
@@ -27,6 +28,9 @@ export interface FlowFields {
   /** sum of f as it arrives */
   sum: Float64Array;
   P: Float64Array;
+  /** eta of a liquid that thins, on the face between a cell and the next along x, along y; unused otherwise */
+  etaX: Float64Array;
+  etaY: Float64Array;
 }
 
 /** phi this close to 0 or 1 counts as pure gas or liquid where densities and viscosities are made of it: liquid is left alone there */
@@ -39,7 +43,19 @@ export const share = (phi: number): number => clip((phi - PURE) / (1 - 2 * PURE)
 
 const density = (box: Box, phi: number): number => box.rhoGas + share(phi) * (box.rhoLiquid - box.rhoGas);
 
-export const viscosity = (box: Box, phi: number): number => 1 / (box.fluidityGas + share(phi) * (box.fluidityLiquid - box.fluidityGas));
+export const viscosity = (box: Box, phi: number, liquid = 1 / box.fluidityLiquid): number =>
+  1 / (box.fluidityGas + share(phi) * (1 / liquid - box.fluidityGas));
+
+/** eta of a liquid that thins on the faces of cell i towards larger x and y, by the velocities that arrive. */
+export function thinFaces(table: Float64Array, S: number, { mx, my, etaX, etaY }: FlowFields, i: number): void {
+  const mean = (m: Float64Array, j: number, across: number): number =>
+    0.25 * (m[i + across] - m[i - across] + m[j + across] - m[j - across]);
+  const rate2 = (stretchX: number, stretchY: number, shear: number): number =>
+    2 * (stretchX * stretchX + stretchY * stretchY) + shear * shear;
+  const [E, N] = [i + 1, i + S];
+  etaX[i] = lookUp(table, rate2(mx[E] - mx[i], mean(my, E, S), my[E] - my[i] + mean(mx, E, S)));
+  etaY[i] = lookUp(table, rate2(mean(mx, N, 1), my[N] - my[i], mx[N] - mx[i] + mean(my, N, 1)));
+}
 
 /** Index into P of the cell with index i of the other fields. */
 export const wideIndex = (box: Box, i: number): number => i + box.nx + 5 + 2 * Math.floor(i / (box.nx + 2));
@@ -68,9 +84,12 @@ export function kick(box: Box, fields: FlowFields, i: number, forceX: number, fo
   const Py = (P[j + T] - P[j - T]) / 3 + (P[j + T + 1] - P[j - T + 1] + P[j + T - 1] - P[j - T - 1]) / 12;
   const lighter = light - 1 / box.rhoLiquid;
   // viscous force per velocity of each face; nu0 is the populations' own, and stops at walls
-  const face = (n: number): number => viscosity(box, 0.5 * (a + phi[n])) * light - box.nu0 * open[n];
+  const thins = box.setup.liquid.rheology !== undefined;
+  const face = (n: number, liquid: number): number =>
+    viscosity(box, 0.5 * (a + phi[n]), thins ? liquid : undefined) * light - box.nu0 * open[n];
+  const { etaX, etaY } = fields;
   const [E, W, N, So] = [i + 1, i - 1, i + S, i - S];
-  const [cE, cW, cN, cS] = [face(E), face(W), face(N), face(So)];
+  const [cE, cW, cN, cS] = [face(E, etaX[i]), face(W, etaX[W]), face(N, etaY[i]), face(So, etaY[So])];
   const x =
     2 * (cE * (mx[E] - mx[i]) - cW * (mx[i] - mx[W])) +
     cN * (mx[N] - mx[i] + 0.25 * (my[E] - my[W] + my[N + 1] - my[N - 1])) -

@@ -135,6 +135,13 @@ export const THREADS = 90;
 export const ASKED_STEPS = 91;
 export const ASKED_SAMPLES = 92;
 
+// ---- boxes whose liquid thins under shear
+/** 1 where it does; eta of the face to the next cell along x, along y, with ghosts; eta over rate^2 in f64 */
+export const THINS = 95;
+export const AT_ETA_X = 96;
+export const AT_ETA_Y = 97;
+export const AT_TABLE = 98;
+
 // ---- state
 export const STEP = 64;
 /** slot of the ring that holds row -1 */

@@ -3,6 +3,7 @@ import { BLOCK } from './constants.ts';
 import * as H from './header.ts';
 import { listBytes, writeLists } from './lists.ts';
 import { sharesMemory } from './module.ts';
+import { viscosityTable } from './rheology.ts';
 import type { Side } from './setup.ts';
 import { tileBytes, writeTiles } from './tiles.ts';
 import { wallSpeed } from './walls.ts';
@@ -15,6 +16,8 @@ const SAMPLE_BYTES = 4 << 20;
 const FIELDS = [H.AT_PHI, H.AT_UX, H.AT_UY, H.AT_P, H.AT_MASK, H.AT_TAU];
 /** in boxes with gas alone */
 const ARRIVING = [H.AT_SUM, H.AT_N20, H.AT_N11, H.AT_J10, H.AT_J01];
+/** where the liquid thins */
+const OF_FACES = [H.AT_ETA_X, H.AT_ETA_Y];
 const WITH_GHOSTS = [H.AT_Z, H.AT_MX, H.AT_MY, H.AT_LIGHT, H.AT_OPEN];
 
 /** What the host knows of the kernel's memory beside the header. */
@@ -47,11 +50,15 @@ export function layMemory(box: Box): MemoryMap {
     end += Math.ceil(bytes / 16) * 16;
     return at;
   };
+  const table = setup.liquid.rheology === undefined ? new Float64Array(0) : viscosityTable(setup.liquid);
   const ring = ny + 3;
   const entries: [number, number][] = [
     [H.AT_POPULATIONS, take(ring * 18 * strideBytes) + 16],
     [H.AT_PRESSURE, take((ny + 4) * strideBytes) + 16 + 2 * strideBytes],
-    ...WITH_GHOSTS.map((at): [number, number] => [at, take((ny + 2) * strideBytes) + 16 + strideBytes]),
+    ...[...WITH_GHOSTS, ...(table.length > 0 ? OF_FACES : [])].map((at): [number, number] => [
+      at,
+      take((ny + 2) * strideBytes) + 16 + strideBytes,
+    ]),
     ...[...FIELDS, ...(box.twoPhase ? ARRIVING : [])].map((at): [number, number] => [at, take(ny * strideBytes) + 16]),
     [H.AT_SKIM, take(strideBytes)],
     [H.AT_WEIGHTS, take(4 * strideBytes)],
@@ -59,6 +66,7 @@ export function layMemory(box: Box): MemoryMap {
     [H.AT_ROWS, take(32 * ny)],
     [H.AT_BLOCKS, take(2 * Math.ceil(ny / BLOCK) * strideBytes)],
     ...[...listBytes(box), ...(box.twoPhase ? tileBytes(box) : [])].map(([at, bytes]): [number, number] => [at, take(bytes)]),
+    [H.AT_TABLE, take(8 * table.length)],
     [H.AT_SAMPLES, take(sampleCapacity * sampleBytes)],
   ];
   const pages = Math.ceil(end / 65536);
@@ -72,6 +80,8 @@ export function layMemory(box: Box): MemoryMap {
   header[H.RING] = ring;
   header[H.THREADS] = 1;
   const map: MemoryMap = { memory, header, bytesPerNumber, stride: strideBytes / bytesPerNumber, sampleCapacity };
+  header[H.THINS] = table.length > 0 ? 1 : 0;
+  new Float64Array(memory.buffer, header[H.AT_TABLE], table.length).set(table);
   writeNumbers(box, header);
   writeRows(box, map);
   writeLists(box, header, bytesPerNumber);

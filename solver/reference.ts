@@ -13,11 +13,12 @@ import ndarray from 'ndarray';
 import { type Box, driveForce, resolve } from './box.ts';
 import { type Cell, collideInterface, collideLiquid, collideVelocity, firstMoment, newCell } from './collide.ts';
 import { Q } from './constants.ts';
-import { clip, coupling, type FlowFields, kick, pressureUpdate, share, viscosity, wideIndex } from './forces.ts';
+import { clip, coupling, type FlowFields, kick, pressureUpdate, share, thinFaces, viscosity, wideIndex } from './forces.ts';
 import { fillGhosts, fillPhiGhosts, fillReturns, fillWallGhosts, fillWide, indexOf } from './ghosts.ts';
 import { ex, ey } from './lattice.ts';
 import { pulled, sharpening } from './profile.ts';
 import { Recorder } from './recorder.ts';
+import { EVERY, viscosityTable } from './rheology.ts';
 import type { Setup } from './setup.ts';
 import type { Field, Samples, Simulation, Status } from './simulation.ts';
 import { equilibriumState, placeCircle } from './state.ts';
@@ -44,6 +45,8 @@ export class Reference implements Simulation {
   private readonly sectionGas: Float64Array;
   private readonly sound: Float64Array;
   private readonly recorder: Recorder;
+  /** eta of a liquid that thins over rate^2 */
+  private readonly table: Float64Array | undefined;
   private readonly cell: Cell = newCell();
   /** drive force now, mean ux now and one step ago, gas area, gas skimmed */
   private readonly totalsNow = new Float64Array(5);
@@ -53,6 +56,7 @@ export class Reference implements Simulation {
     this.box = resolve(setup);
     const { nx, ny } = this.box;
     this.S = nx + 2;
+    this.table = setup.liquid.rheology && viscosityTable(setup.liquid);
     const size = this.S * (ny + 2);
     const field = () => new Float64Array(size);
     const populations = () => Array.from({ length: Q }, field);
@@ -62,7 +66,7 @@ export class Reference implements Simulation {
     this.gNext = populations();
     this.fields = {
       ...{ phi: field(), mx: field(), my: field(), sum: field(), P: new Float64Array((nx + 4) * (ny + 4)) },
-      ...{ ux: field(), uy: field(), p: field() },
+      ...{ ux: field(), uy: field(), p: field(), etaX: field(), etaY: field() },
     };
     this.fields.phi.fill(1);
     this.stress = Array.from({ length: 4 }, () => new Float64Array(nx));
@@ -175,6 +179,8 @@ export class Reference implements Simulation {
     }
     fillWallGhosts(box, fields);
     fillWide(box, fields.P);
+    if (this.table === undefined || this.step % EVERY !== 0) return;
+    for (let y = -1; y < ny; y++) for (let x = -1; x < nx; x++) if (x >= 0 || y >= 0) thinFaces(this.table, this.S, fields, this.at(x, y));
   }
 
   // ---- 3. collision
@@ -292,10 +298,11 @@ export class Reference implements Simulation {
 
   /** The very force along x that the wall beyond a cell took from it in this step; 0 under a solid and on sides that are no wall. */
   private friction(x: number, inside: number, beyond: number): number {
-    const { phi, mx } = this.fields;
+    const { phi, mx, etaY } = this.fields;
     const [i, j] = [this.at(x, inside), this.at(x, beyond)];
     const { open } = this.box.walls;
-    return open[i] === 1 && open[j] === 0 ? viscosity(this.box, 0.5 * (phi[i] + phi[j])) * (mx[i] - mx[j]) : 0;
+    const liquid = this.table && etaY[Math.min(i, j)];
+    return open[i] === 1 && open[j] === 0 ? viscosity(this.box, 0.5 * (phi[i] + phi[j]), liquid) * (mx[i] - mx[j]) : 0;
   }
 
   takeSamples(): Samples {

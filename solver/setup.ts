@@ -10,8 +10,22 @@ export type Side = 'periodic' | 'wall' | 'slip' | { speed: number };
 export interface Fluid {
   /** density */
   density: number;
-  /** dynamic viscosity eta */
+  /** dynamic viscosity eta; with a rheology what the box starts with, and what the populations' own small viscosity is a share of */
   viscosity: number;
+  /** of a liquid beside gas: eta = consistency rate^(index - 1) + yieldStress / rate, bounded below and above */
+  rheology?: Rheology;
+}
+
+/** A liquid that thins under shear; yieldStress 0 for none. */
+interface Rheology {
+  consistency: number;
+  /** 0.1 to 1 */
+  index: number;
+  yieldStress: number;
+  /** least eta */
+  least: number;
+  /** most eta over the density; 0.16, all that an explicit viscous force bears, by default */
+  most?: number;
 }
 
 /** A vector along (x) and across (y) the channel. */

@@ -1,4 +1,4 @@
-import type { Recording, WallSide } from '../../cases/index.ts';
+import { type Recording, SLUDGE_CAUTION, type WallSide } from '../../cases/index.ts';
 import type { Answer } from './answers.ts';
 import type { Basis } from './passages.ts';
 import type { Sureness } from './sure.ts';
@@ -20,7 +20,7 @@ const FEW_PASSAGES = 20;
 
 /** What a reader must know about the measures of a recording. */
 export function notesOn(recording: Recording, measures: Noted): string[] {
-  return [...lengthNotes(recording), ...sureNotes(measures), ...finNotes(measures), ...gasNotes(recording)];
+  return [...lengthNotes(recording), ...sureNotes(measures), ...finNotes(measures), ...fluidNotes(recording)];
 }
 
 function lengthNotes(recording: Recording): string[] {
@@ -87,8 +87,9 @@ function finNotes({ walls }: Noted): string[] {
   return found;
 }
 
-function gasNotes({ case: panel }: Recording): string[] {
+function fluidNotes({ case: panel }: Recording): string[] {
   const found: string[] = [];
+  if (panel.liquid.kind === 'sludge') found.push(`Caution: ${SLUDGE_CAUTION}.`);
   if (panel.gas.softened) {
     found.push(
       `The gas is softened: computed with ${panel.gas.density_kg_m3} kg/m3 and ${panel.gas.viscosity_Pa_s} Pa s instead of air at ` +

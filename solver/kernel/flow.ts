@@ -18,13 +18,22 @@ let flux: f64 = 0;
   return div<T>(splat<T>(1), mad<T>(share<T>(mul<T>(splat<T>(0.5), add<T>(z, other))), more, gas));
 }
 
+/** the same beside a liquid of viscosity `liquid` */
+@inline function thicknessBeside<T>(z: v128, other: v128, gas: v128, liquid: v128): v128 {
+  const wet = share<T>(mul<T>(splat<T>(0.5), add<T>(z, other)));
+  return div<T>(liquid, mad<T>(mul<T>(sub<T>(splat<T>(1), wet), gas), liquid, wet));
+}
+
 /** share of one face in the coupling: weight times (3 (P' - P) - (P'' - P behind)) */
 @inline function part<T>(weight: v128, beyond: v128, own: v128, far: v128, behind: v128): v128 {
   return mul<T>(weight, sub<T>(mul<T>(splat<T>(3), sub<T>(beyond, own)), sub<T>(far, behind)));
 }
 
-/** Collides in row y, each tile as it arrived, and leaves what it will need next. */
-export function collideRow<T>(y: i32, flags: i32): void {
+/**
+ * Collides in row y, each tile as it arrived, and leaves what it will need next. `Thins` an integer type: eta of the liquid is that of
+ * thin.ts, in a compiled path of its own, so that others pay nothing.
+ */
+export function collideRow<T, Thins>(y: i32, flags: i32): void {
   const was = tileRow(H.AT_WAS, y);
   const will = tileRow(H.AT_TILES, y);
   let top = splat<T>(0);
@@ -36,10 +45,10 @@ export function collideRow<T>(y: i32, flags: i32): void {
     do t++; while (load<u8>(was + <usize>t) == state && (state == ACTIVE || load<u8>(will + <usize>t) > LIQUID == edge));
     const end = min<usize>(runBytes<T>(t), <usize>nx * sizeof<T>());
     if (state == ACTIVE) {
-      top = collide<T>(y, flags, start, end, top);
+      top = collide<T, Thins>(y, flags, start, end, top);
       sum += flux;
     } else if (state != SOLID) {
-      top = collideLiquid<T>(y, edge ? flags | INTERFACE : flags, start, end, top);
+      top = collideLiquid<T, Thins>(y, edge ? flags | INTERFACE : flags, start, end, top);
       sum += fluxLiquid;
     }
   }
@@ -49,7 +58,7 @@ export function collideRow<T>(y: i32, flags: i32): void {
 }
 
 /** Everything, from byte `start` to byte `end` of row y; returns the larger of `top` and the largest u^2, lane by lane. */
-function collide<T>(y: i32, flags: i32, start: usize, end: usize, top: v128): v128 {
+function collide<T, Thins>(y: i32, flags: i32, start: usize, end: usize, top: v128): v128 {
   const size = sizeof<T>();
   const o0 = row(y);
   const r0 = o0 + 9 * stride;
@@ -67,6 +76,8 @@ function collide<T>(y: i32, flags: i32, start: usize, end: usize, top: v128): v1
   const PN = PC + stride;
   const lightC = fieldRow(H.AT_LIGHT, y);
   const openC = fieldRow(H.AT_OPEN, y);
+  const etaXC = isInteger<Thins>() ? fieldRow(H.AT_ETA_X, y) : 0;
+  const etaYC = isInteger<Thins>() ? fieldRow(H.AT_ETA_Y, y) : 0;
   const pC = fieldRow(H.AT_P, y);
   const n20C = fieldRow(H.AT_N20, y);
   const n11C = fieldRow(H.AT_N11, y);
@@ -170,6 +181,12 @@ function collide<T>(y: i32, flags: i32, start: usize, end: usize, top: v128): v1
     let etaW = nuLiquid;
     let etaN = nuLiquid;
     let etaS = nuLiquid;
+    if (isInteger<Thins>()) {
+      etaE = get(etaXC + i);
+      etaW = get(etaXC + i - size);
+      etaN = get(etaYC + i);
+      etaS = get(etaYC - stride + i);
+    }
     let coupling = zero;
     const mx = get(mxC + i);
     const my = get(myC + i);
@@ -177,6 +194,12 @@ function collide<T>(y: i32, flags: i32, start: usize, end: usize, top: v128): v1
     if (liquidAlone) {
       accelX = mul<T>(liquidLight, accelX);
       accelY = mul<T>(liquidLight, accelY);
+      if (isInteger<Thins>()) {
+        etaE = mul<T>(liquidLight, etaE);
+        etaW = mul<T>(liquidLight, etaW);
+        etaN = mul<T>(liquidLight, etaN);
+        etaS = mul<T>(liquidLight, etaS);
+      }
     } else {
       const PE = get(PC + i + size);
       const PW = get(PC + i - size);
@@ -192,10 +215,17 @@ function collide<T>(y: i32, flags: i32, start: usize, end: usize, top: v128): v1
       const heavy = nmad<T>(mul<T>(whole, whole), mad<T>(whole, mad<T>(whole, mad<T>(whole, weight3, weight2), weight1), weight0), one);
       accelX = nmad<T>(lighter, Px, mul<T>(light, nmad<T>(heavy, heavyX, accelX)));
       accelY = nmad<T>(lighter, Py, mul<T>(light, nmad<T>(heavy, heavyY, accelY)));
-      etaE = mul<T>(light, thickness<T>(z, zE, fluidityGas, dFluidity));
-      etaW = mul<T>(light, thickness<T>(z, zW, fluidityGas, dFluidity));
-      etaN = mul<T>(light, thickness<T>(z, zNorth, fluidityGas, dFluidity));
-      etaS = mul<T>(light, thickness<T>(z, zSouth, fluidityGas, dFluidity));
+      if (isInteger<Thins>()) {
+        etaE = mul<T>(light, thicknessBeside<T>(z, zE, fluidityGas, etaE));
+        etaW = mul<T>(light, thicknessBeside<T>(z, zW, fluidityGas, etaW));
+        etaN = mul<T>(light, thicknessBeside<T>(z, zNorth, fluidityGas, etaN));
+        etaS = mul<T>(light, thicknessBeside<T>(z, zSouth, fluidityGas, etaS));
+      } else {
+        etaE = mul<T>(light, thickness<T>(z, zE, fluidityGas, dFluidity));
+        etaW = mul<T>(light, thickness<T>(z, zW, fluidityGas, dFluidity));
+        etaN = mul<T>(light, thickness<T>(z, zNorth, fluidityGas, dFluidity));
+        etaS = mul<T>(light, thickness<T>(z, zSouth, fluidityGas, dFluidity));
+      }
       const weightE = mul<T>(openE, atMost<T>(lighter, sub<T>(get(lightC + i + size), liquidLight)));
       const weightW = mul<T>(openW, atMost<T>(lighter, sub<T>(get(lightC + i - size), liquidLight)));
       const weightN = mul<T>(openN, atMost<T>(lighter, sub<T>(get(lightC + stride + i), liquidLight)));

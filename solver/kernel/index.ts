@@ -12,6 +12,7 @@ import { bind, entry, ny, row, rowSums, setEntry, turn } from './rows';
 import { sample } from './samples';
 import { addBlocks, addRows, checkSpeed, clearSections, dampSound, drive, meanFlux } from './sections';
 import { call, endRow, firstRow, join, meet, nextCall, share, thread } from './team';
+import { thinRow, thins } from './thin';
 import { look, mark, refreshing, settle, wake } from './tiles';
 
 export function version(): i32 { return H.VERSION; }
@@ -74,8 +75,13 @@ function together<T>(): i32 {
     meet();
     for (let y = firstRow; y < endRow; y++) pressGhosts<T>(y);
     meet();
+    if (thins(step)) {
+      for (let y = firstRow; y < endRow; y++) thinRow<T>(y);
+      meet();
+    }
     for (let y = firstRow; y < endRow; y++) {
-      collideRow<T>(y, done == steps ? FIELDS : 0);
+      if (entry(H.THINS) != 0) collideRow<T, i32>(y, done == steps ? FIELDS : 0);
+      else collideRow<T, f32>(y, done == steps ? FIELDS : 0);
       if (refresh) settle(y);
     }
     clearSolids<T>(firstRow, endRow);

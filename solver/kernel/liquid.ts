@@ -72,8 +72,8 @@ export function arriveLiquid<T>(y: i32, start: usize, end: usize): void {
   lessLiquid = total<T>(lanes);
 }
 
-/** Collides from byte `start` to byte `end` of row y; returns the larger of `top` and the largest u^2, lane by lane. */
-export function collideLiquid<T>(y: i32, flags: i32, start: usize, end: usize, top: v128): v128 {
+/** Collides from byte `start` to byte `end` of row y, `Thins` as in flow.ts; returns the larger of `top` and the largest u^2, lane by lane. */
+export function collideLiquid<T, Thins>(y: i32, flags: i32, start: usize, end: usize, top: v128): v128 {
   const size = sizeof<T>();
   const out = row(y);
   const mxC = fieldRow(H.AT_MX, y);
@@ -83,6 +83,8 @@ export function collideLiquid<T>(y: i32, flags: i32, start: usize, end: usize, t
   const myS = myC - stride;
   const myN = myC + stride;
   const openC = fieldRow(H.AT_OPEN, y);
+  const etaX = isInteger<Thins>() ? fieldRow(H.AT_ETA_X, y) : 0;
+  const etaY = isInteger<Thins>() ? fieldRow(H.AT_ETA_Y, y) : 0;
   const pC = fieldRow(H.AT_PRESSURE, y);
   const n20C = fieldRow(H.AT_N20, y);
   const n11C = fieldRow(H.AT_N11, y);
@@ -106,10 +108,10 @@ export function collideLiquid<T>(y: i32, flags: i32, start: usize, end: usize, t
   let i = start;
   do {
     // viscous force over the four faces
-    const cE = nmad<T>(nu0, get(openC + i + size), nu);
-    const cW = nmad<T>(nu0, get(openC + i - size), nu);
-    const cN = nmad<T>(nu0, get(openC + stride + i), nu);
-    const cS = nmad<T>(nu0, get(openC - stride + i), nu);
+    const cE = nmad<T>(nu0, get(openC + i + size), isInteger<Thins>() ? mul<T>(specificOf, get(etaX + i)) : nu);
+    const cW = nmad<T>(nu0, get(openC + i - size), isInteger<Thins>() ? mul<T>(specificOf, get(etaX + i - size)) : nu);
+    const cN = nmad<T>(nu0, get(openC + stride + i), isInteger<Thins>() ? mul<T>(specificOf, get(etaY + i)) : nu);
+    const cS = nmad<T>(nu0, get(openC - stride + i), isInteger<Thins>() ? mul<T>(specificOf, get(etaY - stride + i)) : nu);
     const mx = get(mxC + i);
     const my = get(myC + i);
     const myE = get(myC + i + size);

@@ -27,13 +27,16 @@ export function sample<T>(): void {
 function friction<T>(to: usize, inside: i32, beyond: i32): void {
   const gas = entry(H.FLUIDITY_GAS);
   const more = entry(H.FLUIDITY_LIQUID) - gas;
+  const thins = entry(H.THINS) != 0;
+  const eta = thins ? fieldRow(H.AT_ETA_Y, min<i32>(inside, beyond)) : 0;
   for (let x = 0; x < nx; x++) {
     const i = <usize>x * sizeof<T>();
     const wall = load<T>(fieldRow(H.AT_OPEN, inside) + i) != 0 && load<T>(fieldRow(H.AT_OPEN, beyond) + i) == 0;
     const phi = 1 + 0.5 * (<f64>load<T>(zRow(inside) + i) + <f64>load<T>(zRow(beyond) + i));
     const liquid = Math.min(Math.max((phi - PURE) / (1 - 2 * PURE), 0), 1);
     const slip = <f64>load<T>(fieldRow(H.AT_MX, inside) + i) - <f64>load<T>(fieldRow(H.AT_MX, beyond) + i);
-    store<f32>(to + 4 * <usize>x, wall ? <f32>(slip / (gas + liquid * more)) : 0);
+    const fluidity = gas + liquid * (thins ? 1 / <f64>load<T>(eta + i) - gas : more);
+    store<f32>(to + 4 * <usize>x, wall ? <f32>(slip / fluidity) : 0);
   }
 }
 

@@ -130,6 +130,11 @@ describe('a run that leaves its range', () => {
 });
 
 /** What is changed in a sound setup, and the words its refusal must hold: the entry, the value, the limit. */
+const thin = (change: object): Setup['liquid'] => ({
+  ...{ density: 1, viscosity: 0.01 },
+  rheology: { consistency: 0.01, index: 0.5, yieldStress: 0, least: 0.001, ...change },
+});
+
 const BAD: [string, Partial<Setup>, RegExp][] = [
   ['a length of no cells', { nx: 0 }, /nx is 0; it must be a whole number of at least 1/],
   ['a broken length', { nx: 12.5 }, /nx is 12\.5; it must be a whole number/],
@@ -163,6 +168,12 @@ const BAD: [string, Partial<Setup>, RegExp][] = [
   ['skimming that is no number', { skim: new Float64Array(12).fill(Number.NaN) }, /skim holds NaN; a share lies in 0 to 1/],
   ['a speed limit of nothing', { speedLimit: 0 }, /speedLimit is 0; it must be positive/],
   ['an endless speed limit', { speedLimit: Infinity }, /speedLimit is Infinity; it must be positive and finite/],
+  ['a gas that thins', { gas: thin({}) }, /gas\.rheology is given; only a liquid has one/],
+  ['a consistency of nothing', { liquid: thin({ consistency: 0 }) }, /liquid\.rheology\.consistency is 0; it must be positive/],
+  ['a liquid that thickens', { liquid: thin({ index: 1.2 }) }, /liquid\.rheology\.index is 1\.2; it must lie in 0\.1 to 1/],
+  ['a negative yield stress', { liquid: thin({ yieldStress: -1 }) }, /liquid\.rheology\.yieldStress is -1; it must not be negative/],
+  ['a least viscosity above all', { liquid: thin({ least: 0.2 }) }, /liquid\.rheology\.least is 0\.2; it must lie in 0 to 0\.16/],
+  ['too thick a liquid', { liquid: thin({ most: 0.2 }) }, /liquid\.rheology\.most is 0\.2; it must lie in 0 to 0\.16/],
   ['sound that grows', { soundDamping: -0.1 }, /soundDamping is -0\.1; it must lie in 0 to 0\.1/],
 ];
 
@@ -179,6 +190,9 @@ describe('a setup that cannot be computed is refused with the entry, its value a
     const { surfaceTension: _, ...without } = BOX;
     await expect(createSimulation(without)).rejects.toThrow(/surfaceTension is missing; a box with gas needs it/);
     expect(() => createReference(without)).toThrow(RangeError);
+    await expect(createSimulation({ nx: 12, ny: 9, sides: PERIODIC, liquid: thin({}) })).rejects.toThrow(
+      /rheology is given; it needs a box with gas/,
+    );
   });
 
   it.each([

@@ -46,6 +46,10 @@ const channel: Setup = {
 const boxes: Record<string, Setup> = {
   'a channel with bubbles, solids and skimming': channel,
   'a box periodic all round': { ...channel, sides: { left: 'periodic', right: 'periodic', bottom: 'periodic', top: 'periodic' } },
+  'a liquid that thins under shear': {
+    ...channel,
+    liquid: { ...MILD_PAIR.liquid, rheology: { consistency: 0.002, index: 0.5, yieldStress: 1e-4, least: 1e-3 } },
+  },
   'a random state between walls all round, in f64': {
     ...{ nx: 33, ny: 26, sides: { left: 'wall', right: 'slip', bottom: { speed: 0.02 }, top: 'wall' }, ...MILD_PAIR, ...everything },
     initial: randomState(33, 26, 7),
