@@ -43,18 +43,29 @@ export const share = (phi: number): number => clip((phi - PURE) / (1 - 2 * PURE)
 
 const density = (box: Box, phi: number): number => box.rhoGas + share(phi) * (box.rhoLiquid - box.rhoGas);
 
-export const viscosity = (box: Box, phi: number, liquid = 1 / box.fluidityLiquid): number =>
+const viscosity = (box: Box, phi: number, liquid = 1 / box.fluidityLiquid): number =>
   1 / (box.fluidityGas + share(phi) * (1 / liquid - box.fluidityGas));
 
-/** eta of a liquid that thins on the faces of cell i towards larger x and y, by the velocities that arrive. */
-export function thinFaces(table: Float64Array, S: number, { mx, my, etaX, etaY }: FlowFields, i: number): void {
-  const mean = (m: Float64Array, j: number, across: number): number =>
+/** eta of a liquid that thins on all faces, by the velocities that arrive. */
+export function thinFaces(box: Box, table: Float64Array, { mx, my, etaX, etaY }: FlowFields): void {
+  const S = box.nx + 2;
+  const mean = (m: Float64Array, i: number, j: number, across: number): number =>
     0.25 * (m[i + across] - m[i - across] + m[j + across] - m[j - across]);
   const rate2 = (stretchX: number, stretchY: number, shear: number): number =>
     2 * (stretchX * stretchX + stretchY * stretchY) + shear * shear;
-  const [E, N] = [i + 1, i + S];
-  etaX[i] = lookUp(table, rate2(mx[E] - mx[i], mean(my, E, S), my[E] - my[i] + mean(mx, E, S)));
-  etaY[i] = lookUp(table, rate2(mean(mx, N, 1), my[N] - my[i], mx[N] - mx[i] + mean(my, N, 1)));
+  // from the face before the first cell of the first row on; ghosts at the ends of rows get values that nothing reads
+  for (let i = 1; i < S * (box.ny + 1) - 1; i++) {
+    const [E, N] = [i + 1, i + S];
+    if (i >= S) etaX[i] = lookUp(table, rate2(mx[E] - mx[i], mean(my, i, E, S), my[E] - my[i] + mean(mx, i, E, S)));
+    etaY[i] = lookUp(table, rate2(mean(mx, i, N, 1), my[N] - my[i], mx[N] - mx[i] + mean(my, i, N, 1)));
+  }
+}
+
+/** The very force along x that a wall took from cell i, j the ghost in it; 0 under a solid and on sides that are no wall. */
+export function wallFriction(box: Box, { phi, mx, etaY }: FlowFields, i: number, j: number): number {
+  const { open } = box.walls;
+  const liquid = box.setup.liquid.rheology && etaY[Math.min(i, j)];
+  return open[i] === 1 && open[j] === 0 ? viscosity(box, 0.5 * (phi[i] + phi[j]), liquid) * (mx[i] - mx[j]) : 0;
 }
 
 /** Index into P of the cell with index i of the other fields. */

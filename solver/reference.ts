@@ -13,7 +13,7 @@ import ndarray from 'ndarray';
 import { type Box, driveForce, resolve } from './box.ts';
 import { type Cell, collideInterface, collideLiquid, collideVelocity, firstMoment, newCell } from './collide.ts';
 import { Q } from './constants.ts';
-import { clip, coupling, type FlowFields, kick, pressureUpdate, share, thinFaces, viscosity, wideIndex } from './forces.ts';
+import { clip, coupling, type FlowFields, kick, pressureUpdate, share, thinFaces, wallFriction, wideIndex } from './forces.ts';
 import { fillGhosts, fillPhiGhosts, fillReturns, fillWallGhosts, fillWide, indexOf } from './ghosts.ts';
 import { ex, ey } from './lattice.ts';
 import { pulled, sharpening } from './profile.ts';
@@ -179,8 +179,7 @@ export class Reference implements Simulation {
     }
     fillWallGhosts(box, fields);
     fillWide(box, fields.P);
-    if (this.table === undefined || this.step % EVERY !== 0) return;
-    for (let y = -1; y < ny; y++) for (let x = -1; x < nx; x++) if (x >= 0 || y >= 0) thinFaces(this.table, this.S, fields, this.at(x, y));
+    if (this.table !== undefined && this.step % EVERY === 0) thinFaces(box, this.table, fields);
   }
 
   // ---- 3. collision
@@ -285,8 +284,8 @@ export class Reference implements Simulation {
     const row = this.recorder.next(this.step, this.totalsNow[1], this.totalsNow[3], this.totalsNow[4]);
     for (let x = 0; x < nx; x++) {
       if (this.box.twoPhase) {
-        row.shearLeft[x] = this.friction(x, 0, -1);
-        row.shearRight[x] = this.friction(x, ny - 1, ny);
+        row.shearLeft[x] = wallFriction(this.box, this.fields, this.at(x, 0), this.at(x, -1));
+        row.shearRight[x] = wallFriction(this.box, this.fields, this.at(x, ny - 1), this.at(x, ny));
       } else {
         row.shearLeft[x] = a0[x] * this.stress[0][x] + a1[x] * this.stress[1][x];
         row.shearRight[x] = -(b0[x] * this.stress[2][x] + b1[x] * this.stress[3][x]);
@@ -294,15 +293,6 @@ export class Reference implements Simulation {
       row.phiLeft[x] = (phi[this.at(x, 0)] + phi[this.at(x, -1)]) / 2;
       row.phiRight[x] = (phi[this.at(x, ny - 1)] + phi[this.at(x, ny)]) / 2;
     }
-  }
-
-  /** The very force along x that the wall beyond a cell took from it in this step; 0 under a solid and on sides that are no wall. */
-  private friction(x: number, inside: number, beyond: number): number {
-    const { phi, mx, etaY } = this.fields;
-    const [i, j] = [this.at(x, inside), this.at(x, beyond)];
-    const { open } = this.box.walls;
-    const liquid = this.table && etaY[Math.min(i, j)];
-    return open[i] === 1 && open[j] === 0 ? viscosity(this.box, 0.5 * (phi[i] + phi[j]), liquid) * (mx[i] - mx[j]) : 0;
   }
 
   takeSamples(): Samples {
