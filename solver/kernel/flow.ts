@@ -1,17 +1,16 @@
 // Force and both collisions of one row of a box with gas: the formulas of forces.ts and collide.ts, whose texts explain them, in
 // lanes along x. Reads what arrive.ts and pressure.ts left, with ghosts; writes f and g of the row in place, on demand (flag FIELDS)
-// phi, ux and uy. Leaves the sum of ux and the largest u^2 of the row in its sums. Tiles of liquid alone: liquid.ts.
+// phi, ux and uy. Tiles of liquid alone: liquid.ts.
 import * as H from '../header';
 import { FIELDS } from './bulk';
-import { collideLiquid, fluxLiquid, INTERFACE } from './liquid';
-import { address, entry, fieldRow, nx, row, rowSums, stride, zRow } from './rows';
-import { ACTIVE, LIQUID, runBytes, SOLID, tileRow, tiles } from './tiles';
+import { address, entry, fieldRow, row, stride, zRow } from './rows';
 import { tremble } from './tremble';
-import { add, atLeast, atMost, div, get, largest, mad, max, mul, nmad, noneBelow, PURE, put, root, share, splat, sub, total } from './vector';
+import { add, atLeast, atMost, div, get, mad, max, mul, nmad, noneBelow, PURE, put, root, share, splat, sub, total } from './vector';
 
 const COUPLING: f64 = 0.25;
 
-let flux: f64 = 0;
+/** sum of ux of the last call */
+export let flux: f64 = 0;
 
 /** eta at the face between two cells */
 @inline function thickness<T>(z: v128, other: v128, gas: v128, more: v128): v128 {
@@ -30,35 +29,10 @@ let flux: f64 = 0;
 }
 
 /**
- * Collides in row y, each tile as it arrived, and leaves what it will need next. `Thins` an integer type: eta of the liquid is that of
- * thin.ts, in a compiled path of its own, so that others pay nothing.
+ * Everything, from byte `start` to byte `end` of row y; returns the larger of `top` and the largest u^2, lane by lane. `Thins` an integer
+ * type: eta of the liquid is that of thin.ts, in a compiled path of its own, so that others pay nothing.
  */
-export function collideRow<T, Thins>(y: i32, flags: i32): void {
-  const was = tileRow(H.AT_WAS, y);
-  const will = tileRow(H.AT_TILES, y);
-  let top = splat<T>(0);
-  let sum: f64 = 0;
-  for (let t = 0; t < tiles(); ) {
-    const state = load<u8>(was + <usize>t);
-    const edge = load<u8>(will + <usize>t) > LIQUID;
-    const start = runBytes<T>(t);
-    do t++; while (load<u8>(was + <usize>t) == state && (state == ACTIVE || load<u8>(will + <usize>t) > LIQUID == edge));
-    const end = min<usize>(runBytes<T>(t), <usize>nx * sizeof<T>());
-    if (state == ACTIVE) {
-      top = collide<T, Thins>(y, flags, start, end, top);
-      sum += flux;
-    } else if (state != SOLID) {
-      top = collideLiquid<T, Thins>(y, edge ? flags | INTERFACE : flags, start, end, top);
-      sum += fluxLiquid;
-    }
-  }
-  const sums = rowSums(y);
-  store<f64>(sums, sum);
-  store<f64>(sums, largest<T>(top), 24);
-}
-
-/** Everything, from byte `start` to byte `end` of row y; returns the larger of `top` and the largest u^2, lane by lane. */
-function collide<T, Thins>(y: i32, flags: i32, start: usize, end: usize, top: v128): v128 {
+export function collide<T, Thins>(y: i32, flags: i32, start: usize, end: usize, top: v128): v128 {
   const size = sizeof<T>();
   const o0 = row(y);
   const r0 = o0 + 9 * stride;

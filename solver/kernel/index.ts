@@ -4,7 +4,7 @@
 import * as H from '../header';
 import { arriveRow } from './arrive';
 import { FIELDS, STRESS, bulkRow, bulkTopU2 } from './bulk';
-import { collideRow } from './flow';
+import { collideRow } from './collision';
 import { clearSolids, fillGhosts, fillReturns } from './ghosts';
 import { phiGhosts } from './phi';
 import { pressGhosts, pressRow } from './pressure';
