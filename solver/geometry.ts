@@ -1,5 +1,7 @@
-import { ex, ey, opposite, w } from './lattice.ts';
+import { ex, ey, opposite } from './lattice.ts';
+import { cellAt } from './place.ts';
 import type { Setup } from './setup.ts';
+import { type SolidGhost, solidGhost } from './wetting.ts';
 
 /**
  * A pull from a solid cell: what leaves the fluid cell against `k` comes back along `k`, from a face at the share q of the way to the
@@ -23,13 +25,6 @@ interface Link {
   weight: [number, number];
 }
 
-/** A solid cell next to fluid: it carries a ghost value of phi, made from the weighted mean of its fluid neighbours. */
-interface SolidGhost {
-  x: number;
-  y: number;
-  neighbours: { x: number; y: number; weight: number }[];
-}
-
 /** What the solids of a box amount to, worked out once. */
 export interface Geometry {
   links: Link[];
@@ -43,21 +38,6 @@ export interface Geometry {
    * halfway wall), 1 and 0 where a solid stands on the second cell, 0 and 0 where it stands on the first; shape (nx)
    */
   wallWeights: { left: [Float64Array, Float64Array]; right: [Float64Array, Float64Array] };
-}
-
-/** Cells of the box that a neighbour in direction `k` lies in, or undefined outside a side that is not periodic. */
-function neighbour(setup: Setup, x: number, y: number, k: number): [number, number] | undefined {
-  let nx = x + ex[k];
-  let ny = y + ey[k];
-  if (nx < 0 || nx >= setup.nx) {
-    if (setup.sides.bottom !== 'periodic') return undefined;
-    nx = (nx + setup.nx) % setup.nx;
-  }
-  if (ny < 0 || ny >= setup.ny) {
-    if (setup.sides.left !== 'periodic') return undefined;
-    ny = (ny + setup.ny) % setup.ny;
-  }
-  return [nx, ny];
 }
 
 /**
@@ -101,11 +81,10 @@ export function geometry(setup: Setup): Geometry {
       const run = runs.at(-1);
       if (run && run[0] === y && run[2] === x) run[2] = x + 1;
       else runs.push([y, x, x + 1]);
-      const neighbours: SolidGhost['neighbours'] = [];
       for (let k = 1; k < 9; k++) {
-        const cell = neighbour(setup, x, y, k);
+        const cell = cellAt(setup, x + ex[k], y + ey[k]);
         if (cell === undefined || fluid[cell[1] * nx + cell[0]] === 0) continue;
-        const behind = neighbour(setup, cell[0], cell[1], k);
+        const behind = cellAt(setup, cell[0] + ex[k], cell[1] + ey[k]);
         const open = behind !== undefined && fluid[behind[1] * nx + behind[0]] === 1;
         links.push({
           x,
@@ -115,11 +94,9 @@ export function geometry(setup: Setup): Geometry {
           fluidY: cell[1],
           ...interpolation(wayToFace(setup, x, y, k), k, cell, open ? behind : undefined),
         });
-        neighbours.push({ x: cell[0], y: cell[1], weight: w[k] });
       }
-      const sum = neighbours.reduce((total, n) => total + n.weight, 0);
-      for (const n of neighbours) n.weight /= sum;
-      if (neighbours.length > 0) ghosts.push({ x, y, neighbours });
+      const ghost = solidGhost(setup, fluid, x, y);
+      if (ghost) ghosts.push(ghost);
     }
   }
   return { links, ghosts, fluid, runs, wallWeights: { left: wallWeights(fluid, nx, 0, 1), right: wallWeights(fluid, nx, ny - 1, ny - 2) } };

@@ -8,6 +8,7 @@ import { type FlowFields, wideIndex } from './forces.ts';
 import { ex, ey, mirrorX, mirrorY, opposite, w } from './lattice.ts';
 import type { Side } from './setup.ts';
 import { wallSpeed } from './walls.ts';
+import { solidPhi, wettedGhost } from './wetting.ts';
 
 /** Index of cell (x, y) in a field of shape (ny + 2, nx + 2). */
 export const indexOf = (box: Box, x: number, y: number): number => (y + 1) * (box.nx + 2) + x + 1;
@@ -150,19 +151,12 @@ function reflect(box: Box, set: Float64Array[], side: Side, axis: 'x' | 'y', edg
   }
 }
 
-/** phi at a wall whose first cell holds `phi`, from d(phi)/dn = -(4/W) cos(theta) phi (1 - phi), and the ghost beyond it. */
-function wettedGhost(c: number, phi: number): number {
-  return phi < 0 || phi > 1 ? phi : (phi * c) / (1 - phi + phi * c);
-}
-
 /** Ghosts of phi: walls and solids carry the wetting, slip sides images, periodic sides copies. */
 export function fillPhiGhosts(box: Box, phi: Float64Array): void {
   const { nx, ny, setup, geometry, wetting } = box;
   const at = (x: number, y: number): number => indexOf(box, x, y);
   for (const ghost of geometry.ghosts) {
-    let mean = 0;
-    for (const n of ghost.neighbours) mean += n.weight * phi[at(n.x, n.y)];
-    phi[at(ghost.x, ghost.y)] = wettedGhost(wetting, mean);
+    phi[at(ghost.x, ghost.y)] = solidPhi(ghost, wetting, box.W, (x, y) => phi[at(x, y)]);
   }
   const beyond = (side: Side, inside: number, across: number): number =>
     side === 'periodic' ? phi[across] : side === 'slip' ? phi[inside] : wettedGhost(wetting, phi[inside]);

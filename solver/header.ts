@@ -35,7 +35,7 @@ export const LINKS = 15;
 /** three i32 each: y, first x, end x */
 export const AT_RUNS = 16;
 export const RUNS = 17;
-/** f64: x, y, n, then n times x, y, weight */
+/** f64: x, y, n, exp of what wetting adds to ln(phi/(1 - phi)), then n times x, y, weight */
 export const AT_GHOSTS = 18;
 /** per sample: four f64 (step, upflow, gas area, skimmed), then four rows of nx f32 (shear left, right, phi left, right) */
 export const AT_SAMPLES = 20;

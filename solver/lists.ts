@@ -15,7 +15,7 @@ export function listBytes({ ny, geometry, walls }: Box): [number, number][] {
   return [
     [H.AT_LINKS, 48 * geometry.links.length],
     [H.AT_RUNS, 12 * geometry.runs.length],
-    [H.AT_GHOSTS, 24 * (geometry.ghosts.length + neighbours)],
+    [H.AT_GHOSTS, 32 * geometry.ghosts.length + 24 * neighbours],
     [H.AT_RETURNS, 16 * walls.returns.length],
     [H.AT_WALL_GHOSTS, 8 * walls.ghosts.reduce((n, ghost) => n + 2 + 6 * ghost.faces.length, 0)],
     ...[H.AT_GHOST_ROWS, H.AT_RETURN_ROWS, H.AT_WALL_GHOST_ROWS].map((at): [number, number] => [at, rows]),
@@ -34,9 +34,9 @@ export function writeLists(box: Box, header: Float64Array, bytesPerNumber: numbe
     new Float64Array(buffer, link + 32, 2).set(weight);
   });
   new Int32Array(buffer, header[H.AT_RUNS], 3 * geometry.runs.length).set(geometry.runs.flat());
-  const ghosts = geometry.ghosts.map(({ x, y, neighbours }) => ({
+  const ghosts = geometry.ghosts.map(({ x, y, neighbours, path }) => ({
     row: y,
-    numbers: [x, y, neighbours.length, ...neighbours.flatMap((n) => [n.x, n.y, n.weight])],
+    numbers: [x, y, neighbours.length, box.wetting ** path, ...neighbours.flatMap((n) => [n.x, n.y, n.weight])],
   }));
   writeByRow(box, header, H.AT_GHOSTS, H.AT_GHOST_ROWS, true, ghosts);
   if (!box.twoPhase) return;

@@ -3,6 +3,7 @@ import { check as atRest } from './at-rest.ts';
 import { check as capillaryWave } from './capillary-wave.ts';
 import { check as cavity } from './cavity.ts';
 import { check as contactAngle } from './contact-angle.ts';
+import { check as contactAngleInclined } from './contact-angle-inclined.ts';
 import { check as cylinders } from './cylinders.ts';
 import { check as film } from './film.ts';
 import { findingChecks } from './findings.ts';
@@ -18,7 +19,7 @@ import { check as twoLayer } from './two-layer.ts';
 /** All checks in the order of the table. */
 export const CHECKS: readonly Check[] = [
   ...[poiseuille, oscillating, taylorGreen, cavity, cylinders, inclined],
-  ...[twoLayer, film, laplace, capillaryWave, contactAngle],
+  ...[twoLayer, film, laplace, capillaryWave, contactAngle, contactAngleInclined],
   ...[risingBubble, stallCheck, longCheck, atRest, drift],
   ...findingChecks,
 ];
