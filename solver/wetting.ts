@@ -27,8 +27,8 @@ type Neighbours = SolidGhost['neighbours'];
 
 /** Below this, phi (1 - phi) holds nothing that wets. */
 const PURE = 1e-6;
-/** Steepest ln(phi/(1 - phi)) of two cells whose values are told from each other, cells of the undisturbed profile */
-const STEEPEST = 2;
+/** Most that L of neighbours may differ, in cells of the undisturbed profile; they lie sqrt(5) apart at most */
+const STEEPEST = 3;
 
 /** Half the step over which the normal is taken from the distance, cells. */
 const HALF_STEP = 0.25;
@@ -48,9 +48,7 @@ export function solidGhost(setup: Setup, fluid: Uint8Array, x: number, y: number
   const straight = around.filter(({ weight }) => weight === w[1]);
   const mean = straight.length === 1 ? straight : around;
   const sum = mean.reduce((total, { weight }) => total + weight, 0);
-  return (
-    alongNormal(setup, x, y, open) ?? { x, y, neighbours: mean.map((cell) => ({ ...cell, weight: cell.weight / sum })), path: 1 }
-  );
+  return alongNormal(setup, x, y, open) ?? { x, y, neighbours: mean.map((cell) => ({ ...cell, weight: cell.weight / sum })), path: 1 };
 }
 
 type Open = (x: number, y: number) => { x: number; y: number } | undefined;
@@ -106,7 +104,7 @@ export const wettedGhost = (c: number, phi: number): number => (phi < 0 || phi >
 
 /**
  * phi in a solid cell from `phi` of its neighbours. L is taken relative to that neighbour that is deepest in the interface, and no
- * further from it than an interface twice as steep could bring it, so that pure cells do not weigh without end.
+ * further from it than STEEPEST, so that pure cells do not weigh without end.
  * @param c exp(4 cos(theta)/W)
  */
 export function solidPhi({ neighbours, path }: SolidGhost, c: number, W: number, phi: (x: number, y: number) => number): number {

@@ -4,7 +4,7 @@ import { above, below, entry, listRow, nx, ny, zRow } from './rows';
 
 /** see wetting.ts */
 const PURE: f64 = 1e-6;
-const STEEPEST: f64 = 2;
+const STEEPEST: f64 = 3;
 
 /** z beyond a wall whose first cell holds `z`. */
 @inline function wettedGhost(z: f64, c: f64): f64 {

@@ -11,7 +11,7 @@ const [W, SIGMA] = [4, 0.01];
 /** crossings this near the face are left out of the circle, cells */
 const NEAR = 2;
 
-export interface Leaning {
+interface Leaning {
   asked_deg: number;
   /** of the half disc, cells */
   R: number;
@@ -81,7 +81,11 @@ export const check: Check = {
       for (const [asked_deg] of SEGMENTS) {
         const ours = [];
         for (const cells of [16, 32]) ours.push({ cells, value: await leaningAngle_deg({ asked_deg, R: cells, lean_deg }) });
-        const part = { check: this.name, source: 'segment of a circle [V]', quantity: `angle at ${asked_deg} deg, face leaning by ${lean_deg} deg` };
+        const part = {
+          check: this.name,
+          source: 'segment of a circle [V]',
+          quantity: `angle at ${asked_deg} deg, face leaning by ${lean_deg} deg`,
+        };
         rows.push(row({ ...part, reference: asked_deg, counts: 'R ', ours, scale: { absolute: 'deg' }, gate: 3 }));
       }
     }
