@@ -16,6 +16,8 @@ export interface Box {
   /** 1 / eta of both phases: 1/eta is linear in phi (harmonic mixing) */
   fluidityLiquid: number;
   fluidityGas: number;
+  /** relaxation of the shear moments in a box without gas; with a rheology that of the start */
+  omegaLiquid: number;
   /** mu = kappa (2 bend phi (phi - 1) (phi - 1/2)/(1 + bend phi (1 - phi)) - lap phi), see profile.ts */
   kappa: number;
   profile: Profile;
@@ -100,6 +102,7 @@ export function resolve(setup: Setup): Box {
     rhoGas: positive('gas.density', gas.density),
     fluidityLiquid: 1 / positive('liquid.viscosity', setup.liquid.viscosity),
     fluidityGas: 1 / positive('gas.viscosity', gas.viscosity),
+    omegaLiquid: 1 / (setup.liquid.viscosity / (setup.liquid.density * CS2) + 0.5),
     kappa: sigma / profile.pull,
     profile,
     W,
@@ -134,7 +137,6 @@ function sharedViscosity(liquid: Fluid, gas: Fluid): number {
 function checkRheology({ liquid, gas }: Setup): void {
   if (gas?.rheology !== undefined) fail('gas.rheology is given; only a liquid has one');
   if (liquid.rheology === undefined) return;
-  if (gas === undefined) fail('liquid.rheology is given; it needs a box with gas');
   const { consistency, index, yieldStress, least, most = NU_LIMIT } = liquid.rheology;
   positive('liquid.rheology.consistency', consistency);
   within('liquid.rheology.index', index, 0.1, 1, '0.1 to 1');

@@ -14,6 +14,7 @@
 import type { Box } from './box.ts';
 import { CS2 } from './constants.ts';
 import { share } from './forces.ts';
+import { lookUp } from './rheology.ts';
 
 /** One cell on its way through a collision: populations in and out, what the stages hand on. */
 export interface Cell {
@@ -38,6 +39,8 @@ export interface Cell {
   P: number;
   /** theta/|grad phi| = (4/W) phi (1 - phi)/|grad phi|: 1 where the interface has its shape */
   sharpness: number;
+  /** of a box without gas: what its shear moments relax with */
+  omega: number;
   /** viscous shear stress eta (dux/dy + duy/dx) */
   tauXY: number;
 }
@@ -46,7 +49,7 @@ export const newCell = (): Cell => ({
   f: new Float64Array(9),
   g: new Float64Array(9),
   ...{ phi: 1, phiX: 0, phiY: 0, Fx: 0, Fy: 0, soundX: 0, skim: 0 },
-  ...{ ux: 0, uy: 0, p: 0, P: 0, sharpness: 0, tauXY: 0 },
+  ...{ ux: 0, uy: 0, p: 0, P: 0, sharpness: 0, tauXY: 0, omega: 0 },
 });
 
 /** First moment of what arrives. */
@@ -55,9 +58,12 @@ export const firstMoment = (f: ArrayLike<number>): [number, number] => [
   f[2] - f[4] + f[5] + f[6] - f[7] - f[8],
 ];
 
-/** Flow collision of a box without gas: reads f, F, soundX; writes f, ux, uy, p, tauXY. */
-export function collideLiquid(box: Box, cell: Cell): void {
-  const { f, Fx, Fy } = cell;
+/**
+ * Flow collision of a box without gas: reads f, F, soundX, omega; writes f, ux, uy, p, tauXY.
+ * @param renewed omega over rate^2: writes omega too, for the steps to come
+ */
+export function collideLiquid(box: Box, cell: Cell, renewed?: Float64Array): void {
+  const { f, Fx, Fy, omega } = cell;
   const rho = box.rhoLiquid;
   const [m10, m01] = firstMoment(f);
   const diagonals = f[5] + f[6] + f[7] + f[8];
@@ -68,11 +74,13 @@ export function collideLiquid(box: Box, cell: Cell): void {
   const uy = (m01 + 0.5 * Fy) / rho;
   const u2 = ux * ux + uy * uy;
   const p = 0.6 * (m20 + m02 - diagonals - (2 / 3) * rho * u2);
-  const omega = 1 / (1 / (box.fluidityLiquid * rho * CS2) + 0.5);
   const [exx, eyy, e11] = [rho * ux * ux, rho * uy * uy, rho * ux * uy];
-  const d20 = 0.5 * (1 - omega) * (m20 - m02 - (exx - eyy));
-  const d11 = (1 - omega) * (m11 - e11);
-  cell.tauXY = -(1 - 0.5 * omega) * (m11 - e11);
+  const n11 = m11 - e11;
+  const n20 = m20 - m02 - (exx - eyy);
+  if (renewed) cell.omega = lookUp(renewed, ((3 * omega) / rho) ** 2 * (n11 * n11 + 0.25 * n20 * n20));
+  const d20 = 0.5 * (1 - omega) * n20;
+  const d11 = (1 - omega) * n11;
+  cell.tauXY = -(1 - 0.5 * omega) * n11;
   const q10 = rho * ux + 0.5 * Fx;
   const q01 = rho * uy + 0.5 * Fy;
   const q21 = CS2 * q01 + 2 * ux * d11 + uy * d20;

@@ -141,6 +141,8 @@ export const THINS = 95;
 export const AT_ETA_X = 96;
 export const AT_ETA_Y = 97;
 export const AT_TABLE = 98;
+/** omega of each cell, in a box without gas; AT_TABLE then holds omega over rate^2 */
+export const AT_OMEGA = 99;
 
 // ---- state
 export const STEP = 64;

@@ -3,7 +3,7 @@ import { BLOCK } from './constants.ts';
 import * as H from './header.ts';
 import { listBytes, writeLists } from './lists.ts';
 import { sharesMemory } from './module.ts';
-import { viscosityTable } from './rheology.ts';
+import { rheologyTable } from './rheology.ts';
 import type { Side } from './setup.ts';
 import { tileBytes, writeTiles } from './tiles.ts';
 import { wallSpeed } from './walls.ts';
@@ -50,7 +50,7 @@ export function layMemory(box: Box): MemoryMap {
     end += Math.ceil(bytes / 16) * 16;
     return at;
   };
-  const table = setup.liquid.rheology === undefined ? new Float64Array(0) : viscosityTable(setup.liquid);
+  const table = rheologyTable(setup);
   const ring = ny + 3;
   const entries: [number, number][] = [
     [H.AT_POPULATIONS, take(ring * 18 * strideBytes) + 16],
@@ -66,6 +66,7 @@ export function layMemory(box: Box): MemoryMap {
     [H.AT_ROWS, take(32 * ny)],
     [H.AT_BLOCKS, take(2 * Math.ceil(ny / BLOCK) * strideBytes)],
     ...[...listBytes(box), ...(box.twoPhase ? tileBytes(box) : [])].map(([at, bytes]): [number, number] => [at, take(bytes)]),
+    [H.AT_OMEGA, table.length > 0 && !box.twoPhase ? take(ny * strideBytes) + 16 : 0],
     [H.AT_TABLE, take(8 * table.length)],
     [H.AT_SAMPLES, take(sampleCapacity * sampleBytes)],
   ];
@@ -84,6 +85,7 @@ export function layMemory(box: Box): MemoryMap {
   new Float64Array(memory.buffer, header[H.AT_TABLE], table.length).set(table);
   writeNumbers(box, header);
   writeRows(box, map);
+  if (table.length > 0 && !box.twoPhase) numbers(map, header[H.AT_OMEGA] - 16, ny * map.stride).fill(box.omegaLiquid);
   writeLists(box, header, bytesPerNumber);
   if (box.twoPhase) writeTiles(box, header);
   return map;

@@ -18,7 +18,7 @@ import { fillGhosts, fillPhiGhosts, fillReturns, fillWallGhosts, fillWide, index
 import { ex, ey } from './lattice.ts';
 import { pulled, sharpening } from './profile.ts';
 import { Recorder } from './recorder.ts';
-import { EVERY, viscosityTable } from './rheology.ts';
+import { EVERY, rheologyTable } from './rheology.ts';
 import type { Setup } from './setup.ts';
 import type { Field, Samples, Simulation, Status } from './simulation.ts';
 import { equilibriumState, placeCircle } from './state.ts';
@@ -37,7 +37,7 @@ export class Reference implements Simulation {
   private g: Float64Array[];
   private fNext: Float64Array[];
   private gNext: Float64Array[];
-  private readonly fields: FlowFields & Record<'ux' | 'uy' | 'p', Float64Array>;
+  private readonly fields: FlowFields & Record<'ux' | 'uy' | 'p' | 'omega', Float64Array>;
   /** stress of the first and second row at either wall, of a box without gas; shape (4, nx) */
   private readonly stress: Float64Array[];
   /** sums of ux and gas over each section, and what sound damping takes from ux in the next step; shape (nx) each */
@@ -45,8 +45,8 @@ export class Reference implements Simulation {
   private readonly sectionGas: Float64Array;
   private readonly sound: Float64Array;
   private readonly recorder: Recorder;
-  /** eta of a liquid that thins over rate^2 */
-  private readonly table: Float64Array | undefined;
+  /** of a liquid that thins, over rate^2: eta beside gas, else omega; empty for others */
+  private readonly table: Float64Array;
   private readonly cell: Cell = newCell();
   /** drive force now, mean ux now and one step ago, gas area, gas skimmed */
   private readonly totalsNow = new Float64Array(5);
@@ -56,17 +56,14 @@ export class Reference implements Simulation {
     this.box = resolve(setup);
     const { nx, ny } = this.box;
     this.S = nx + 2;
-    this.table = setup.liquid.rheology && viscosityTable(setup.liquid);
+    this.table = rheologyTable(setup);
     const size = this.S * (ny + 2);
     const field = () => new Float64Array(size);
     const populations = () => Array.from({ length: Q }, field);
-    this.f = populations();
-    this.g = populations();
-    this.fNext = populations();
-    this.gNext = populations();
+    [this.f, this.g, this.fNext, this.gNext] = Array.from({ length: 4 }, populations);
     this.fields = {
       ...{ phi: field(), mx: field(), my: field(), sum: field(), P: new Float64Array((nx + 4) * (ny + 4)) },
-      ...{ ux: field(), uy: field(), p: field(), etaX: field(), etaY: field() },
+      ...{ ux: field(), uy: field(), p: field(), etaX: field(), etaY: field(), omega: field().fill(this.box.omegaLiquid) },
     };
     this.fields.phi.fill(1);
     this.stress = Array.from({ length: 4 }, () => new Float64Array(nx));
@@ -179,7 +176,7 @@ export class Reference implements Simulation {
     }
     fillWallGhosts(box, fields);
     fillWide(box, fields.P);
-    if (this.table !== undefined && this.step % EVERY === 0) thinFaces(box, this.table, fields);
+    if (this.table.length > 0 && this.step % EVERY === 0) thinFaces(box, this.table, fields);
   }
 
   // ---- 3. collision
@@ -206,8 +203,9 @@ export class Reference implements Simulation {
         cell.Fy = this.box.forceY;
         cell.soundX = this.sound[x];
         cell.skim = this.box.skim[x];
+        cell.omega = fields.omega[i];
         if (this.box.twoPhase) this.collideTwoPhase(i);
-        else collideLiquid(this.box, cell);
+        else collideLiquid(this.box, cell, this.table.length > 0 && (this.step + 1) % EVERY === 0 ? this.table : undefined);
         for (let k = 0; k < Q; k++) {
           this.fNext[k][i] = cell.f[k];
           this.gNext[k][i] = cell.g[k];
@@ -215,6 +213,7 @@ export class Reference implements Simulation {
         fields.ux[i] = cell.ux;
         fields.uy[i] = cell.uy;
         fields.p[i] = cell.p;
+        fields.omega[i] = cell.omega;
         if (!this.box.twoPhase) this.sections[x] += cell.ux;
         upflow += cell.ux;
         if (y < 2) this.stress[y][x] = cell.tauXY;
@@ -317,31 +316,25 @@ export class Reference implements Simulation {
 
   /** Everything a step reads, in one order. */
   private arrays(): Float64Array[] {
-    return [this.totalsNow, this.sound, ...this.f, ...this.g, ...Object.values(this.fields), ...this.stress];
+    return [Float64Array.of(this.step), this.totalsNow, this.sound, ...this.f, ...this.g, ...Object.values(this.fields), ...this.stress];
   }
 
   save(): Uint8Array {
-    const arrays = this.arrays();
-    const image = new Float64Array(1 + arrays.reduce((n, a) => n + a.length, 0));
-    image[0] = this.step;
-    let at = 1;
-    for (const array of arrays) {
-      image.set(array, at);
-      at += array.length;
-    }
-    return new Uint8Array(image.buffer);
+    return Uint8Array.from(Buffer.concat(this.arrays().map(({ buffer }) => new Uint8Array(buffer))));
   }
 
   restore(bytes: Uint8Array): void {
     const image = new Float64Array(bytes.slice().buffer);
     const arrays = this.arrays();
-    const size = 1 + arrays.reduce((n, a) => n + a.length, 0);
+    const size = arrays.reduce((n, a) => n + a.length, 0);
     if (image.length !== size) throw new RangeError(`restore: image holds ${image.length} numbers; this box needs ${size}`);
-    this.step = image[0];
-    arrays.reduce((at, array) => {
+    let at = 0;
+    for (const array of arrays) {
       array.set(image.subarray(at, at + array.length));
-      return at + array.length;
-    }, 1);
+      at += array.length;
+    }
+    this.step = arrays[0][0];
   }
+
   dispose(): void {}
 }

@@ -12,7 +12,7 @@ export interface Fluid {
   density: number;
   /** dynamic viscosity eta; with a rheology what the box starts with, and what the populations' own small viscosity is a share of */
   viscosity: number;
-  /** of a liquid beside gas: eta = consistency rate^(index - 1) + yieldStress / rate, bounded below and above */
+  /** of a liquid: eta = consistency rate^(index - 1) + yieldStress / rate, bounded below and above */
   rheology?: Rheology;
 }
 

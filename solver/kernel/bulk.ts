@@ -2,15 +2,19 @@
 // Reads f of rows y - 1, y, y + 1 and mask; writes f over row y - 2, ux and uy, and on demand p and tau.
 import * as H from '../header';
 import { address, entry, fieldRow, nx, row, stride } from './rows';
+import { lookUp } from './table';
 import { tremble } from './tremble';
 import { add, get, largest, mad, max, mul, nmad, put, splat, sub } from './vector';
 
 export const FIELDS: i32 = 1;
 export const STRESS: i32 = 2;
+/** omega is to be renewed, for the steps to come */
+export const RENEW: i32 = 8;
 
 export let bulkTopU2: f64 = 0;
 
-export function bulkRow<T>(y: i32, flags: i32): void {
+/** `Thins` an integer type: every cell has an omega of its own, see rheology.ts; a compiled path apart, so that others pay nothing. */
+export function bulkRow<T, Thins>(y: i32, flags: i32): void {
   const size = sizeof<T>();
   const south = row(y - 1);
   const here = row(y);
@@ -29,17 +33,21 @@ export function bulkRow<T>(y: i32, flags: i32): void {
   const uyOut = fieldRow(H.AT_UY, y);
   const pOut = fieldRow(H.AT_P, y);
   const tauOut = fieldRow(H.AT_TAU, y);
+  const omegaAt = isInteger<Thins>() ? fieldRow(H.AT_OMEGA, y) : 0;
 
   const density = entry(H.RHO_LIQUID);
   const omegaNumber = 1 / (3 / (density * entry(H.FLUIDITY_LIQUID)) + 0.5);
+  const one = splat<T>(1);
   const half = splat<T>(0.5);
   const quarter = splat<T>(0.25);
   const third = splat<T>(1.0 / 3.0);
   const twoThirds = splat<T>(2.0 / 3.0);
   const rho = splat<T>(density);
   const lighter = splat<T>(1 / density);
-  const keep = splat<T>(1 - omegaNumber);
-  const toStress = splat<T>(0.5 * omegaNumber - 1);
+  const rateOf = splat<T>(3 / density);
+  const omegaAll = splat<T>(omegaNumber);
+  const keepAll = splat<T>(1 - omegaNumber);
+  const toStressAll = splat<T>(0.5 * omegaNumber - 1);
   const sections = address(H.AT_SECTIONS);
   const sound = sections + 2 * stride;
   const driveX = entry(H.FORCE_X) + entry(H.DRIVE_FORCE);
@@ -85,8 +93,18 @@ export function bulkRow<T>(y: i32, flags: i32): void {
 
     const e11 = mul<T>(jx, uy);
     const n11 = sub<T>(m11, e11);
+    const n20 = sub<T>(sub<T>(x13, y24), sub<T>(xx, yy));
+    const omega = isInteger<Thins>() ? get(omegaAt + i) : omegaAll;
+    const keep = isInteger<Thins>() ? sub<T>(one, omega) : keepAll;
+    if (isInteger<Thins>()) {
+      if (flags & RENEW) {
+        const rate = mul<T>(rateOf, omega);
+        const n2 = mad<T>(n11, n11, mul<T>(mul<T>(quarter, n20), n20));
+        put(omegaAt + i, mul<T>(mul<T>(rate, rate), n2));
+      }
+    }
     const d11 = mul<T>(keep, n11);
-    const d20 = mul<T>(half, mul<T>(keep, sub<T>(sub<T>(x13, y24), sub<T>(xx, yy))));
+    const d20 = mul<T>(half, mul<T>(keep, n20));
     const q10 = add<T>(halfFx, jx);
     const q01 = add<T>(halfFy, jy);
     const q20 = add<T>(add<T>(p, xx), d20);
@@ -118,8 +136,11 @@ export function bulkRow<T>(y: i32, flags: i32): void {
     put(uxOut + i, ux);
     put(uyOut + i, uy);
     if (flags & FIELDS) put(pOut + i, p);
-    if (flags & STRESS) put(tauOut + i, mul<T>(toStress, n11));
+    if (flags & STRESS) put(tauOut + i, mul<T>(isInteger<Thins>() ? sub<T>(mul<T>(half, omega), one) : toStressAll, n11));
     i += 16;
   } while (i < end);
   bulkTopU2 = largest<T>(top);
+  if (isInteger<Thins>()) {
+    if (flags & RENEW) lookUp<T>(omegaAt, <i32>(i / size));
+  }
 }

@@ -3,7 +3,7 @@
 // A step without gas, on one thread: ghosts, then one collision row after another.
 import * as H from '../header';
 import { arriveRow } from './arrive';
-import { FIELDS, STRESS, bulkRow, bulkTopU2 } from './bulk';
+import { FIELDS, RENEW, STRESS, bulkRow, bulkTopU2 } from './bulk';
 import { collideRow } from './collision';
 import { clearSolids, fillGhosts, fillReturns } from './ghosts';
 import { phiGhosts } from './phi';
@@ -12,6 +12,7 @@ import { bind, entry, ny, row, rowSums, setEntry, turn } from './rows';
 import { sample } from './samples';
 import { addBlocks, addRows, checkSpeed, clearSections, dampSound, drive, meanFlux } from './sections';
 import { call, endRow, firstRow, join, meet, nextCall, share, thread } from './team';
+import { EVERY } from './table';
 import { thinRow, thins } from './thin';
 import { look, mark, refreshing, settle, wake } from './tiles';
 
@@ -102,6 +103,7 @@ function finish<T>(step: i64, sampling: bool): void {
 }
 
 function flowAlone<T>(steps: i32, sampleEvery: i32): i32 {
+  const thins = entry(H.THINS) != 0;
   let done = 0;
   while (done < steps && entry(H.STATUS) == 0) {
     done++;
@@ -109,7 +111,9 @@ function flowAlone<T>(steps: i32, sampleEvery: i32): i32 {
     clearSections<T>();
     fillGhosts<T>();
     for (let y = 0; y < ny; y++) {
-      bulkRow<T>(y, (done == steps ? FIELDS : 0) | (y < 2 || y >= ny - 2 ? STRESS : 0));
+      const flags = (done == steps ? FIELDS : 0) | (y < 2 || y >= ny - 2 ? STRESS : 0);
+      if (thins) bulkRow<T, i32>(y, flags | (step % EVERY == 0 ? RENEW : 0));
+      else bulkRow<T, f32>(y, flags);
       checkSpeed<T>(y, bulkTopU2);
     }
     turn();

@@ -1,12 +1,10 @@
 // Viscosity of a liquid that thins under shear, on the faces between cells: rheology.ts and `thinFaces` of forces.ts in lanes along x;
-// eta itself is looked up one by one in a table over rate^2, since lanes cannot gather. Reads the velocities that arrive, with
+// eta itself is looked up one by one (table.ts). Reads the velocities that arrive, with
 // ghosts; writes eta of the faces along x (from -1) and along y (from row -1).
 import * as H from '../header';
-import { address, entry, fieldRow, nx, stride } from './rows';
+import { entry, fieldRow, nx, stride } from './rows';
+import { EVERY, lookUp } from './table';
 import { add, get, mad, mul, put, splat, sub } from './vector';
-
-const EVERY: i64 = 8;
-const LOWEST: i32 = -60;
 
 /** Whether eta is worked out anew in the step. */
 export function thins(step: i64): bool { return entry(H.THINS) != 0 && (step - 1) % EVERY == 0; }
@@ -56,21 +54,4 @@ function squareAlone<T>(to: usize, n: usize, a: usize): void {
   const alongSide = <T>0.25 * (load<T>(a + stride) - load<T>(a - stride) + (load<T>(a + size + stride) - load<T>(a + size - stride)));
   const shear = turn + normalSide;
   store<T>(to, <T>2 * (stretch * stretch + alongSide * alongSide) + shear * shear);
-}
-
-/** eta in place of rate^2, straight between the entries of the table. */
-function lookUp<T>(at: usize, count: i32): void {
-  const table = address(H.AT_TABLE);
-  const least: f64 = 2.0 ** -60.0;
-  const most: f64 = 16.0 * (1.0 - 2.0 ** -40.0);
-  const end = at + <usize>count * sizeof<T>();
-  do {
-    const bits = reinterpret<u64>(Math.min(Math.max(<f64>load<T>(at), least), most));
-    // 11 bits of exponent, 6 bits choose among the 64 entries of a doubling, 46 lie between two of them
-    const place = table + <usize>((<i32>(bits >> 46) - ((1023 + LOWEST) << 6)) << 3);
-    const between = <f64>(<i64>(bits & 0x3fffffffffff)) * 2.0 ** -46.0;
-    const here = load<f64>(place);
-    store<T>(at, <T>(here + between * (load<f64>(place, 8) - here)));
-    at += sizeof<T>();
-  } while (at < end);
 }

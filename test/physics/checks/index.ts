@@ -11,6 +11,7 @@ import { check as inclined } from './inclined.ts';
 import { drift, check as laplace } from './laplace.ts';
 import { check as oscillating } from './oscillating.ts';
 import { check as poiseuille } from './poiseuille.ts';
+import { check as rheology } from './rheology.ts';
 import { check as risingBubble } from './rising-bubble.ts';
 import { longCheck, stallCheck } from './slot.ts';
 import { check as taylorGreen } from './taylor-green.ts';
@@ -18,7 +19,7 @@ import { check as twoLayer } from './two-layer.ts';
 
 /** All checks in the order of the table. */
 export const CHECKS: readonly Check[] = [
-  ...[poiseuille, oscillating, taylorGreen, cavity, cylinders, inclined],
+  ...[poiseuille, oscillating, taylorGreen, cavity, cylinders, inclined, rheology],
   ...[twoLayer, film, laplace, capillaryWave, contactAngle, contactAngleInclined],
   ...[risingBubble, stallCheck, longCheck, atRest, drift],
   ...findingChecks,
