@@ -1,5 +1,5 @@
 /** The part of the table of keys that tells what measures ask beside the flow: particles and deposit. */
-import { z } from 'zod';
+import * as z from 'zod';
 import { leftOut, plainNumber, quantity } from './leaves.ts';
 
 export const particleKeys = leftOut(

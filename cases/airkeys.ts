@@ -1,5 +1,5 @@
 /** The part of the table of keys that tells what the air costs: how it is blown in, and what the membranes give for it. */
-import { z } from 'zod';
+import * as z from 'zod';
 import { quantity } from './leaves.ts';
 
 export const airKeys = z.strictObject({

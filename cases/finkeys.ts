@@ -1,5 +1,5 @@
 /** The part of the table of keys that tells the fins. */
-import { z } from 'zod';
+import * as z from 'zod';
 import { flag, plainNumber, quantity } from './leaves.ts';
 
 /** How an entry makes several fins of one. */

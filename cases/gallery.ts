@@ -3,6 +3,7 @@
  * room that opens files. Compiled code stands two folders away from them.
  */
 import { existsSync, readdirSync, readFileSync } from 'node:fs';
+import { parseDocument } from 'yaml';
 import { UsageError } from '../solver/index.ts';
 
 function shelf(): URL {
@@ -26,4 +27,9 @@ export function galleryText(name: string): string {
   const names = galleryNames();
   if (!names.includes(name)) throw new UsageError('case', `There is no ready-made case "${name}"; there are ${names.join(', ')}`);
   return readFileSync(new URL(`${name}.yaml`, shelf()), 'utf8');
+}
+
+/** The title of a ready-made case, without reading the rest of it. */
+export function galleryTitle(name: string): string {
+  return String(parseDocument(galleryText(name)).get('title'));
 }

@@ -1,5 +1,5 @@
 /** The part of the table of keys that tells the gas: how much, in what bubbles, where and when. */
-import { z } from 'zod';
+import * as z from 'zod';
 import { choice, leftOut, plainNumber, quantity, wordOrLength } from './leaves.ts';
 
 const spread = { unit: '%', least: 0, most: 40, says: 'standard deviation of the diameter over its mean' };

@@ -1,6 +1,6 @@
 export { workOf } from './bands.ts';
 export type { Case, WallSide } from './case.ts';
-export { galleryNames, galleryText } from './gallery.ts';
+export { galleryNames, galleryText, galleryTitle } from './gallery.ts';
 export { type Plan, type Point, pointCase, pointCells, pointSets } from './plan/plan.ts';
 export { readPlan } from './plan/read.ts';
 export { planSchema } from './plan/schema.ts';

@@ -2,7 +2,7 @@
  * The kinds of value a case file holds at its leaves. Each returns a zod schema that turns the text read into a value,
  * reports a {@link Finding} otherwise, and carries what an editor shows (JSON Schema keywords).
  */
-import { z } from 'zod';
+import * as z from 'zod';
 import { type Finding, inSI, MEASURES, type Measure, plainText, readQuantity } from './units.ts';
 
 /** `least` and `most` are in `unit`; both belong to what is allowed. `default` is written as in a case file. */

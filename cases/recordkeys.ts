@@ -1,5 +1,5 @@
 /** The keys of a case that say what is recorded, and for how long. */
-import { z } from 'zod';
+import * as z from 'zod';
 import { quantity } from './leaves.ts';
 
 const STEMS = [

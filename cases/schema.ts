@@ -3,7 +3,7 @@
  * The reader, the messages and the editors' JSON Schema are all made from it. Limits are those of what the method can carry,
  * not of what is sensible to build.
  */
-import { z } from 'zod';
+import * as z from 'zod';
 import { depositKeys, particleKeys } from './afterkeys.ts';
 import { airKeys } from './airkeys.ts';
 import { finKeys } from './finkeys.ts';

@@ -1,6 +1,6 @@
 import { existsSync, mkdirSync, readFileSync, writeFileSync } from 'node:fs';
 import { join } from 'node:path';
-import { galleryNames, galleryText, readCase } from '../cases/index.ts';
+import { galleryNames, galleryText, galleryTitle } from '../cases/index.ts';
 import { OutputError, UsageError } from '../solver/index.ts';
 import { suggestion } from './words.ts';
 
@@ -18,7 +18,7 @@ export function gallery({ name, copy }: { name: string | undefined; copy: string
 
 function listing(names: string[]): string {
   const width = Math.max(...names.map((name) => name.length));
-  const lines = names.map((name) => `${name.padEnd(width)}  ${readCase(galleryText(name), name).title}`);
+  const lines = names.map((name) => `${name.padEnd(width)}  ${galleryTitle(name)}`);
   return `${lines.join('\n')}\n\nswathe run NAME runs one, swathe gallery NAME prints it, swathe gallery NAME --copy DIR makes it yours to change.\n`;
 }
 

@@ -1,5 +1,5 @@
 /** What the table of cases knows about a key such as `channel.gap` or `fins.0.angle`. */
-import { z } from 'zod';
+import * as z from 'zod';
 import { measureOf, unwrapped } from '../leaves.ts';
 import { caseTable } from '../schema.ts';
 import type { Path } from '../text.ts';

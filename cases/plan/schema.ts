@@ -1,5 +1,5 @@
 /** The table of everything a plan of many cases may say, as cases/schema.ts is that of one case. */
-import { z } from 'zod';
+import * as z from 'zod';
 import { choice, line, plainNumber } from '../leaves.ts';
 
 /** Most points of a plan: beyond it a listing is no longer read by anybody. */

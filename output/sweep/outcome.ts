@@ -1,5 +1,5 @@
 import { join } from 'node:path';
-import { z } from 'zod';
+import * as z from 'zod';
 import { OutputError } from '../../solver/index.ts';
 import { readWhole, remove, writeWhole } from '../folder/files.ts';
 
