@@ -28,12 +28,11 @@ export class Canvas {
   readonly height: number;
   readonly data: Uint8Array;
 
-  constructor(width: number, height: number, paper: Colour = PAPER) {
+  constructor(width: number, height: number) {
     this.width = width;
     this.height = height;
-    this.data = new Uint8Array(width * height * 3);
-    for (let i = 0; i < width * 3; i++) this.data[i] = paper[i % 3];
-    for (let row = 1; row < height; row++) this.data.copyWithin(row * width * 3, 0, width * 3);
+    // white paper
+    this.data = new Uint8Array(width * height * 3).fill(255);
   }
 
   set(x: number, y: number, colour: Colour): void {
@@ -48,8 +47,11 @@ export class Canvas {
   blend(x: number, y: number, colour: Colour, cover: number): void {
     if (cover <= 0 || x < 0 || y < 0 || x >= this.width || y >= this.height) return;
     const i = (y * this.width + x) * 3;
-    const share = Math.min(1, cover);
-    for (let c = 0; c < 3; c++) this.data[i + c] = Math.round(this.data[i + c] + share * (colour[c] - this.data[i + c]));
+    if (cover >= 1) {
+      for (let c = 0; c < 3; c++) this.data[i + c] = Math.round(colour[c]);
+      return;
+    }
+    for (let c = 0; c < 3; c++) this.data[i + c] = Math.round(this.data[i + c] + cover * (colour[c] - this.data[i + c]));
   }
 
   /** Whole pixels from (x, y), `width` by `height`. */
