@@ -1,3 +1,4 @@
+import { type Bodies, bodies } from './bodies.ts';
 import { CS2 } from './constants.ts';
 import { type Geometry, geometry } from './geometry.ts';
 import { type Profile, profileOf } from './profile.ts';
@@ -44,6 +45,7 @@ export interface Box {
   gasLimit: number;
   geometry: Geometry;
   walls: Walls;
+  bodies: Bodies;
 }
 
 /** 18 populations of four bytes: less than any cell takes, so that a box far too big is refused before anything is made for it */
@@ -80,6 +82,7 @@ export function resolve(setup: Setup): Box {
   checkPair('left', sides.left, 'right', sides.right);
   checkPair('bottom', sides.bottom, 'top', sides.top);
   if (setup.solid && setup.solid.length !== nx * ny) fail(`solid has ${setup.solid.length} entries; nx * ny = ${nx * ny} are needed`);
+  if (setup.bodies && setup.bodies.length !== nx * ny) fail(`bodies has ${setup.bodies.length} entries; nx * ny = ${nx * ny} are needed`);
   if (setup.skim && setup.skim.length !== nx) fail(`skim has ${setup.skim.length} entries; nx = ${nx} are needed`);
   const twoPhase = setup.gas !== undefined;
   if (twoPhase && setup.surfaceTension === undefined) fail('surfaceTension is missing; a box with gas needs it (0 is allowed)');
@@ -92,6 +95,7 @@ export function resolve(setup: Setup): Box {
   const mobility = positive('mobility', setup.mobility ?? 0.1);
   const profile = profileOf(W);
   const solids = geometry(setup);
+  const boxWalls = walls(setup, solids.fluid);
   const buoyancy = finite('buoyancy', setup.buoyancy ?? 1);
   return {
     setup,
@@ -121,7 +125,8 @@ export function resolve(setup: Setup): Box {
     speedLimit: positive('speedLimit', setup.speedLimit ?? 0.4),
     nu0: twoPhase ? sharedViscosity(setup.liquid, gas) : 0,
     geometry: solids,
-    walls: walls(setup, solids.fluid),
+    walls: boxWalls,
+    bodies: bodies(setup, solids, boxWalls),
   };
 }
 

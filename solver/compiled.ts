@@ -60,7 +60,7 @@ export class Compiled implements Simulation {
     this.box = box;
     this.map = map;
     this.kernel = kernel;
-    this.recorder = new Recorder(box.nx);
+    this.recorder = new Recorder(box.nx, box.bodies.count);
     const { header, stride } = map;
     const { nx, ny } = box;
     const view = (entry: number): Field => ndarray(numbers(map, header[entry], ny * stride - 2), [nx, ny], [1, stride]);
@@ -135,12 +135,14 @@ export class Compiled implements Simulation {
   /** Moves the samples out of the kernel's buffer. */
   private drain(): void {
     const { header, memory } = this.map;
-    const { nx } = this.box;
+    const { nx, bodies } = this.box;
+    const forceBytes = 16 * bodies.count;
     for (let n = 0; n < header[H.SAMPLES]; n++) {
-      const at = header[H.AT_SAMPLES] + n * (32 + 16 * nx);
+      const at = header[H.AT_SAMPLES] + n * (32 + forceBytes + 16 * nx);
       const [step, upflow, gasArea, skimmed] = new Float64Array(memory.buffer, at, 4);
-      const rows = new Float32Array(memory.buffer, at + 32, 4 * nx);
+      const rows = new Float32Array(memory.buffer, at + 32 + forceBytes, 4 * nx);
       const sample = this.recorder.next(step, upflow, gasArea, skimmed);
+      sample.forces.set(new Float64Array(memory.buffer, at + 32, 2 * bodies.count));
       sample.shearLeft.set(rows.subarray(0, nx));
       sample.shearRight.set(rows.subarray(nx, 2 * nx));
       sample.phiLeft.set(rows.subarray(2 * nx, 3 * nx));

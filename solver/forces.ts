@@ -41,9 +41,9 @@ export const clip = (phi: number): number => Math.min(Math.max(phi, 0), 1);
 /** Share of liquid, 0 to 1. */
 export const share = (phi: number): number => clip((phi - PURE) / (1 - 2 * PURE));
 
-const density = (box: Box, phi: number): number => box.rhoGas + share(phi) * (box.rhoLiquid - box.rhoGas);
+export const density = (box: Box, phi: number): number => box.rhoGas + share(phi) * (box.rhoLiquid - box.rhoGas);
 
-const viscosity = (box: Box, phi: number, liquid = 1 / box.fluidityLiquid): number =>
+export const viscosity = (box: Box, phi: number, liquid = 1 / box.fluidityLiquid): number =>
   1 / (box.fluidityGas + share(phi) * (1 / liquid - box.fluidityGas));
 
 /** eta of a liquid that thins on all faces, by the velocities that arrive. */

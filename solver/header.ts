@@ -1,7 +1,7 @@
 // The header of the kernel's memory: one f64 per entry, at byte 8 * entry. Literals only, compiled by both compilers.
 
 /** checked by the host against the kernel's own copy when it is loaded */
-export const VERSION = 8;
+export const VERSION = 9;
 /** bytes kept for the header */
 export const HEADER_BYTES = 1024;
 
@@ -37,7 +37,7 @@ export const AT_RUNS = 16;
 export const RUNS = 17;
 /** f64: x, y, n, exp of what wetting adds to ln(phi/(1 - phi)), then n times x, y, weight */
 export const AT_GHOSTS = 18;
-/** per sample: four f64 (step, upflow, gas area, skimmed), then four rows of nx f32 (shear left, right, phi left, right) */
+/** per sample: four f64 (step, upflow, gas area, skimmed), two f64 per body (force along x, y), then four rows of nx f32 (shear left, right, phi left, right) */
 export const AT_SAMPLES = 20;
 /** samples in the buffer */
 export const SAMPLES = 21;
@@ -129,6 +129,14 @@ export const AT_BLOCKS = 89;
 /** gas there should be by what was placed and skimmed; what tiles of liquid add to z in each cell so that there is as much */
 export const GAS_DUE = 93;
 export const AMENDS = 94;
+
+// ---- bodies
+/** eight i32 each, see bodies.ts: place x, y, direction, fluid x, y, direction it left in, bodies that take x, y */
+export const AT_TOUCHES = 110;
+export const TOUCHES = 111;
+export const BODIES = 112;
+/** two f64 per body, those of no body first */
+export const AT_FORCES = 113;
 
 // ---- what the threads of a call are to do
 export const THREADS = 90;

@@ -9,13 +9,15 @@ interface Place {
 }
 
 /** Bytes that each list takes at most. */
-export function listBytes({ ny, geometry, walls }: Box): [number, number][] {
+export function listBytes({ ny, geometry, walls, bodies }: Box): [number, number][] {
   const neighbours = geometry.ghosts.reduce((n, ghost) => n + ghost.neighbours.length, 0);
   const rows = 4 * (ny + 1);
   return [
     [H.AT_LINKS, 48 * geometry.links.length],
     [H.AT_RUNS, 12 * geometry.runs.length],
     [H.AT_GHOSTS, 32 * geometry.ghosts.length + 24 * neighbours],
+    [H.AT_TOUCHES, 32 * bodies.touches.length],
+    [H.AT_FORCES, 16 * (bodies.count + 1)],
     [H.AT_RETURNS, 16 * walls.returns.length],
     [H.AT_WALL_GHOSTS, 8 * walls.ghosts.reduce((n, ghost) => n + 2 + 6 * ghost.faces.length, 0)],
     ...[H.AT_GHOST_ROWS, H.AT_RETURN_ROWS, H.AT_WALL_GHOST_ROWS].map((at): [number, number] => [at, rows]),
@@ -24,10 +26,14 @@ export function listBytes({ ny, geometry, walls }: Box): [number, number][] {
 
 /** Writes the lists where the header says. */
 export function writeLists(box: Box, header: Float64Array, bytesPerNumber: number): void {
-  const { geometry } = box;
+  const { geometry, bodies } = box;
   const { buffer } = header;
   header[H.LINKS] = geometry.links.length;
   header[H.RUNS] = geometry.runs.length;
+  header[H.TOUCHES] = bodies.touches.length;
+  header[H.BODIES] = bodies.count;
+  const touches = bodies.touches.flatMap((t) => [t.x, t.y, t.k, t.fluidX, t.fluidY, t.left, t.bodyX, t.bodyY]);
+  new Int32Array(buffer, header[H.AT_TOUCHES], touches.length).set(touches);
   geometry.links.forEach(({ x, y, k, fluidX, fluidY, second, weight }, n) => {
     const link = header[H.AT_LINKS] + 48 * n;
     new Int32Array(buffer, link, 8).set([x, y, k, fluidX, fluidY, second.x, second.y, second.k]);

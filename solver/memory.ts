@@ -42,7 +42,7 @@ export function layMemory(box: Box): MemoryMap {
   const bytesPerNumber = setup.precision === 'f64' ? 8 : 4;
   const lanes = 16 / bytesPerNumber;
   const strideBytes = 32 + Math.ceil(nx / lanes) * 16;
-  const sampleBytes = 32 + 16 * nx;
+  const sampleBytes = 32 + 16 * box.bodies.count + 16 * nx;
   const sampleCapacity = Math.max(1, Math.floor(SAMPLE_BYTES / sampleBytes));
   let end = FIRST;
   const take = (bytes: number): number => {

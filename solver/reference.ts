@@ -10,6 +10,7 @@
  * after collision, f as it is (it sums to about 0), g less w: both are deviations, which f32 keeps to more digits.
  */
 import ndarray from 'ndarray';
+import { bodyForces } from './bodies.ts';
 import { type Box, driveForce, resolve } from './box.ts';
 import { type Cell, collideInterface, collideLiquid, collideVelocity, firstMoment, newCell } from './collide.ts';
 import { Q } from './constants.ts';
@@ -70,7 +71,7 @@ export class Reference implements Simulation {
     this.sections = new Float64Array(nx);
     this.sectionGas = new Float64Array(nx);
     this.sound = new Float64Array(nx);
-    this.recorder = new Recorder(nx);
+    this.recorder = new Recorder(nx, this.box.bodies.count);
     const view = (data: Float64Array): Field => ndarray(data, [nx, ny], [1, this.S], this.S + 1);
     this.phi = view(this.fields.phi);
     this.ux = view(this.fields.ux);
@@ -281,6 +282,8 @@ export class Reference implements Simulation {
     const [a0, a1] = geometry.wallWeights.left;
     const [b0, b1] = geometry.wallWeights.right;
     const row = this.recorder.next(this.step, this.totalsNow[1], this.totalsNow[3], this.totalsNow[4]);
+    // the populations as the step pulled them
+    row.forces.set(bodyForces(this.box, this.fNext, this.fields));
     for (let x = 0; x < nx; x++) {
       if (this.box.twoPhase) {
         row.shearLeft[x] = wallFriction(this.box, this.fields, this.at(x, 0), this.at(x, -1));

@@ -59,6 +59,8 @@ export interface Setup {
   contactAngle?: number;
   /** 1 where a cell is solid; shape (ny, nx), x contiguous: index y * nx + x */
   solid?: Uint8Array;
+  /** which body a solid cell is part of, 1 and up, 0 none; all solids are body 1 without it. The force on each is sampled; shape (ny, nx) */
+  bodies?: Uint16Array;
   /**
    * Distance of a point from the faces of the solids, cells, positive in the fluid; asked up to one cell beyond the box. It tells where
    * between a fluid and a solid cell the face lies; without it, halfway

@@ -10,6 +10,9 @@ export type Status = { kind: 'ok'; step: number } | { kind: 'nonFinite' | 'tooFa
 /** A series along time: `get(sample, x)`, shape [samples, nx]. */
 export type Rows = NdArray<Float32Array>;
 
+/** `get(sample, body)`, shape [samples, bodies]; body n of the setup is n - 1 here. */
+type Forces = NdArray<Float64Array>;
+
 /** What the walls felt, recorded inside the kernel's memory and handed over once. Lattice units. */
 export interface Samples {
   /** step of each sample; shape (samples) */
@@ -18,6 +21,8 @@ export interface Samples {
   shear: { left: Rows; right: Rows };
   /** phi at the wall (extrapolated) */
   phi: { left: Rows; right: Rows };
+  /** force of the fluid on each body, along and across the channel; see bodies.ts */
+  force: { x: Forces; y: Forces };
   /** mean of ux over all cells: the volume flux of the section over the gap; shape (samples) */
   upflow: Float64Array;
   /** sum of (1 - phi) over fluid cells, less what this step skims; shape (samples) */

@@ -12,11 +12,11 @@ const PERIODIC: i32 = 0;
 const SLIP: i32 = 2;
 
 /** Address of population n (0..8 f, 9..17 g) of cell (x, y). */
-@inline function at<T>(x: i32, y: i32, n: i32): usize { return row(y) + <usize>n * stride + <usize>(x * <i32>sizeof<T>()); }
+@inline export function at<T>(x: i32, y: i32, n: i32): usize { return row(y) + <usize>n * stride + <usize>(x * <i32>sizeof<T>()); }
 
 @inline function opposite(k: i32): i32 { return k == 0 ? 0 : k < 5 ? ((k + 1) & 3) + 1 : ((k - 3) & 3) + 5; }
-@inline function ex(k: i32): i32 { return k == 1 || k == 5 || k == 8 ? 1 : k == 3 || k == 6 || k == 7 ? -1 : 0; }
-@inline function ey(k: i32): i32 { return k == 2 || k == 5 || k == 6 ? 1 : k == 4 || k == 7 || k == 8 ? -1 : 0; }
+@inline export function ex(k: i32): i32 { return k == 1 || k == 5 || k == 8 ? 1 : k == 3 || k == 6 || k == 7 ? -1 : 0; }
+@inline export function ey(k: i32): i32 { return k == 2 || k == 5 || k == 6 ? 1 : k == 4 || k == 7 || k == 8 ? -1 : 0; }
 /** the direction with the sign of ex turned, of ey turned */
 @inline function mirrorX(k: i32): i32 { return k == 1 ? 3 : k == 3 ? 1 : k == 5 ? 6 : k == 6 ? 5 : k == 7 ? 8 : k == 8 ? 7 : k; }
 @inline function mirrorY(k: i32): i32 { return k == 2 ? 4 : k == 4 ? 2 : k == 5 ? 8 : k == 8 ? 5 : k == 6 ? 7 : k == 7 ? 6 : k; }

@@ -3,6 +3,7 @@
 // A step without gas, on one thread: ghosts, then one collision row after another.
 import * as H from '../header';
 import { arriveRow } from './arrive';
+import { bodyForces } from './bodies';
 import { FIELDS, RENEW, STRESS, bulkRow, bulkTopU2 } from './bulk';
 import { collideRow } from './collision';
 import { clearSolids, fillGhosts, fillReturns } from './ghosts';
@@ -80,6 +81,11 @@ function together<T>(): i32 {
       for (let y = firstRow; y < endRow; y++) thinRow<T>(y);
       meet();
     }
+    const sampling = sampleEvery > 0 && step % <i64>sampleEvery == 0;
+    if (sampling && entry(H.TOUCHES) != 0) {
+      if (thread == 0) bodyForces<T>();
+      meet();
+    }
     for (let y = firstRow; y < endRow; y++) {
       if (entry(H.THINS) != 0) collideRow<T, i32>(y, done == steps ? FIELDS : 0);
       else collideRow<T, f32>(y, done == steps ? FIELDS : 0);
@@ -88,7 +94,7 @@ function together<T>(): i32 {
     clearSolids<T>(firstRow, endRow);
     meet();
     if (refresh) share();
-    if (thread == 0) finish<T>(step, sampleEvery > 0 && step % <i64>sampleEvery == 0);
+    if (thread == 0) finish<T>(step, sampling);
   }
   return done;
 }
@@ -110,6 +116,8 @@ function flowAlone<T>(steps: i32, sampleEvery: i32): i32 {
     const step = <i64>entry(H.STEP) + 1;
     clearSections<T>();
     fillGhosts<T>();
+    const sampling = sampleEvery > 0 && step % <i64>sampleEvery == 0;
+    if (sampling) bodyForces<T>();
     for (let y = 0; y < ny; y++) {
       const flags = (done == steps ? FIELDS : 0) | (y < 2 || y >= ny - 2 ? STRESS : 0);
       if (thins) bulkRow<T, i32>(y, flags | (step % EVERY == 0 ? RENEW : 0));
@@ -121,7 +129,7 @@ function flowAlone<T>(steps: i32, sampleEvery: i32): i32 {
     setEntry(H.STEP, <f64>step);
     drive(meanFlux<T>());
     dampSound<T>();
-    if (sampleEvery > 0 && step % <i64>sampleEvery == 0) sample<T>();
+    if (sampling) sample<T>();
   }
   return done;
 }

@@ -1,4 +1,4 @@
-// What the walls felt in a step, written behind the samples there are; see header.ts for the layout.
+// What walls and bodies felt in a step, written behind the samples there are; see header.ts for the layout.
 import * as H from '../header';
 import { address, entry, fieldRow, nx, ny, setEntry, zRow } from './rows';
 import { PURE } from './vector';
@@ -6,21 +6,24 @@ import { PURE } from './vector';
 export function sample<T>(): void {
   const n = <i32>entry(H.SAMPLES);
   setEntry(H.SAMPLES, <f64>(n + 1));
-  const at = address(H.AT_SAMPLES) + <usize>n * (32 + 16 * <usize>nx);
+  const forces = 16 * <usize>entry(H.BODIES);
+  const at = address(H.AT_SAMPLES) + <usize>n * (32 + forces + 16 * <usize>nx);
   store<f64>(at, entry(H.STEP));
   store<f64>(at, entry(H.UPFLOW), 8);
   store<f64>(at, entry(H.GAS_AREA), 16);
   store<f64>(at, entry(H.SKIMMED), 24);
+  memory.copy(at + 32, address(H.AT_FORCES) + 16, forces);
+  const rows = at + 32 + forces;
   const bytes = 4 * <usize>nx;
   if (entry(H.TWO_PHASE) != 0) {
-    friction<T>(at + 32, 0, -1);
-    friction<T>(at + 32 + bytes, ny - 1, ny);
+    friction<T>(rows, 0, -1);
+    friction<T>(rows + bytes, ny - 1, ny);
   } else {
-    wall<T>(at + 32, 0, 0, 1, 1);
-    wall<T>(at + 32 + bytes, 2, ny - 1, ny - 2, -1);
+    wall<T>(rows, 0, 0, 1, 1);
+    wall<T>(rows + bytes, 2, ny - 1, ny - 2, -1);
   }
-  wallPhi<T>(at + 32 + 2 * bytes, 0, -1);
-  wallPhi<T>(at + 32 + 3 * bytes, ny - 1, ny);
+  wallPhi<T>(rows + 2 * bytes, 0, -1);
+  wallPhi<T>(rows + 3 * bytes, ny - 1, ny);
 }
 
 /** The very force along x that the wall beyond the row `inside` took in this step; 0 under a solid and beyond a side that is no wall. */

@@ -30,6 +30,7 @@ function awkwardSetup(nx: number, ny: number, sides: Sides, twoPhase: boolean, p
     liquid,
     ...(twoPhase ? { gas, surfaceTension, contactAngle: 1, interfaceWidth: 4, mobility: 0.08, buoyancy: 1.1 } : {}),
     solid,
+    bodies: Uint16Array.from(solid, (cell, i) => (cell === 0 ? 0 : 1 + (i % 2))),
     solidDistance: unevenFaces(nx, ny, solid, seed),
     gravity: { x: -1e-4, y: 3e-5 },
     force: { x: 1e-5, y: -2e-5 },
@@ -70,6 +71,11 @@ function difference(a: Simulation, b: Simulation, samplesA: Samples, samplesB: S
         for (let x = 0; x < nx; x++)
           noteRow(samplesA[rows][side].get(n, x), samplesB[rows][side].get(n, x), `${place}, ${x} of ${nx} x ${ny}`);
       }
+    }
+    for (const axis of ['x', 'y'] as const) {
+      const [of, other] = [samplesA.force[axis], samplesB.force[axis]];
+      expect(other.shape).toEqual(of.shape);
+      for (let body = 0; body < of.shape[1]; body++) note(of.get(n, body), other.get(n, body), `force ${axis} on body ${body} of ${nx} x ${ny}`);
     }
     note(samplesA.upflow[n], samplesB.upflow[n], `upflow sample of ${nx} x ${ny}`);
     for (const name of ['gasArea', 'skimmed'] as const) {
