@@ -60,6 +60,15 @@ export function solidCells(fins: readonly Outline[], nx: number, ny: number, dx_
   return solid;
 }
 
+/** Which fin a cell is part of: 1 for the first, 0 for none; shape (ny, nx). */
+export function finNumbers(fins: readonly Outline[], nx: number, ny: number, dx_m: number): Uint16Array {
+  const numbers = new Uint16Array(nx * ny);
+  fins.forEach((fin, n) => {
+    for (const cell of cellsWithin(fin, nx, ny, dx_m)) numbers[cell] = n + 1;
+  });
+  return numbers;
+}
+
 /**
  * Distance of a point from the nearest face of the fins, cells, negative in fins; x and y as cells are numbered. Fins more than two cells
  * away are left out: Infinity where there is no other.

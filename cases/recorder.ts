@@ -10,6 +10,7 @@ type Arrays = Record<string, Float32Array | Float64Array | Uint8Array>;
 const COLUMNS = ['time_s', 'holdup', 'upflow_m_s', 'released_m2', 'skimmed_m2', 'present_m2'] as const satisfies readonly (keyof History)[];
 const BUBBLE = ['time_s', 'bubble', 'area_m2', 'x_m', 'y_m', 'ux_m_s', 'uy_m_s'] as const satisfies readonly (keyof BubbleRow)[];
 const SIDES = ['left', 'right'] as const;
+const WAYS = ['along', 'across'] as const;
 
 export class Recorder {
   readonly #panel: Case;
@@ -22,6 +23,8 @@ export class Recorder {
   /** room for all samples of the run; shape (samples, nx) */
   readonly #shear: Record<'left' | 'right', Float32Array>;
   readonly #gas: Record<'left' | 'right', Uint8Array>;
+  /** shape (samples, fins) */
+  readonly #fins: Record<'along' | 'across', Float64Array>;
   readonly #times_s: Float64Array;
   #samples = 0;
   readonly #history: History = { time_s: [], holdup: [], upflow_m_s: [], released_m2: [], skimmed_m2: [], present_m2: [] };
@@ -39,12 +42,15 @@ export class Recorder {
     this.#covered = { left: row(0), right: row(ny - 1) };
     this.#shear = { left: new Float32Array(samples * nx), right: new Float32Array(samples * nx) };
     this.#gas = { left: new Uint8Array(samples * nx), right: new Uint8Array(samples * nx) };
+    const forces = samples * panel.fins.length;
+    this.#fins = { along: new Float64Array(forces), across: new Float64Array(forces) };
     this.#times_s = new Float64Array(samples);
   }
 
   /** Takes in the solver's samples; wall rows count once the settling time is over. */
-  addSamples({ steps, shear, phi, upflow, gasArea, skimmed }: Samples, released_m2: number): void {
-    const { nx, dt_s, unit } = this.#derived;
+  addSamples({ steps, shear, phi, force, upflow, gasArea, skimmed }: Samples, released_m2: number): void {
+    const { nx, dx_m, dt_s, unit } = this.#derived;
+    const fins = this.#panel.fins.length;
     for (let n = 0; n < steps.length; n++) {
       const step = steps[n] as number;
       this.#history.time_s.push(step * dt_s);
@@ -56,6 +62,10 @@ export class Recorder {
       if (step <= this.#settle) continue;
       const row = this.#samples++;
       this.#times_s[row] = step * dt_s;
+      for (let fin = 0; fin < fins; fin++) {
+        this.#fins.along[row * fins + fin] = force.x.get(n, fin) * unit.stress_Pa * dx_m;
+        this.#fins.across[row * fins + fin] = force.y.get(n, fin) * unit.stress_Pa * dx_m;
+      }
       for (const side of SIDES) {
         for (let x = 0; x < nx; x++) {
           const under = this.#covered[side][x] === 1;
@@ -78,6 +88,7 @@ export class Recorder {
   recording(ended: Recording['ended']): Recording {
     const { nx, dx_m, release, skim } = this.#derived;
     const length = this.#samples * nx;
+    const forces = this.#samples * this.#panel.fins.length;
     const wall = (side: 'left' | 'right') => ({
       shear_Pa: this.#shear[side].subarray(0, length),
       gas: this.#gas[side].subarray(0, length),
@@ -91,6 +102,7 @@ export class Recorder {
       membrane: { first: Math.ceil(release.to_m / dx_m - 1e-9), end: Math.floor(skim.from_m / dx_m + 1e-9) },
       times_s: this.#times_s.subarray(0, this.#samples),
       walls: { left: wall('left'), right: wall('right') },
+      fins: { along_N_m: this.#fins.along.subarray(0, forces), across_N_m: this.#fins.across.subarray(0, forces) },
       history: this.#history,
       bubbles: this.#bubbles,
     };
@@ -104,6 +116,8 @@ export class Recorder {
       arrays[`shear_${side}`] = this.#shear[side].slice(0, length);
       arrays[`gas_${side}`] = this.#gas[side].slice(0, length);
     }
+    const forces = this.#samples * this.#panel.fins.length;
+    for (const way of WAYS) arrays[`force_${way}`] = this.#fins[way].slice(0, forces);
     for (const name of COLUMNS) arrays[`history_${name}`] = Float64Array.from(this.#history[name]);
     arrays.bubbles = Float64Array.from(this.#bubbles.flatMap((row) => BUBBLE.map((name) => row[name])));
     return arrays;
@@ -117,6 +131,7 @@ export class Recorder {
       this.#shear[side].set(arrays[`shear_${side}`] ?? []);
       this.#gas[side].set(arrays[`gas_${side}`] ?? []);
     }
+    for (const way of WAYS) this.#fins[way].set(arrays[`force_${way}`] ?? []);
     for (const name of COLUMNS) this.#history[name].push(...(arrays[`history_${name}`] ?? []));
     const flat = arrays.bubbles ?? new Float64Array();
     for (let at = 0; at < flat.length; at += BUBBLE.length) {

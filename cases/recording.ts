@@ -17,6 +17,7 @@ export interface Recording {
   times_s: Float64Array;
   /** both walls, whether or not they carry a membrane */
   walls: Record<WallSide, WallRows>;
+  fins: FinRows;
   /** from the start on, settling included */
   history: History;
   /** one row per bubble and observation */
@@ -29,6 +30,17 @@ interface WallRows {
   shear_Pa: Float32Array;
   /** 1 where gas touches the element */
   gas: Uint8Array;
+}
+
+/**
+ * Force of liquid and gas on each fin, in the order of the case, per metre of the sheet's width; shape (samples, fins), row-major. Without
+ * the buoyancy of the fin in the liquid.
+ */
+interface FinRows {
+  /** upward positive */
+  along_N_m: Float64Array;
+  /** towards the right wall positive */
+  across_N_m: Float64Array;
 }
 
 /** Columns of equal length. */

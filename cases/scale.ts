@@ -2,7 +2,7 @@
 import type { Setup } from '../solver/index.ts';
 import { bandsOf, gridOf, skimRates, stepsOf } from './bands.ts';
 import type { Case, Rheology } from './case.ts';
-import { finDistance, solidCells } from './fins.ts';
+import { finDistance, finNumbers, solidCells } from './fins.ts';
 import { fitting_m } from './gas.ts';
 import { meanArea_m2 } from './mixture.ts';
 import { onShare } from './pulse.ts';
@@ -73,7 +73,7 @@ export function layOut(panel: Case): { setup: Setup; derived: Derived } {
     mobility: MOBILITY,
     soundDamping: SOUND_DAMPING,
     contactAngle: panel.contactAngle_rad,
-    ...(panel.fins.length === 0 ? {} : { solid: solidCells(panel.fins, nx, ny, dx_m), solidDistance: finDistance(panel.fins, dx_m) }),
+    ...finsOf(panel, derived),
     gravity: { x: -g * Math.cos(panel.channel.tilt_rad), y: 0 - g * Math.sin(panel.channel.tilt_rad) },
     buoyancy: (rhoLiquid - panel.gas.airDensity_kg_m3) / (rhoLiquid - panel.gas.density_kg_m3),
     drive: driveOf(panel, derived),
@@ -93,6 +93,11 @@ function rheologyOf(
   const { consistency_Pa_sn, index, yieldStress_Pa, least_Pa_s } = rheology;
   const consistency = viscosity(consistency_Pa_sn) * dt_s ** (1 - index);
   return { rheology: { consistency, index, yieldStress: viscosity(yieldStress_Pa) * dt_s, least: viscosity(least_Pa_s) } };
+}
+
+function finsOf({ fins }: Case, { nx, ny, dx_m }: Derived): Pick<Setup, 'solid' | 'bodies' | 'solidDistance'> {
+  if (fins.length === 0) return {};
+  return { solid: solidCells(fins, nx, ny, dx_m), bodies: finNumbers(fins, nx, ny, dx_m), solidDistance: finDistance(fins, dx_m) };
 }
 
 function driveOf({ channel }: Case, { nx, unit }: Derived): NonNullable<Setup['drive']> {

@@ -20,6 +20,7 @@ const RESULT_FILES = [
   'histogram.csv',
   'swept.csv',
   'history.csv',
+  'fins.csv',
   'bubbles.csv',
   'backtransport.csv',
   'deposit.csv',

@@ -29,6 +29,7 @@ export function summary(recording: Recording, measures: Measures): string {
     swept: measures.swept,
     walls: { left: wallSummary(left), right: wallSummary(right) },
     together: sweptSummary(measures.together),
+    fins: measures.fins,
     loop: measures.loop,
     air: measures.air,
     backTransport: backTransportSummary(recording, measures),

@@ -5,6 +5,7 @@ import { type BackTransportMeasures, backTransport } from './backtransport.ts';
 import { type DepositMeasures, depositOn } from './deposit.ts';
 import { type ElementRow, elementRows } from './elements.ts';
 import { type Felt, type Place, placesOf } from './felt.ts';
+import { type FinForce, finForces } from './finforce.ts';
 import { type Histogram, shearHistogram } from './histogram.ts';
 import { type LoopMeasures, loopMeasures } from './loop.ts';
 import { notesOn } from './notes.ts';
@@ -36,6 +37,8 @@ export interface Measures {
   walls: Record<WallSide, WallMeasures>;
   /** the walls that carry a membrane, as one surface */
   together: Swept;
+  /** one per fin of the case */
+  fins: FinForce[];
   /** gas and liquid going round */
   loop: LoopMeasures;
   /** what the air costs */
@@ -89,6 +92,7 @@ export function measure(recording: Recording): Measures {
     swept: { above_Pa: asked.above_Pa, within_s: asked.within_s },
     walls,
     together: sweptTogether(membranes.map((side) => walls[side].swept)),
+    fins: finForces(recording),
     loop: loopMeasures(recording),
     air: airMeasures(recording),
     backTransport: each((walls) => backTransport(walls, recording.case)),

@@ -11,13 +11,22 @@ export function tables(recording: Recording, measures: Measures): Partial<Record
     'histogram.csv': histogram(measures),
     'swept.csv': swept(measures),
     'history.csv': history(recording),
+    ...(recording.case.fins.length === 0 ? {} : { 'fins.csv': fins(recording) }),
     'bubbles.csv': bubbles(recording),
     'backtransport.csv': backTransport(measures),
     ...(recording.case.deposit === undefined ? {} : { 'deposit.csv': deposit(recording, measures) }),
   };
 }
 
-export type TableName = 'walls.csv' | 'histogram.csv' | 'swept.csv' | 'history.csv' | 'bubbles.csv' | 'backtransport.csv' | 'deposit.csv';
+export type TableName =
+  | 'walls.csv'
+  | 'histogram.csv'
+  | 'swept.csv'
+  | 'history.csv'
+  | 'fins.csv'
+  | 'bubbles.csv'
+  | 'backtransport.csv'
+  | 'deposit.csv';
 
 /** One row per wall element over the whole height, left wall first, upward; `in_membrane` 1: counts in the measures. */
 function walls(measures: Measures): string {
@@ -83,6 +92,19 @@ function history(recording: Recording): string {
   return csv(
     ['time_s', 'holdup', 'upflow_m_s', 'released_m2', 'skimmed_m2', 'present_m2'],
     time_s.map((time, i) => [time, holdup[i], upflow_m_s[i], released_m2[i], skimmed_m2[i], present_m2[i]]),
+  );
+}
+
+/** One row per sample and fin, numbered as the case lists them: force per metre of width, upward and to the right positive. */
+function fins({ case: { fins: outlines }, times_s, fins: { along_N_m, across_N_m } }: Recording): string {
+  return csv(
+    ['time_s', 'fin', 'force_along_N_m', 'force_across_N_m'],
+    Array.from(along_N_m, (along, i) => [
+      times_s[Math.floor(i / outlines.length)] ?? null,
+      (i % outlines.length) + 1,
+      along,
+      across_N_m[i] ?? null,
+    ]),
   );
 }
 

@@ -211,6 +211,36 @@ describe('the tables of a run folder', () => {
     ]);
   });
 
+  test('fins.csv holds a row for every sample and fin, and the summary the mean on each; without fins there is none', async () => {
+    expect(readdirSync(scratch)).not.toContain('fins.csv');
+    const made = makeRecording({ samples: 2 });
+    const fins: Recording['case']['fins'] = [1e-3, 2e-3].map((at) => [
+      [at, at],
+      [at + 5e-4, at],
+      [at, at + 5e-4],
+    ]);
+    const finned: Recording = {
+      ...made,
+      case: { ...made.case, fins },
+      fins: { along_N_m: Float64Array.of(1, 2, 3, 4), across_N_m: Float64Array.of(-1, -2, -3, -4) },
+    };
+    const path = join(scratch, 'finned');
+    const folder = await RunFolder.claim(path);
+    await folder.begin(beginning);
+    await folder.writeResults(finned, measure(finned));
+    await folder.release();
+    expect(csvParse(readFileSync(join(path, 'fins.csv'), 'utf8')).map((row) => Object.values(row))).toEqual([
+      ['1.01', '1', '1', '-1'],
+      ['1.01', '2', '2', '-2'],
+      ['1.02', '1', '3', '-3'],
+      ['1.02', '2', '4', '-4'],
+    ]);
+    expect(JSON.parse(readFileSync(join(path, 'summary.json'), 'utf8')).fins).toEqual([
+      { fin: 1, force_along_N_m: 2, force_across_N_m: -2 },
+      { fin: 2, force_along_N_m: 3, force_across_N_m: -3 },
+    ]);
+  });
+
   test('backtransport.csv and deposit.csv hold a block for each wall and one for both', () => {
     const { backTransport, deposit } = measure(recording);
     const sizes = table('backtransport.csv');

@@ -105,6 +105,7 @@ export function makeRecording(making: Making = {}): Recording {
     membrane,
     times_s: Float64Array.from({ length: samples }, (_, s) => 1 + (s + 1) * every_s),
     walls: { left: rows('left'), right: rows('right') },
+    fins: { along_N_m: new Float64Array(), across_N_m: new Float64Array() },
     history: {
       time_s: [0, 0.5],
       holdup: [0, 0.05],

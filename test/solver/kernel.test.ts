@@ -75,7 +75,8 @@ function difference(a: Simulation, b: Simulation, samplesA: Samples, samplesB: S
     for (const axis of ['x', 'y'] as const) {
       const [of, other] = [samplesA.force[axis], samplesB.force[axis]];
       expect(other.shape).toEqual(of.shape);
-      for (let body = 0; body < of.shape[1]; body++) note(of.get(n, body), other.get(n, body), `force ${axis} on body ${body} of ${nx} x ${ny}`);
+      for (let body = 0; body < of.shape[1]; body++)
+        note(of.get(n, body), other.get(n, body), `force ${axis} on body ${body} of ${nx} x ${ny}`);
     }
     note(samplesA.upflow[n], samplesB.upflow[n], `upflow sample of ${nx} x ${ny}`);
     for (const name of ['gasArea', 'skimmed'] as const) {

@@ -63,8 +63,19 @@ function story(simulation: Simulation): unknown {
   const seen: unknown[] = [simulation.advance(23, 5)];
   if (simulation.setup.gas !== undefined) seen.push(simulation.placeGas({ x: 16, y: 12, radius: 6 }));
   seen.push(simulation.advance(1, 5), simulation.advance(40, 5));
-  const { steps, shear, phi, upflow, gasArea, skimmed } = simulation.takeSamples();
-  return [seen, steps, shear.left.data, phi.right.data, upflow, gasArea, skimmed, simulation.totals(), fieldValues(simulation)];
+  const { steps, shear, phi, force, upflow, gasArea, skimmed } = simulation.takeSamples();
+  return [
+    seen,
+    steps,
+    shear.left.data,
+    phi.right.data,
+    force.x.data,
+    upflow,
+    gasArea,
+    skimmed,
+    simulation.totals(),
+    fieldValues(simulation),
+  ];
 }
 
 describe('any number of threads gives the same bits', () => {
