@@ -9,9 +9,9 @@
  *   populations   -rho (e - e') f
  *   pressure      -(1 - rho/rhoLiquid) 3 w e (P_i + P_j): what the gradient of P adds to the populations (forces.ts), over its own links
  *   friction      over the faces of cells, -eta S n, n from i to j: all the viscous flux that forces.ts sends through the face
- *   interface     over the faces, n (kappa/2 ((dphi/dn)^2 - (dphi/dt)^2) - 12 sigma/W phi^2 (1 - phi)^2) + t kappa dphi/dn dphi/dt: the
- *                 pull of surface tension where an interface meets the body, mu grad phi being the divergence of this stress; beta
- *                 itself holds a correction for gradients on the grid (box.ts) that the second term does not need
+ *   interface     over the faces, n kappa [((dphi/dn)^2 - (dphi/dt)^2)/2 - Y + ln(1 + bend Y)/bend] + t kappa dphi/dn dphi/dt,
+ *                 Y = phi (1 - phi): the pull of surface tension where an interface meets the body, mu grad phi being the
+ *                 divergence of this stress
  *
  * In liquid alone nothing but rounding is left over between drive, walls and bodies. p holds neither the hydrostatic pressure of the liquid
  * nor that of a uniform force, so neither has the force.
@@ -111,7 +111,9 @@ function ofFlow(box: Box, f: readonly Float64Array[], fields: FlowFields, { x, y
   const thinned = box.setup.liquid.rheology && (alongX ? fields.etaX : fields.etaY)[Math.min(i, j)];
   const eta = viscosity(box, face, thinned);
   const [across, along] = [phi[j] - phi[i], slope(phi)];
-  const pull = 0.5 * box.kappa * (across * across - along * along) - ((12 * box.sigma) / box.W) * (face * (1 - face)) ** 2;
+  const mixed = face * (1 - face);
+  const bulk = mixed - Math.log(1 + box.profile.bend * mixed) / box.profile.bend;
+  const pull = box.kappa * (0.5 * (across * across - along * along) - bulk);
   const ofNormal = -2 * eta * (normal[j] - normal[i]) + outward * pull;
   const ofTangent = -eta * (tangent[j] - tangent[i] + outward * slope(normal)) + box.kappa * across * along;
   return alongX ? [forceX + ofNormal, forceY + ofTangent] : [forceX + ofTangent, forceY + ofNormal];

@@ -66,9 +66,9 @@ function ofFlow<T>(touch: usize): void {
   const across = value<T>(z + j) - value<T>(z + i);
   const along = slope<T>(z, i, j, side);
   const mixed = face * (1 - face);
-  const width = entry(H.WIDTH);
-  const bulk = entry(H.BETA) * (1 - 16 / (15 * width * width));
-  const pull = 0.5 * entry(H.KAPPA) * (across * across - along * along) - bulk * mixed * mixed;
+  const bend = entry(H.BEND);
+  const bulk = mixed - Math.log(1 + bend * mixed) / bend;
+  const pull = entry(H.KAPPA) * (0.5 * (across * across - along * along) - bulk);
   const ofNormal = -2 * eta * (value<T>(normal + j) - value<T>(normal + i)) + outward * pull;
   const slip = value<T>(tangent + j) - value<T>(tangent + i) + outward * slope<T>(normal, i, j, side);
   const ofTangent = entry(H.KAPPA) * across * along - eta * slip;
