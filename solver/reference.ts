@@ -10,7 +10,7 @@
  * after collision, f as it is (it sums to about 0), g less w: both are deviations, which f32 keeps to more digits.
  */
 import ndarray from 'ndarray';
-import { bodyForces } from './bodies.ts';
+import { bodyForces } from './bodyforce.ts';
 import { type Box, driveForce, resolve } from './box.ts';
 import { type Cell, collideInterface, collideLiquid, collideVelocity, firstMoment, newCell } from './collide.ts';
 import { Q } from './constants.ts';

@@ -21,7 +21,7 @@ export interface Samples {
   shear: { left: Rows; right: Rows };
   /** phi at the wall (extrapolated) */
   phi: { left: Rows; right: Rows };
-  /** force of the fluid on each body, along and across the channel; see bodies.ts */
+  /** force of the fluid on each body, along and across the channel; see bodyforce.ts */
   force: { x: Forces; y: Forces };
   /** mean of ux over all cells: the volume flux of the section over the gap; shape (samples) */
   upflow: Float64Array;

@@ -1,4 +1,4 @@
-// The force of the fluid on each body in a step, as solver/bodies.ts says, on one thread and in the order of the list: between the ghosts
+// The force of the fluid on each body in a step, as solver/bodyforce.ts says, on one thread and in the order of the list: between the ghosts
 // and the collision, while the populations are those that the step pulls. Left in AT_FORCES until the sample is written.
 // Reads f, z, m, P and their ghosts. Only for steps that are sampled.
 import * as H from '../header';

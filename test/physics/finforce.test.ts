@@ -9,9 +9,9 @@ const FORCE = { x: 1e-5, y: 3e-6 };
 const NO_GAS: Partial<Setup> = { gas: { density: 1 / 832, viscosity: 0.15 / 832 }, surfaceTension: 0.01 };
 
 /** Share of the drive along x, and of that across, that walls and fins do not take in steady flow. */
-async function rest(extra: Partial<Setup>): Promise<{ along: number; across: number }> {
+async function rest(extra: Partial<Setup>, steps = 10_000): Promise<{ along: number; across: number }> {
   const { simulation, cells } = await finnedChannel({ force: FORCE, ...extra });
-  advance(simulation, 9999);
+  advance(simulation, steps - 1);
   advance(simulation, 1, 1);
   const { walls, along, across } = forcesOn(simulation);
   const taken = simulation.setup.sides.left === 'wall' ? walls + along[0] + along[1] : along[0] + along[1];
@@ -42,13 +42,15 @@ describe('walls and fins take what drives a steady flow', () => {
     expect(Math.abs((await rest(extra)).along)).toBeLessThan(limit);
   });
 
-  it('to rounding where there are no walls beside the fins, in both directions', async () => {
-    for (const extra of [{}, NO_GAS]) {
-      const { along, across } = await rest({ sides: PERIODIC, ...extra });
-      // what the flow still gains; seen 1.7e-7 and 9.7e-6
-      expect(Math.abs(along)).toBeLessThan(2e-6);
-      expect(Math.abs(across)).toBeLessThan(5e-5);
-    }
+  it.each([
+    // seen 4e-14 and 6e-14
+    ['to rounding in one phase without walls', {}, 4e-13, 6e-13],
+    // seen 2.4e-6 and 1.7e-5 (every cell computed: 5e-5 and 7e-4): phi strays from 1 where the liquid is compressed, and has a surface tension there
+    ['in liquid beside no gas without walls', NO_GAS, 2e-5, 1e-4],
+  ] as [string, Partial<Setup>, number, number][])('%s, along and across', async (_, extra, mostAlong, mostAcross) => {
+    const { along, across } = await rest({ sides: PERIODIC, ...extra }, 30_000);
+    expect(Math.abs(along)).toBeLessThan(mostAlong);
+    expect(Math.abs(across)).toBeLessThan(mostAcross);
   });
 });
 
