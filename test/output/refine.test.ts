@@ -142,7 +142,7 @@ describe('the answers of a run', () => {
     await expect(readRefined(folder)).rejects.toThrow(/summary\.json: this is no JSON/);
     writeFileSync(join(folder, 'summary.json'), '{"answers": {"swept_left": {"value": "much"}}}');
     await expect(readRefined(folder)).rejects.toThrow(/answers\.swept_left\.value is not as this version writes it/);
-    writeFileSync(join(folder, 'summary.json'), '{"answers": {}}');
+    writeFileSync(join(folder, 'summary.json'), '{"answers": {}, "recorded": {"samples": 800, "every_s": 0.002}}');
     await expect(readRefined(folder)).rejects.toThrow(/the run has no answer swept_left/);
   });
 });
