@@ -98,7 +98,8 @@ describe('swathe check', () => {
     expect(read.warnings.length).toBeGreaterThan(0);
   });
 
-  it('foretells the time a run takes within a factor of three', async () => {
+  // other work on the machine may come or go between the two
+  it('foretells the time a run takes within a factor of three', { retry: 2 }, async () => {
     const forecast = JSON.parse((await bench.swathe('check', 'tiny.yaml', '--json', '--set', 'record.span=1 s')).out).forecast;
     const start = performance.now();
     const { exit } = await bench.swathe('run', 'tiny.yaml', '--no-frames', '--quiet', '--set', 'record.span=1 s');

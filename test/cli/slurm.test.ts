@@ -59,16 +59,16 @@ describe.skipIf(reason !== undefined)(`a sweep on Slurm${reason === undefined ? 
     expect(submitted.out).toMatch(/: 12 of 12 cases submitted \(jobs \d+, \d+, \d+; the last one gathers the table\)/);
     const [first] = /jobs (\d+)/.exec(submitted.out)?.slice(1) ?? [];
 
+    // at once, for the checkpoint is gone when the case ends
+    await until(() => existsSync(bench.path('cluster/plan/points/0001/checkpoint-a.bin')), 120_000);
+    expect(queue().match(/RUNNING/g)?.length).toBeLessThanOrEqual(2);
+    cluster.command('scontrol', 'requeue', `${first}_1`);
+    cluster.command('scancel', `${first}_5`);
     const twice = await bench.swathe('sweep', 'plan.yaml', '--out', 'cluster/plan', ...ON_SLURM);
     expect(twice.exit).toBe(4);
     expect(twice.error).toMatch(
       /the sweep is on the cluster already \(jobs .*\); see how it stands with --status, or end it with --cancel/,
     );
-
-    await until(() => existsSync(bench.path('cluster/plan/points/0001/checkpoint-a.bin')), 120_000);
-    expect(queue().match(/RUNNING/g)?.length).toBeLessThanOrEqual(2);
-    cluster.command('scontrol', 'requeue', `${first}_1`);
-    cluster.command('scancel', `${first}_5`);
     const { out } = await bench.swathe('sweep', 'cluster/plan', '--status');
     expect(out).toMatch(/^on Slurm: jobs \d+, \d+, \d+$/m);
     await until(() => {
