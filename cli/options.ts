@@ -15,7 +15,7 @@ export const OPTIONS = {
     again: { type: 'boolean', default: false, describe: 'start anew in a folder that holds a run; its results are lost' },
     frames: { type: 'string', requiresArg: true, default: '25', describe: 'about so many pictures, from the start to the end of the run' },
     'no-frames': { type: 'boolean', default: false, describe: 'no pictures of the channel' },
-    threads: { type: 'string', requiresArg: true, describe: 'threads to compute with; one without it' },
+    threads: { type: 'string', requiresArg: true, describe: 'threads to compute with; as many as there are cores without it' },
     checkpoint: { type: 'string', requiresArg: true, default: '10', describe: 'seconds of wall time between checkpoints' },
     quiet: { type: 'boolean', default: false, describe: 'say nothing but errors' },
   },

@@ -1,3 +1,4 @@
+import { availableParallelism } from 'node:os';
 import { join } from 'node:path';
 import { type Case, type Checkpoint, type Derived, type Hooks, layOut, type Recording, simulate } from '../cases/index.ts';
 import { allSure, type Beginning, drawFrame, measure, RunFolder, surenessOf } from '../output/index.ts';
@@ -20,7 +21,7 @@ export interface RunOptions {
   again: boolean;
   /** number of pictures, from start to end; 0 for none */
   frames: number;
-  /** threads to compute with; one without it: a resumed run on several was seen to hang */
+  /** threads to compute with; as many as there are cores without it */
   threads?: number | undefined;
   /** wall time between checkpoints */
   checkpoint_s: number;
@@ -98,7 +99,7 @@ async function compute(
         sure = sureLine(found);
         return allSure(found);
       },
-      threads: options.threads ?? 1,
+      threads: options.threads ?? availableParallelism(),
       checkpointEvery_s: options.checkpoint_s,
       onCheckpoint: (checkpoint) => folder.writeCheckpoint(checkpoint),
       signal: interrupt.signal,

@@ -1,13 +1,13 @@
 import ndarray from 'ndarray';
 import { type Box, resolve } from './box.ts';
-import { BLOCK, Q } from './constants.ts';
+import { AT_TEAM, BLOCK, Q, TEAM_BYTES } from './constants.ts';
 import * as H from './header.ts';
 import { layMemory, type MemoryMap, numbers } from './memory.ts';
 import { Recorder } from './recorder.ts';
 import type { Setup } from './setup.ts';
 import type { Field, Samples, Simulation, Status } from './simulation.ts';
 import { equilibriumState, placeCircle } from './state.ts';
-import { endTeam, startTeam, teamWords } from './team.ts';
+import { endTeam, startTeam } from './team.ts';
 
 interface Kernel {
   version(): number;
@@ -177,7 +177,7 @@ export class Compiled implements Simulation {
   /** The whole memory: header, populations, fields. */
   save(): Uint8Array {
     const image = new Uint8Array(this.map.memory.buffer).slice();
-    teamWords(image).fill(0);
+    image.fill(0, AT_TEAM, AT_TEAM + TEAM_BYTES);
     // any number of threads goes on alike
     new Float64Array(image.buffer)[H.THREADS] = 0;
     return image;
@@ -188,10 +188,10 @@ export class Compiled implements Simulation {
     if (image.length !== memory.length) {
       throw new RangeError(`restore: image holds ${image.length} bytes; this box needs ${memory.length}`);
     }
-    const words = teamWords(memory).slice();
     const threads = this.map.header[H.THREADS];
-    memory.set(image);
-    teamWords(memory).set(words);
+    // a thread on its way to sleep counts itself in at any moment: the words of the team are never written, not even for a while
+    memory.set(image.subarray(0, AT_TEAM));
+    memory.set(image.subarray(AT_TEAM + TEAM_BYTES), AT_TEAM + TEAM_BYTES);
     this.map.header[H.THREADS] = threads;
   }
 

@@ -1,5 +1,5 @@
 /** The threads beside the first: started once, asleep between calls, ended with the simulation. */
-import { AT_CALLS, AT_QUIT, AT_TEAM, TEAM_BYTES } from './constants.ts';
+import { AT_CALLS, AT_QUIT } from './constants.ts';
 import * as H from './header.ts';
 import type { MemoryMap } from './memory.ts';
 import { sharesMemory } from './module.ts';
@@ -51,6 +51,3 @@ export function endTeam(memory: WebAssembly.Memory): void {
   Atomics.add(words, AT_CALLS / 4, 1);
   Atomics.notify(words, AT_CALLS / 4);
 }
-
-/** The words by which threads agree: no part of a state. */
-export const teamWords = (bytes: Uint8Array): Uint8Array => bytes.subarray(AT_TEAM, AT_TEAM + TEAM_BYTES);

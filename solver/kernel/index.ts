@@ -57,7 +57,11 @@ function together<T>(): i32 {
   while (done < steps) {
     for (let y = firstRow; y < endRow; y++) fillReturns<T>(y);
     meet();
-    if (entry(H.STATUS) != 0) break;
+    if (entry(H.STATUS) != 0) {
+      // the host may clear the status once the first thread is back: not before all have read it
+      meet();
+      break;
+    }
     done++;
     step++;
     const refresh = refreshing(step);
