@@ -1,6 +1,7 @@
 // The flow collision of one row of a box that holds liquid alone: flow.ts with phi = 1 and no gradients.
 // Reads f of rows y - 1, y, y + 1 and mask; writes f over row y - 2, ux and uy, and on demand p and tau.
 import * as H from '../header';
+import { send } from './populations';
 import { address, entry, fieldRow, nx, row, stride } from './rows';
 import { lookUp } from './table';
 import { tremble } from './tremble';
@@ -117,22 +118,7 @@ export function bulkRow<T, Thins>(y: i32, flags: i32): void {
 
     const outF = out + i;
     put(outF, sub<T>(q22, add<T>(q20, q02)));
-    const evenX = mul<T>(half, sub<T>(q20, q22));
-    const oddX = mul<T>(half, sub<T>(q10, q12));
-    put(outF + stride, add<T>(evenX, oddX));
-    put(outF + 3 * stride, sub<T>(evenX, oddX));
-    const evenY = mul<T>(half, sub<T>(q02, q22));
-    const oddY = mul<T>(half, sub<T>(q01, q21));
-    put(outF + 2 * stride, add<T>(evenY, oddY));
-    put(outF + 4 * stride, sub<T>(evenY, oddY));
-    const even57 = mul<T>(quarter, add<T>(q22, q11));
-    const odd57 = mul<T>(quarter, add<T>(q12, q21));
-    put(outF + 5 * stride, add<T>(even57, odd57));
-    put(outF + 7 * stride, sub<T>(even57, odd57));
-    const even68 = mul<T>(quarter, sub<T>(q22, q11));
-    const odd68 = mul<T>(quarter, sub<T>(q12, q21));
-    put(outF + 6 * stride, sub<T>(even68, odd68));
-    put(outF + 8 * stride, add<T>(even68, odd68));
+    send<T>(outF, q10, q01, q20, q02, q11, q21, q12, q22);
     put(uxOut + i, ux);
     put(uyOut + i, uy);
     if (flags & FIELDS) put(pOut + i, p);

@@ -3,6 +3,7 @@
 // phi, ux and uy. Tiles of liquid alone: liquid.ts.
 import * as H from '../header';
 import { FIELDS } from './bulk';
+import { send } from './populations';
 import { address, entry, fieldRow, row, stride, zRow } from './rows';
 import { tremble } from './tremble';
 import { add, atLeast, atMost, div, get, mad, max, mul, nmad, noneBelow, PURE, put, root, share, splat, sub, total } from './vector';
@@ -276,22 +277,7 @@ export function collide<T, Thins>(y: i32, flags: i32, start: usize, end: usize, 
     const q22 = add<T>(mad<T>(third, add<T>(specific, u2), mul<T>(xx, yy)), d22);
     const f0 = o0 + i;
     put(f0, add<T>(sub<T>(add<T>(s, q22), add<T>(q20, q02)), coupling));
-    const evenX = mul<T>(half, sub<T>(q20, q22));
-    const oddX = mul<T>(half, sub<T>(ux, q12));
-    put(f0 + stride, add<T>(evenX, oddX));
-    put(f0 + 3 * stride, sub<T>(evenX, oddX));
-    const evenY = mul<T>(half, sub<T>(q02, q22));
-    const oddY = mul<T>(half, sub<T>(uy, q21));
-    put(f0 + 2 * stride, add<T>(evenY, oddY));
-    put(f0 + 4 * stride, sub<T>(evenY, oddY));
-    const even57 = mul<T>(quarter, add<T>(q22, q11));
-    const odd57 = mul<T>(quarter, add<T>(q12, q21));
-    put(f0 + 5 * stride, add<T>(even57, odd57));
-    put(f0 + 7 * stride, sub<T>(even57, odd57));
-    const even68 = mul<T>(quarter, sub<T>(q22, q11));
-    const odd68 = mul<T>(quarter, sub<T>(q12, q21));
-    put(f0 + 6 * stride, sub<T>(even68, odd68));
-    put(f0 + 8 * stride, add<T>(even68, odd68));
+    send<T>(f0, ux, uy, q20, q02, q11, q21, q12, q22);
     if (flags & FIELDS) {
       put(phiOut + i, phi);
       put(uxAt + i, midX);
@@ -318,22 +304,7 @@ export function collide<T, Thins>(y: i32, flags: i32, start: usize, end: usize, 
     const h22 = mul<T>(third, add<T>(zThird, add<T>(vxx, vyy)));
     const g0 = r0 + i;
     put(g0, sub<T>(add<T>(zAfter, h22), add<T>(h20, h02)));
-    const gEvenX = mul<T>(half, sub<T>(h20, h22));
-    const gOddX = mul<T>(half, sub<T>(h10, h12));
-    put(g0 + stride, add<T>(gEvenX, gOddX));
-    put(g0 + 3 * stride, sub<T>(gEvenX, gOddX));
-    const gEvenY = mul<T>(half, sub<T>(h02, h22));
-    const gOddY = mul<T>(half, sub<T>(h01, h21));
-    put(g0 + 2 * stride, add<T>(gEvenY, gOddY));
-    put(g0 + 4 * stride, sub<T>(gEvenY, gOddY));
-    const gEven57 = mul<T>(quarter, add<T>(h22, h11));
-    const gOdd57 = mul<T>(quarter, add<T>(h12, h21));
-    put(g0 + 5 * stride, add<T>(gEven57, gOdd57));
-    put(g0 + 7 * stride, sub<T>(gEven57, gOdd57));
-    const gEven68 = mul<T>(quarter, sub<T>(h22, h11));
-    const gOdd68 = mul<T>(quarter, sub<T>(h12, h21));
-    put(g0 + 6 * stride, sub<T>(gEven68, gOdd68));
-    put(g0 + 8 * stride, add<T>(gEven68, gOdd68));
+    send<T>(g0, h10, h01, h20, h02, h11, h21, h12, h22);
     i += 16;
   } while (i < end);
   flux = total<T>(fluxLanes);

@@ -3,6 +3,7 @@
 // Reads f, mask, open, P, z; writes f in place, m and its moments, P, z; on demand (FIELDS) the fields, for the edge (INTERFACE) g and p.
 import * as H from '../header';
 import { FIELDS } from './bulk';
+import { send } from './populations';
 import { address, blockSums, entry, fieldRow, nx, row, stride, zRow } from './rows';
 import { tremble } from './tremble';
 import { add, get, mad, max, mul, nmad, put, splat, sub, total } from './vector';
@@ -159,22 +160,7 @@ export function collideLiquid<T, Thins>(y: i32, flags: i32, start: usize, end: u
     const q22 = add<T>(mad<T>(third, add<T>(specific, u2), mul<T>(xx, yy)), d22);
     const f0 = out + i;
     put(f0, sub<T>(mad<T>(toSum, p, q22), add<T>(q20, q02)));
-    const evenX = mul<T>(half, sub<T>(q20, q22));
-    const oddX = mul<T>(half, sub<T>(ux, q12));
-    put(f0 + stride, add<T>(evenX, oddX));
-    put(f0 + 3 * stride, sub<T>(evenX, oddX));
-    const evenY = mul<T>(half, sub<T>(q02, q22));
-    const oddY = mul<T>(half, sub<T>(uy, q21));
-    put(f0 + 2 * stride, add<T>(evenY, oddY));
-    put(f0 + 4 * stride, sub<T>(evenY, oddY));
-    const even57 = mul<T>(quarter, add<T>(q22, q11));
-    const odd57 = mul<T>(quarter, add<T>(q12, q21));
-    put(f0 + 5 * stride, add<T>(even57, odd57));
-    put(f0 + 7 * stride, sub<T>(even57, odd57));
-    const even68 = mul<T>(quarter, sub<T>(q22, q11));
-    const odd68 = mul<T>(quarter, sub<T>(q12, q21));
-    put(f0 + 6 * stride, sub<T>(even68, odd68));
-    put(f0 + 8 * stride, add<T>(even68, odd68));
+    send<T>(f0, ux, uy, q20, q02, q11, q21, q12, q22);
     i += 16;
   } while (i < end);
   fluxLiquid = total<T>(flux);
@@ -197,7 +183,6 @@ function leave<T>(y: i32, flags: i32, start: usize, end: usize): void {
   const mask = fieldRow(H.AT_MASK, y);
   const sound = address(H.AT_SECTIONS) + 2 * stride;
   const half = splat<T>(0.5);
-  const quarter = splat<T>(0.25);
   const one = splat<T>(1);
   const third = splat<T>(1.0 / 3.0);
   let i = start;
@@ -233,22 +218,7 @@ function leave<T>(y: i32, flags: i32, start: usize, end: usize): void {
       const h22 = mul<T>(third, add<T>(zThird, add<T>(vxx, vyy)));
       const g0 = g + i;
       put(g0, sub<T>(add<T>(z, h22), add<T>(h20, h02)));
-      const evenX = mul<T>(half, sub<T>(h20, h22));
-      const oddX = mul<T>(half, sub<T>(vx, h12));
-      put(g0 + stride, add<T>(evenX, oddX));
-      put(g0 + 3 * stride, sub<T>(evenX, oddX));
-      const evenY = mul<T>(half, sub<T>(h02, h22));
-      const oddY = mul<T>(half, sub<T>(vy, h21));
-      put(g0 + 2 * stride, add<T>(evenY, oddY));
-      put(g0 + 4 * stride, sub<T>(evenY, oddY));
-      const even57 = mul<T>(quarter, add<T>(h22, h11));
-      const odd57 = mul<T>(quarter, add<T>(h12, h21));
-      put(g0 + 5 * stride, add<T>(even57, odd57));
-      put(g0 + 7 * stride, sub<T>(even57, odd57));
-      const even68 = mul<T>(quarter, sub<T>(h22, h11));
-      const odd68 = mul<T>(quarter, sub<T>(h12, h21));
-      put(g0 + 6 * stride, sub<T>(even68, odd68));
-      put(g0 + 8 * stride, add<T>(even68, odd68));
+      send<T>(g0, vx, vy, h20, h02, h11, h21, h12, h22);
     }
     i += 16;
   } while (i < end);
