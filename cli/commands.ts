@@ -10,7 +10,7 @@ const NAME = { type: 'string', describe: 'a ready-made case' } as const;
 const RUNS = {
   type: 'string',
   array: true,
-  describe: 'run folders, case files (YAML) or ready-made cases, two geometries at least',
+  describe: 'run folders, case files (YAML) or ready-made cases, two at least',
 } as const;
 
 /** Pictures a run may ask for: more fill a disk and help nobody. */

@@ -5,6 +5,7 @@ import { layOut, readCase } from '../cases/index.ts';
 import {
   ANSWERS,
   comparison,
+  each,
   geometryKey,
   grouped,
   groupName,
@@ -51,7 +52,7 @@ interface Part {
 }
 
 /**
- * Ranks geometries by one measure and says which differences are more than chance. Runs that are not there are computed first, each in a
+ * Ranks geometries by one measure and says which differences are more than chance; of one geometry alone, its runs. Runs that are not there are computed first, each in a
  * process of its own. Returns the exit code: that of a run that failed or of an interrupt, else 0 whatever the verdicts.
  */
 export async function compare(options: CompareOptions): Promise<number> {
@@ -60,13 +61,14 @@ export async function compare(options: CompareOptions): Promise<number> {
     throw new UsageError('by', `--by ${by}: no measure has that name${suggestion(by, ANSWERS)}. There are ${ANSWERS.join(', ')}`);
   const parts = await partsOf(options);
   const names = namesOf(parts);
+  const apart = oneGeometry(parts);
   const out =
     options.out ?? join('runs', `compare-${names.slice(0, 3).join('-')}${names.length > 3 ? `-and-${names.length - 3}-more` : ''}`);
   await openComparison(out);
   const exit = await compute(parts, options);
   if (exit !== 0) return exit;
   const runs = await Promise.all(parts.map(async ({ name, folder }) => ({ name, run: await readRun(folder) })));
-  const found = comparison(grouped(runs), by);
+  const found = comparison(apart ? each(runs) : grouped(runs), by);
   await writeComparison(out, found);
   if (!quiet) process.stdout.write(`${comparePage(found, out)}\n`);
   return 0;
@@ -84,12 +86,15 @@ async function partsOf({ words, sets, seeds }: CompareOptions): Promise<Part[]> 
 
 /** @throws UsageError fewer than two */
 function namesOf(parts: readonly Part[]): string[] {
+  if (parts.length < 2)
+    throw new UsageError('', `compare needs two runs at least, and there is one, ${parts[0].name}; name another case or folder, or add --seeds`);
   const names = new Map(parts.map(({ key, name }) => [key, name]));
-  if (names.size > 1) return [...names.values()].map((name) => name.replaceAll(/[^\w.-]+/g, '_'));
-  throw new UsageError(
-    '',
-    `compare needs two geometries at least, and there is one, ${parts[0].name}: runs that differ in nothing but the seed count as one`,
-  );
+  return [...names.values()].map((name) => name.replaceAll(/[^\w.-]+/g, '_'));
+}
+
+/** Then its runs are held against each other. */
+function oneGeometry(parts: readonly Part[]): boolean {
+  return new Set(parts.map(({ key }) => key)).size === 1;
 }
 
 function isFolder(word: string): boolean {

@@ -1,7 +1,7 @@
 export { type Comparison, comparison, type Pair } from './compare/comparison.ts';
 export { openComparison, writeComparison } from './compare/folder.ts';
 export type { Difference } from './compare/pooled.ts';
-export { geometryKey, grouped, groupName, holdsFinished, readRun, runCase } from './compare/run.ts';
+export { each, geometryKey, grouped, groupName, holdsFinished, readRun, runCase } from './compare/run.ts';
 export { RunFolder } from './folder/folder.ts';
 export type { Beginning, RunRecord } from './folder/record.ts';
 export { airMeasures } from './measures/air.ts';

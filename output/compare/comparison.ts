@@ -1,7 +1,7 @@
 import { OutputError } from '../../solver/index.ts';
 import { LOWER_IS_BETTER, rangeOf } from '../measures/answers.ts';
 import { type Difference, difference, pooled, type RunValue, type Sure } from './pooled.ts';
-import type { Group } from './run.ts';
+import { type Group, geometryKey } from './run.ts';
 import { type Verdict, verdictOn } from './verdict.ts';
 
 /** One geometry with all its measures. */
@@ -110,6 +110,12 @@ const NORMAL_95 = 1.96;
 function notes(groups: readonly Group[], ranking: readonly Ranked[], by: string): string[] {
   const found: string[] = [];
   const differ = (what: (group: Group) => unknown): boolean => new Set(groups.map((group) => JSON.stringify(what(group)))).size > 1;
+  if (!differ(({ runs }) => geometryKey(runs[0].panel))) {
+    found.push(
+      'One geometry: its runs differ in the seed alone, so what tells them apart is chance. One in twenty pairs may seem surely different; ' +
+        'more of them mean that the runs are too short or not settled.',
+    );
+  }
   if (differ(({ runs }) => runs[0].panel.swept)) {
     found.push('Not on equal terms: swept means another threshold or another time in some of the cases (swept.above, swept.within).');
   }

@@ -104,6 +104,15 @@ export function grouped(named: readonly { name: string; run: FinishedRun }[]): G
   return [...groups.values()];
 }
 
+/**
+ * Runs of one geometry, each for itself: what differs between them is chance, so a surely different pair tells of recordings too short.
+ * @throws OutputError the same run twice
+ */
+export function each(named: readonly { name: string; run: FinishedRun }[]): Group[] {
+  const [{ runs }] = grouped(named);
+  return runs.map((run) => ({ name: `${named[0].name}, seed ${run.panel.gas.seed}`, runs: [run] }));
+}
+
 /** The case without its seed. */
 export function geometryKey(panel: Case): string {
   return JSON.stringify({ ...panel, gas: { ...panel.gas, seed: 0 } });

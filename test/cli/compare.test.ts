@@ -50,6 +50,17 @@ describe('a comparison from end to end', () => {
     expect(csvParse(bench.read('mixed/ranking.csv')).map(({ measure }) => measure)).toEqual(['mean_shear_right_Pa', 'mean_shear_right_Pa']);
   });
 
+  it('holds the runs of one geometry against each other, which differ by chance alone', async () => {
+    const same = await bench.swathe('compare', 'tiny.yaml', '--seeds', '3', '--by', 'mean_shear_together_Pa', '--out', 'same');
+    expect(same.error).toBe('');
+    const names = ['tiny, seed 1', 'tiny, seed 2', 'tiny, seed 3'];
+    const ranking = csvParse(bench.read('same/ranking.csv'));
+    expect(ranking.map(({ geometry }) => geometry).sort()).toEqual(names);
+    expect(ranking.map(({ runs }) => runs)).toEqual(['1', '1', '1']);
+    expect(csvParse(bench.read('same/differences.csv'))).toHaveLength(3);
+    expect(same.out).toContain('note: One geometry: its runs differ in the seed alone');
+  });
+
   it('goes on with what was interrupted', async () => {
     const words = ['compare', 'tiny.yaml', 'leaning.yaml', '--set', 'record.span=120 ms', '--seeds', '1', '--out', 'cut'];
     const inOther = new Bench();
@@ -83,8 +94,8 @@ describe('a comparison from end to end', () => {
 describe('a comparison that cannot be made', () => {
   const wrong: [string[], string][] = [
     [['compare'], 'compare needs runs or cases'],
-    [['compare', 'tiny.yaml'], 'compare needs two geometries at least, and there is one, tiny'],
-    [['compare', 'tiny.yaml', 'tiny.yaml', '--seeds', '2'], 'runs that differ in nothing but the seed count as one'],
+    [['compare', 'tiny.yaml'], 'compare needs two runs at least, and there is one, tiny'],
+    [['compare', 'tiny.yaml', 'tiny.yaml'], 'compare needs two runs at least'],
     [['compare', 'tiny.yaml', 'leaning.yaml', '--by', 'swept_togther'], 'did you mean swept_together?'],
     [['compare', 'tiny.yaml', 'tilted-pannel'], 'Did you mean tilted-panel?'],
     [['compare', 'tiny.yaml', 'leaning.yaml', '--seeds', 'four'], '--seeds four: not a whole number from 1 to 100'],
