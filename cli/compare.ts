@@ -87,7 +87,10 @@ async function partsOf({ words, sets, seeds }: CompareOptions): Promise<Part[]> 
 /** @throws UsageError fewer than two */
 function namesOf(parts: readonly Part[]): string[] {
   if (parts.length < 2)
-    throw new UsageError('', `compare needs two runs at least, and there is one, ${parts[0].name}; name another case or folder, or add --seeds`);
+    throw new UsageError(
+      '',
+      `compare needs two runs at least, and there is one, ${parts[0].name}; name another case or folder, or add --seeds`,
+    );
   const names = new Map(parts.map(({ key, name }) => [key, name]));
   return [...names.values()].map((name) => name.replaceAll(/[^\w.-]+/g, '_'));
 }
