@@ -8,6 +8,7 @@ import type { Case, Outline } from './case.ts';
 import type { PlacedFinding } from './faults.ts';
 import type { FinEntry } from './finkeys.ts';
 import { cellsWithin, type PlacedFin, solidCells, wayUp } from './fins.ts';
+import { type Memory, remembered } from './memory.ts';
 import { band, commonPoint, crossesItself, extent, leastPiece, pieceLength, signedArea, turnAt } from './polygon.ts';
 import type { CaseEntries } from './schema.ts';
 import type { Path } from './text.ts';
@@ -22,7 +23,16 @@ const THINNEST = 2;
 /** Largest turn of a middle line at one corner: beyond it a mitre is longer than the fin is thick. */
 const SHARPEST_rad = Math.PI / 2;
 
+/** What was found of fins before, by their places and the grid's. */
+const known: Memory<PlacedFinding[]> = new Map();
+
 export function finFindings(entries: CaseEntries, panel: Case, fins: readonly PlacedFin[]): PlacedFinding[] {
+  if (entries.fins.length === 0) return [];
+  const key = JSON.stringify([entries.fins, panel.channel.gap_m, gridOf(panel), bandsOf(panel)]);
+  return remembered(known, key, () => findingsOf(entries, panel, fins));
+}
+
+function findingsOf(entries: CaseEntries, panel: Case, fins: readonly PlacedFin[]): PlacedFinding[] {
   const written = entries.fins.flatMap((_, entry) => entryFindings(entries, panel, entry));
   if (written.length > 0) return written;
   const alone = fins.flatMap((fin, i) => shapeFindings(panel, fin, i, fins));
@@ -30,7 +40,6 @@ export function finFindings(entries: CaseEntries, panel: Case, fins: readonly Pl
   const crossed = crossings(fins);
   if (crossed.length > 0) return firstPerEntry(crossed);
   const { nx, ny, dx_m } = gridOf(panel);
-  if (fins.length === 0) return [];
   const highest = wayUp(solidCells(panel.fins, nx, ny, dx_m), nx, ny);
   if (highest === nx - 1) return [];
   const problem = `leave no way three cells wide past ${mm((highest + 1) * dx_m)} along`;

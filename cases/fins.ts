@@ -107,33 +107,34 @@ export function cellsWithin(fin: Outline, nx: number, ny: number, dx_m: number):
  * reaches, nx - 1 where it leads through the channel.
  */
 export function wayUp(solid: Uint8Array, nx: number, ny: number): number {
-  const seen = crowded(solid, nx, ny);
+  const seen = new Uint8Array(nx * ny);
   const open: number[] = [];
   let highest = 0;
-  const visit = (i: number): void => {
+  const visit = (x: number, y: number): void => {
+    const i = y * nx + x;
     if (seen[i] === 1) return;
     seen[i] = 1;
-    open.push(i);
+    if (!isCrowded(solid, nx, ny, x, y)) open.push(i);
   };
-  for (let y = 0; y < ny; y++) visit(y * nx);
+  for (let y = 0; y < ny; y++) visit(0, y);
   for (let i = open.pop(); i !== undefined; i = open.pop()) {
     const x = i % nx;
+    const y = (i - x) / nx;
     highest = Math.max(highest, x);
     if (x === nx - 1) return x;
-    visit(i + 1);
-    if (x > 0) visit(i - 1);
-    if (i >= nx) visit(i - nx);
-    if (i < nx * (ny - 1)) visit(i + nx);
+    if (x > 0) visit(x - 1, y);
+    visit(x, y - 1);
+    visit(x, y + 1);
+    // last, for what comes last is gone on from first, and most channels are open
+    visit(x + 1, y);
   }
   return highest;
 }
 
-/** 1 in solids, in the rows along the walls, and in cells with a solid beside them. */
-function crowded(solid: Uint8Array, nx: number, ny: number): Uint8Array {
-  const crowd = new Uint8Array(nx * ny).fill(1, 0, nx).fill(1, nx * (ny - 1));
-  for (let i = nx; i < nx * (ny - 1); i++) {
-    const sides = [i, i - nx, i + nx, i % nx === 0 ? i : i - 1, i % nx === nx - 1 ? i : i + 1];
-    if (sides.some((side) => solid[side] === 1)) crowd[i] = 1;
-  }
-  return crowd;
+/** In a solid, in the rows along the walls, or with a solid beside it. */
+function isCrowded(solid: Uint8Array, nx: number, ny: number, x: number, y: number): boolean {
+  if (y <= 0 || y >= ny - 1) return true;
+  const i = y * nx + x;
+  const beside = solid[i - nx] + solid[i] + solid[i + nx] + (x > 0 ? solid[i - 1] : 0) + (x < nx - 1 ? solid[i + 1] : 0);
+  return beside > 0;
 }

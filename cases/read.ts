@@ -6,7 +6,7 @@ import { findings, placed } from './faults.ts';
 import { finOutlines, type PlacedFin } from './fins.ts';
 import { waterDensity_kg_m3, waterSurfaceTension_N_m, waterViscosity_Pa_s } from './fluids.ts';
 import { gasOf } from './gas.ts';
-import { type CaseEntries, caseTable } from './schema.ts';
+import { type CaseEntries, readEntries } from './schema.ts';
 import { type CaseTree, parseTree, plain } from './text.ts';
 import { apparentViscosity_Pa_s, sludge, TYPICAL_RATE_1_s } from './thinning.ts';
 import { untilOf } from './until.ts';
@@ -31,7 +31,7 @@ export function readCase(text: string, file: string, sets: readonly string[] = [
  * @throws CaseError that carries every fault found
  */
 export function caseFrom(entries: unknown, tree: CaseTree): Case {
-  const read = caseTable.safeParse(entries);
+  const read = readEntries(entries);
   if (!read.success) throw new CaseError(findings(read.error.issues, entries).map((found) => placed(tree, entries, found)));
   const fins = finsOf(read.data);
   const panel = resolve(read.data, fins);

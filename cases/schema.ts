@@ -9,6 +9,7 @@ import { airKeys } from './airkeys.ts';
 import { finKeys } from './finkeys.ts';
 import { gasKeys } from './gaskeys.ts';
 import { choice, leftOut, line, plainNumber, quantity } from './leaves.ts';
+import { type Memory, remembered } from './memory.ts';
 import { recordKeys } from './recordkeys.ts';
 
 const membranes = z
@@ -116,6 +117,27 @@ export const caseTable = z
 
 /** What the table hands over: SI values, not yet checked against one another. */
 export type CaseEntries = z.output<typeof caseTable>;
+
+/** Sections as the table has read them, by name and text. */
+const sections: Memory<z.ZodSafeParseResult<unknown>> = new Map();
+
+/**
+ * Holds entries (maps, lists and texts) against the table. Sections read before are not read again: the points of a plan share nearly all of
+ * theirs. Where one is wrong the whole is read, so that what is found has its place.
+ */
+export function readEntries(entries: unknown): z.ZodSafeParseResult<CaseEntries> {
+  const { shape } = caseTable;
+  const isMap = typeof entries === 'object' && entries !== null && !Array.isArray(entries);
+  if (!isMap || Object.keys(entries).some((name) => !Object.hasOwn(shape, name))) return caseTable.safeParse(entries);
+  const data: Record<string, unknown> = {};
+  for (const [name, schema] of Object.entries(shape)) {
+    const section = (entries as Record<string, unknown>)[name];
+    const read = remembered(sections, `${name} ${JSON.stringify(section)}`, () => schema.safeParse(section));
+    if (!read.success) return caseTable.safeParse(entries);
+    data[name] = read.data;
+  }
+  return { success: true, data: data as CaseEntries };
+}
 
 /** JSON Schema (2020-12) of a case file, for completion and checks in editors. */
 export function caseSchema(): object {

@@ -5,6 +5,7 @@
 import { createRequire } from 'node:module';
 import { dirname, join } from 'node:path';
 import { closest } from 'fastest-levenshtein';
+import { type Memory, remembered } from './memory.ts';
 
 /** What went wrong with one value; the place is added by whoever knows it. */
 export interface Finding {
@@ -113,18 +114,8 @@ export function plainText(text: string): string {
     .trim();
 }
 
-/** Texts and limits that were read before: a plan reads the same few thousands of times. */
-const known = { quantities: new Map<string, { value: number } | Finding>(), limits: new Map<string, number>() };
-const MOST_KNOWN = 10_000;
-
-function remembered<T>(memory: Map<string, T>, key: string, make: () => T): T {
-  const found = memory.get(key);
-  if (found !== undefined) return found;
-  if (memory.size >= MOST_KNOWN) memory.clear();
-  const made = make();
-  memory.set(key, made);
-  return made;
-}
+/** Texts and limits that were read before. */
+const known: { quantities: Memory<{ value: number } | Finding>; limits: Memory<number> } = { quantities: new Map(), limits: new Map() };
 
 /** The SI value of `text`, or what is wrong with it. */
 export function readQuantity(text: string, measure: Measure): { value: number } | Finding {

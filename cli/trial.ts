@@ -13,9 +13,14 @@ export interface Trial {
 /** Rise speed from which the number of bubbles in the channel is guessed; it sets the scene of the trial only, m/s. */
 const GUESSED_RISE_M_S = 0.25;
 
-/** Runs the set-up, with about as many bubbles in it as it will hold, for `wall_s` seconds. */
-export async function trial(panel: Case, setup: Setup, derived: Derived, wall_s = 0.5): Promise<Trial> {
-  const simulation = await createSimulation(setup, availableParallelism());
+/** Runs the set-up on `threads`, with about as many bubbles in it as it will hold, for `wall_s` seconds. */
+export async function trial(
+  panel: Case,
+  setup: Setup,
+  derived: Derived,
+  { threads = availableParallelism(), wall_s = 0.5 } = {},
+): Promise<Trial> {
+  const simulation = await createSimulation(setup, threads);
   if (setup.gas !== undefined && derived.bubblesPerSecond > 0) {
     const radius = derived.cellsPerBubble / 2;
     const expected = (derived.bubblesPerSecond * panel.channel.height_m) / GUESSED_RISE_M_S;

@@ -2,7 +2,7 @@
 import { CaseError } from '../../solver/index.ts';
 import { findings, type PlacedFinding, placed } from '../faults.ts';
 import { readCase } from '../read.ts';
-import { caseTable } from '../schema.ts';
+import { caseTable, readEntries } from '../schema.ts';
 import { caseText, type Path, parseTree, plain } from '../text.ts';
 import { measureAt, pathOf, tabled } from './keys.ts';
 import { override, valueAt } from './override.ts';
@@ -18,7 +18,7 @@ import { comparison, NoValue } from './where.ts';
  * @param readBase finds the text of the base case
  * @throws CaseError that carries the faults found, of the plan or of its base
  */
-export function readPlan(text: string, file: string, readBase: (word: string) => { text: string; file: string }): Plan {
+export async function readPlan(text: string, file: string, readBase: (word: string) => { text: string; file: string }): Promise<Plan> {
   const tree = parseTree(text, file, []);
   const entries = plain(tree.document.contents);
   const refuse = (found: readonly PlacedFinding[]): void => {
@@ -47,7 +47,7 @@ export function readPlan(text: string, file: string, readBase: (word: string) =>
 
   const seeds = asked.seeds.length > 0 ? asked.seeds : [gas.seed];
   const all = points.flatMap((values) => seeds.map((seed) => ({ values, seed })));
-  const kept = chosen({ keys, base }, all, asked.where, refuse);
+  const kept = await chosen({ keys, base }, all, asked.where, refuse);
   if (kept.length === 0) refuse([{ path: ['where'], problem: `leaves out all ${all.length} points`, remedy: 'Loosen a comparison' }]);
   return {
     title: asked.title,
@@ -123,17 +123,17 @@ function meets(a: Path, b: Path): boolean {
 }
 
 /** The points that meet every comparison. A point that is no sound case is kept: its error is reported when its turn comes. */
-function chosen(
+async function chosen(
   plan: Pick<Plan, 'keys' | 'base'>,
   all: readonly Omit<Point, 'number'>[],
   where: readonly string[],
   refuse: (found: readonly PlacedFinding[]) => void,
-): Omit<Point, 'number'>[] {
+): Promise<Omit<Point, 'number'>[]> {
   if (where.length === 0) return [...all];
-  const read = where.map(comparison);
+  const read = await Promise.all(where.map(comparison));
   refuse(read.flatMap((found, i) => ('holds' in found ? [] : [{ path: ['where', i], ...found }])));
   return all.filter((point) => {
-    const entries = caseTable.safeParse(pointEntries(plan, { number: 0, ...point }));
+    const entries = readEntries(pointEntries(plan, { number: 0, ...point }));
     if (!entries.success) return true;
     const lookup = (path: Path): number | undefined => {
       const value = valueAt(entries.data, path);

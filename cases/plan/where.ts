@@ -3,8 +3,6 @@
  * of what it reads only numbers, units, keys, + - * / and comparisons are taken, so a plan can compute nothing else. Values carry their
  * dimensions: 3 mm is not compared with 2 s.
  */
-import { createRequire } from 'node:module';
-import { dirname, join } from 'node:path';
 import type { Path } from '../text.ts';
 import { converted, type Finding, MEASURES, plainText, unitScale } from '../units.ts';
 import { measureAt, pathOf } from './keys.ts';
@@ -58,29 +56,15 @@ class Refusal extends Error {}
 export class NoValue extends Error {}
 
 /** A comparison as a test of a case, or what is wrong with it. */
-export function comparison(text: string): { holds: (lookup: Lookup) => boolean } | Finding {
+export async function comparison(text: string): Promise<{ holds: (lookup: Lookup) => boolean } | Finding> {
+  const { parse } = await import('./parser.ts');
   try {
-    return { holds: compile(parser()(plainText(text))) };
+    return { holds: compile(parse(plainText(text)) as ParsedNode) };
   } catch (error) {
     if (error instanceof Refusal) return { problem: error.message, remedy: EXAMPLE };
     if (error instanceof SyntaxError) return { problem: `cannot be read: ${error.message}`, remedy: EXAMPLE };
     throw error;
   }
-}
-
-let loaded: ((text: string) => ParsedNode) | undefined;
-
-/** mathjs offers its parser only together with everything else, so its files are taken out of the package by their paths. */
-function parser(): (text: string) => ParsedNode {
-  if (loaded !== undefined) return loaded;
-  const require = createRequire(import.meta.url);
-  const folder = dirname(require.resolve('mathjs'));
-  const { parseDependencies } = require(join(folder, 'entry/dependenciesAny/dependenciesParse.generated.js')) as {
-    parseDependencies: object;
-  };
-  const { create } = require(join(folder, 'core/create.js')) as { create: (parts: object) => { parse: (text: string) => ParsedNode } };
-  loaded = create(parseDependencies).parse;
-  return loaded;
 }
 
 function compile(node: ParsedNode): (lookup: Lookup) => boolean {

@@ -34,7 +34,7 @@ async function expected(plan: Plan, work: readonly number[], atOnce: number): Pr
   if (sound < 0) return notes.trimEnd();
   const panel = pointCase(plan, plan.points[sound]);
   const { setup, derived } = layOut(panel);
-  const { updatesPerSecond } = await trial(panel, setup, derived, TRIAL_S);
+  const { updatesPerSecond } = await trial(panel, setup, derived, { threads: 1, wall_s: TRIAL_S });
   const total = work.reduce((sum, updates) => sum + updates, 0);
   const longest = Math.max(...work);
   const cores = Math.max(1, Math.min(atOnce, plan.points.length - unsound));

@@ -22,7 +22,7 @@ export async function readPlanSource(word: string, out: string | undefined): Pro
     const texts = await SweepFolder.texts(word);
     if (texts === undefined) throw new UsageError('plan', `${word} is a folder without a sweep in it; give a plan file`);
     if (out !== undefined) throw new UsageError('out', `--out ${out}: ${word} is a sweep that has its folder; leave --out out`);
-    const plan = readPlan(texts.plan, join(word, 'plan.yaml'), () => ({ text: texts.base, file: join(word, 'base.yaml') }));
+    const plan = await readPlan(texts.plan, join(word, 'plan.yaml'), () => ({ text: texts.base, file: join(word, 'base.yaml') }));
     return { plan, texts, folder: resolve(word) };
   }
   if (!existsSync(word)) {
@@ -31,7 +31,7 @@ export async function readPlanSource(word: string, out: string | undefined): Pro
   }
   const text = readText(word);
   let base = '';
-  const plan = readPlan(text, word, (named) => {
+  const plan = await readPlan(text, word, (named) => {
     const source = caseSource(galleryNames().includes(named) ? named : join(dirname(word), named));
     base = source.text;
     return source;
