@@ -1,7 +1,7 @@
 import { existsSync, statSync } from 'node:fs';
 import { basename, dirname, join, resolve } from 'node:path';
 import { galleryNames, type Plan, readPlan } from '../../cases/index.ts';
-import { SweepFolder, type SweepTexts } from '../../output/index.ts';
+import type { SweepTexts } from '../../output/index.ts';
 import { UsageError } from '../../solver/index.ts';
 import { caseSource, readText } from '../source.ts';
 
@@ -19,6 +19,7 @@ export interface PlanSource {
  */
 export async function readPlanSource(word: string, out: string | undefined): Promise<PlanSource> {
   if (existsSync(word) && statSync(word).isDirectory()) {
+    const { SweepFolder } = await import('../../output/index.ts');
     const texts = await SweepFolder.texts(word);
     if (texts === undefined) throw new UsageError('plan', `${word} is a folder without a sweep in it; give a plan file`);
     if (out !== undefined) throw new UsageError('out', `--out ${out}: ${word} is a sweep that has its folder; leave --out out`);

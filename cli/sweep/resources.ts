@@ -1,6 +1,5 @@
 import { readFile, statfs } from 'node:fs/promises';
 import { totalmem } from 'node:os';
-import { execa } from 'execa';
 import { UsageError } from '../../solver/index.ts';
 
 const UNITS: Record<string, number> = { kB: 1e3, MB: 1e6, GB: 1e9 };
@@ -36,7 +35,7 @@ export async function memoryOf(pid: number): Promise<number | undefined> {
     const text =
       process.platform === 'linux'
         ? await readFile(`/proc/${pid}/status`, 'utf8')
-        : (await execa('ps', ['-o', 'rss=', '-p', String(pid)])).stdout;
+        : (await (await import('execa')).execa('ps', ['-o', 'rss=', '-p', String(pid)])).stdout;
     const kilobytes = /VmRSS:\s+(\d+) kB|^\s*(\d+)\s*$/m.exec(text);
     return kilobytes === null ? undefined : 1024 * Number(kilobytes[1] ?? kilobytes[2]);
   } catch {
