@@ -113,7 +113,8 @@ class Run {
         await this.#checkpoint();
         saved_ms = performance.now();
       }
-      await new Promise((resolve) => setTimeout(resolve, 0));
+      // a timer would sleep for a millisecond
+      await new Promise((resolve) => setImmediate(resolve));
     }
     if (this.#panel.record.until === undefined) return this.#recorder.recording('span');
     return this.#recorder.recording(this.#sure ? 'sure' : 'atMost');

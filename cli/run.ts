@@ -1,7 +1,7 @@
 import { availableParallelism } from 'node:os';
 import { join } from 'node:path';
 import { type Case, type Checkpoint, type Derived, type Hooks, layOut, type Recording, simulate } from '../cases/index.ts';
-import { allSure, type Beginning, drawFrame, measure, RunFolder, surenessOf } from '../output/index.ts';
+import { allSure, type Beginning, framePainter, measure, RunFolder, surenessOf } from '../output/index.ts';
 import { OutputError } from '../solver/index.ts';
 import { catchInterrupts } from './interrupt.ts';
 import { duration, plain } from './numbers.ts';
@@ -130,11 +130,12 @@ function frameHooks(folder: RunFolder, { panel, derived }: { panel: Case; derive
   const frames = folder.record?.frames ?? 0;
   if (frames === 0) return {};
   const every = Math.max(1, Math.floor(derived.steps / (frames - 1)));
+  const paint = framePainter({ case: panel, derived });
   return {
     frameEvery_s: every * derived.dt_s,
     onFrame: (snapshot) => {
       const index = Math.round(snapshot.time_s / derived.dt_s / every);
-      return folder.writeFrame(index, drawFrame(snapshot, { case: panel, derived }));
+      return folder.writeFrame(index, paint(snapshot));
     },
   };
 }

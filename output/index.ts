@@ -8,7 +8,7 @@ export { airMeasures } from './measures/air.ts';
 export { ANSWERS, rangeOf } from './measures/answers.ts';
 export { type Measures, measure } from './measures/measures.ts';
 export { allSure, type Sureness, surenessOf } from './measures/sure.ts';
-export { drawFrame } from './pictures/frame.ts';
+export { framePainter } from './pictures/frame.ts';
 export { drawHistogram } from './pictures/histogram.ts';
 export { drawShearMap } from './pictures/shearmap.ts';
 export { readRefined } from './refine/answers.ts';

@@ -47,7 +47,8 @@ const MAKERS: Record<PartType, (bytes: ArrayBuffer) => PartArray> = {
 /** Name of the part that is the solver's image; the others are names of arrays behind a colon. */
 const SOLVER = 'solver';
 
-function encodeCheckpoint(checkpoint: Checkpoint, origin: Origin): Buffer {
+/** The pieces of a checkpoint file; the parts are not copied. */
+function encodeCheckpoint(checkpoint: Checkpoint, origin: Origin): Buffer[] {
   const parts: [string, PartArray][] = [[SOLVER, checkpoint.solver]];
   for (const [name, array] of Object.entries(checkpoint.arrays)) parts.push([`:${name}`, array]);
   const header: Header = {
@@ -63,7 +64,7 @@ function encodeCheckpoint(checkpoint: Checkpoint, origin: Origin): Buffer {
   const body = [start, headerBytes, ...parts.map(([, array]) => Buffer.from(array.buffer, array.byteOffset, array.byteLength))];
   const digest = createHash('sha256');
   for (const piece of body) digest.update(piece);
-  return Buffer.concat([...body, digest.digest()]);
+  return [...body, digest.digest()];
 }
 
 function typeOf(array: PartArray): PartType {

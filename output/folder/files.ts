@@ -34,9 +34,10 @@ export function codeOf(error: unknown): string | undefined {
  * Writes a file so that a reader sees the old one or the new one, never half of one; on the disk when it returns.
  * The bytes go into the temporary file here, for the library writes once and does not look: a disk that fills up cuts the end off
  * without an error, and the short file would take the place of the whole one (seen with 7.0.1).
+ * @param content pieces are written one after the other
  * @throws OutputError; the old file is still there
  */
-export async function writeWhole(path: string, content: string | Buffer): Promise<void> {
+export async function writeWhole(path: string, content: string | Buffer | readonly Buffer[]): Promise<void> {
   try {
     await writeFileAtomic(path, '', { tmpfileCreated: (temporary) => writeFile(temporary, content) });
   } catch (error) {

@@ -31,8 +31,13 @@ export class Canvas {
   constructor(width: number, height: number) {
     this.width = width;
     this.height = height;
-    // white paper
-    this.data = new Uint8Array(width * height * 3).fill(255);
+    this.data = new Uint8Array(width * height * 3);
+    this.clear();
+  }
+
+  /** White paper, as at the start. */
+  clear(): void {
+    this.data.fill(255);
   }
 
   set(x: number, y: number, colour: Colour): void {
@@ -92,7 +97,10 @@ export class Canvas {
     }
   }
 
-  /** The picture as a PNG file. Settings: fast, and small for fields. */
+  /**
+   * The picture as a PNG file. Settings: fast, and small for fields. A frame of 976 x 1970 pixels at level 4: 12 ms in the compressor and
+   * 98 kB, at 3: 5 ms and 131 kB; rows filtered by the one above: 3 ms more and no smaller.
+   */
   encode(): Buffer {
     const png = new PNG({ width: this.width, height: this.height });
     png.data = Buffer.from(this.data.buffer, this.data.byteOffset, this.data.byteLength);
@@ -102,7 +110,7 @@ export class Canvas {
       inputHasAlpha: false,
       filterType: 0,
       deflateStrategy: 0,
-      deflateLevel: 4,
+      deflateLevel: 3,
     });
   }
 }

@@ -33,10 +33,20 @@ const SCALE_BAR = 65;
 const BAND_LABELS = ['release', 'skim'] as const;
 
 /**
- * One state of the channel as a PNG: speed as colour, bubbles as light shapes with a dark edge, fins, walls, the ends of the release and
+ * Draws states of one channel as PNGs: speed as colour, bubbles as light shapes with a dark edge, fins, walls, the ends of the release and
  * skim bands as dashed lines; beside it time, colour bar and a scale bar. A positive tilt leans to the left: the right wall faces down.
+ * All are drawn on one canvas, for new memory each time takes as long as the channel itself.
  */
-export function drawFrame(snapshot: Snapshot, style: FrameStyle): Buffer {
+export function framePainter(style: FrameStyle): (snapshot: Snapshot) => Buffer {
+  let canvas: Canvas | undefined;
+  return (snapshot) => {
+    canvas = drawFrame(snapshot, style, canvas);
+    return canvas.encode();
+  };
+}
+
+/** @param used canvas of a frame drawn before, with the same style */
+function drawFrame(snapshot: Snapshot, style: FrameStyle, used: Canvas | undefined): Canvas {
   const { derived } = style;
   const { membranes, tilt_rad } = style.case.channel;
   const { nx, ny } = snapshot;
@@ -47,7 +57,8 @@ export function drawFrame(snapshot: Snapshot, style: FrameStyle): Buffer {
   const legendHeight = text * (LINE * (4.5 + key.length + (lean_rad === 0 ? 0 : 1)) + BAR_HEIGHT);
 
   const layout = arrange(nx, ny, scale, lean_rad, legendHeight, text);
-  const canvas = new Canvas(layout.width, layout.height);
+  const canvas = used ?? new Canvas(layout.width, layout.height);
+  canvas.clear();
   const bands = [derived.release.to_m / derived.dx_m, derived.skim.from_m / derived.dx_m];
   const speedTop_m_s = style.speedTop_m_s ?? 2 * style.case.grid.speed_m_s;
   drawStrip(canvas, snapshot, layout.placing, { membranes, speedTop_m_s, lines: bands });
@@ -86,7 +97,7 @@ export function drawFrame(snapshot: Snapshot, style: FrameStyle): Buffer {
     canvas.text(x + 15 * text, y, entry.name, { scale: text });
     y += LINE * text;
   }
-  return canvas.encode();
+  return canvas;
 }
 
 interface Layout {

@@ -39,8 +39,6 @@ const EDGE: Colour = [12, 14, 22];
 const EDGE_HALF = 0.9;
 /** Width of the interface profile phi = 1/2 + 1/2 tanh(2 d / W) from which the distance d to the edge is read; cells. */
 const INTERFACE_CELLS = 5;
-/** From this phi on a pixel is too far from an edge to show it. */
-const NEAR_EDGE = 0.9999;
 /** Length of the dashes in the lines where the release band ends and the skim band begins. */
 const DASH_PIXELS = 6;
 
@@ -59,6 +57,9 @@ export function drawStrip(canvas: Canvas, snapshot: Snapshot, placing: Placing, 
   const speed = speeds(snapshot);
   const leftWall = style.membranes.includes('left') ? MEMBRANE : PLAIN;
   const rightWall = style.membranes.includes('right') ? MEMBRANE : PLAIN;
+  const finned = solid.includes(1);
+  // from this phi on, and below its mirror image, no edge line is in sight: most pixels are spared the logarithm
+  const clear = 0.5 + 0.5 * Math.tanh((2 * (EDGE_HALF + 0.51)) / (INTERFACE_CELLS * scale));
   const sin = Math.sin(placing.tilt_rad);
   const cos = Math.cos(placing.tilt_rad);
   const wall = WALL_PIXELS / scale;
@@ -84,6 +85,8 @@ export function drawStrip(canvas: Canvas, snapshot: Snapshot, placing: Placing, 
   }
 
   function pixel(along: number, across: number): Colour {
+    if (cover(-across * scale) === 1) return leftWall;
+    if (cover((across - ny) * scale) === 1) return rightWall;
     // bilinear between the four nearest cell centres, held at the edges of the box
     const cx = Math.min(Math.max(along - 0.5, 0), nx - 1);
     const cy = Math.min(Math.max(across - 0.5, 0), ny - 1);
@@ -100,19 +103,22 @@ export function drawStrip(canvas: Canvas, snapshot: Snapshot, placing: Placing, 
     const w11 = fx * fy;
     const j = i + up;
     const liquid = w00 * phi[i] + w10 * phi[i + right] + w01 * phi[j] + w11 * phi[j + right];
-    const fast = w00 * speed[i] + w10 * speed[i + right] + w01 * speed[j] + w11 * speed[j + right];
 
-    let colour = colourAt(SPEED_MAP, fast / style.speedTop_m_s);
-    for (const line of style.lines) {
-      const off = Math.abs(along - line) * scale;
-      if (off < 0.75 && Math.floor((across * scale) / DASH_PIXELS) % 2 === 0) colour = mix(colour, GAS, 0.75);
+    let colour = GAS;
+    if (liquid > 1 - clear) {
+      const fast = w00 * speed[i] + w10 * speed[i + right] + w01 * speed[j] + w11 * speed[j + right];
+      colour = colourAt(SPEED_MAP, fast / style.speedTop_m_s);
+      for (const line of style.lines) {
+        const off = Math.abs(along - line) * scale;
+        if (off < 0.75 && Math.floor((across * scale) / DASH_PIXELS) % 2 === 0) colour = mix(colour, GAS, 0.75);
+      }
+      if (liquid < clear) {
+        const toEdge = 0.5 * INTERFACE_CELLS * Math.atanh(2 * liquid - 1) * scale;
+        colour = mix(colour, GAS, cover(-toEdge));
+        colour = mix(colour, EDGE, cover(EDGE_HALF - Math.abs(toEdge)));
+      }
     }
-    if (liquid < NEAR_EDGE) {
-      const toEdge = 0.5 * INTERFACE_CELLS * Math.atanh(2 * Math.max(liquid, 1 - NEAR_EDGE) - 1) * scale;
-      colour = mix(colour, GAS, cover(-toEdge));
-      colour = mix(colour, EDGE, cover(EDGE_HALF - Math.abs(toEdge)));
-    }
-    if (solid[i] + solid[i + right] + solid[j] + solid[j + right] > 0) {
+    if (finned && solid[i] + solid[i + right] + solid[j] + solid[j + right] > 0) {
       const within = w00 * solid[i] + w10 * solid[i + right] + w01 * solid[j] + w11 * solid[j + right];
       colour = mix(colour, FIN, cover((within - 0.5) * scale));
     }

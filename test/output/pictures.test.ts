@@ -1,6 +1,6 @@
 import { PNG } from 'pngjs';
 import { describe, expect, test } from 'vitest';
-import { drawFrame, drawHistogram, drawShearMap, measure } from '../../output/index.ts';
+import { drawHistogram, drawShearMap, framePainter, measure } from '../../output/index.ts';
 import { differenceFromGolden } from './golden.ts';
 import { makeRecording } from './recordings.ts';
 import { makeSnapshot } from './snapshots.ts';
@@ -43,7 +43,7 @@ const panel = (tilt_rad: number) =>
 describe('a frame', () => {
   test('shows a bubble with its true area', () => {
     const { case: upright, derived } = panel(0);
-    const picture = pixels(drawFrame(makeSnapshot(150, 30, [{ x: 100, y: 15, radius: 8 }]), { case: upright, derived, scale: 4 }));
+    const picture = pixels(framePainter({ case: upright, derived, scale: 4 })(makeSnapshot(150, 30, [{ x: 100, y: 15, radius: 8 }])));
     const { count } = centreOf(picture, GAS);
     // the edge line covers 1.8 pixels around the edge, half of it and the blended rim inside
     const inner = 8 * 4 - 1.4;
@@ -54,7 +54,7 @@ describe('a frame', () => {
   test('stands upright with the top above and the right wall on the right', () => {
     const { case: upright, derived } = panel(0);
     const style = { case: upright, derived, scale: 4 };
-    const place = (x: number, y: number) => centreOf(pixels(drawFrame(makeSnapshot(150, 30, [{ x, y, radius: 6 }]), style)), GAS);
+    const place = (x: number, y: number) => centreOf(pixels(framePainter(style)(makeSnapshot(150, 30, [{ x, y, radius: 6 }]))), GAS);
     const low = place(40, 10);
     const high = place(110, 10);
     const right = place(40, 20);
@@ -67,7 +67,7 @@ describe('a frame', () => {
   test('of a positive tilt leans to the left, so that the right wall faces down', () => {
     const { case: tilted, derived } = panel(TILT_RAD);
     const style = { case: tilted, derived, scale: 4 };
-    const place = (x: number, y: number) => centreOf(pixels(drawFrame(makeSnapshot(150, 30, [{ x, y, radius: 6 }]), style)), GAS);
+    const place = (x: number, y: number) => centreOf(pixels(framePainter(style)(makeSnapshot(150, 30, [{ x, y, radius: 6 }]))), GAS);
     const low = place(40, 10);
     const high = place(110, 10);
     const right = place(40, 20);
@@ -81,15 +81,24 @@ describe('a frame', () => {
   test('keeps its size whatever the state, so that frames make a film', () => {
     const { case: tilted, derived } = panel(-TILT_RAD);
     const style = { case: tilted, derived };
-    const first = pixels(drawFrame(makeSnapshot(150, 30, [], false, 0), style));
-    const last = pixels(drawFrame(makeSnapshot(150, 30, [{ x: 149, y: 29, radius: 12 }], false, 123.456), style));
+    const first = pixels(framePainter(style)(makeSnapshot(150, 30, [], false, 0)));
+    const last = pixels(framePainter(style)(makeSnapshot(150, 30, [{ x: 149, y: 29, radius: 12 }], false, 123.456)));
     expect([last.width, last.height]).toEqual([first.width, first.height]);
+  });
+
+  test('shows nothing of the frame drawn before it', () => {
+    const { case: tilted, derived } = panel(TILT_RAD);
+    const paint = framePainter({ case: tilted, derived });
+    const last = makeSnapshot(150, 30, [{ x: 60, y: 20, radius: 7 }], false, 0.5);
+    const alone = framePainter({ case: tilted, derived })(last);
+    expect(paint(makeSnapshot(150, 30, [{ x: 90, y: 10, radius: 12 }], false, 123.456)).equals(alone)).toBe(false);
+    expect(paint(last).equals(alone)).toBe(true);
   });
 
   test('is enlarged by whole cells up to a readable size, and never shrunk', () => {
     const sizes = [150, 600, 3000].map((nx) => {
       const { case: upright, derived } = makeRecording({ elements: nx, across: 8, samples: 1 });
-      return pixels(drawFrame(makeSnapshot(nx, 8, []), { case: upright, derived })).height;
+      return pixels(framePainter({ case: upright, derived })(makeSnapshot(nx, 8, []))).height;
     });
     expect(sizes).toEqual([150 * 6 + 32, 600 * 4 + 32, 3000 + 32]);
   });
@@ -109,7 +118,7 @@ describe('a frame', () => {
       ],
       true,
     );
-    expect(differenceFromGolden(name, drawFrame(snapshot, { case: shown, derived, scale: 3 }))).toBe('');
+    expect(differenceFromGolden(name, framePainter({ case: shown, derived, scale: 3 })(snapshot))).toBe('');
   });
 });
 
