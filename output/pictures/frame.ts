@@ -12,13 +12,13 @@ export interface FrameStyle {
   derived: Derived;
   /** the channel as it leans; false draws it upright. Leaning by default where the case has a tilt */
   asTilted?: boolean;
-  /** whole pixels to the cell; by default so many that the channel is some 2400 pixels long, 6 at most */
+  /** whole pixels to the cell; by default so many that the channel is some 1800 pixels long, 6 at most */
   scale?: number;
   /** speed at the end of the colour bar; faster cells get its colour. Twice the case's `grid.speed` by default: jets between bubbles pass it */
   speedTop_m_s?: number;
 }
 
-const LONGEST_PIXELS = 2400;
+const LONGEST_PIXELS = 1800;
 const LARGEST_SCALE = 6;
 const MARGIN = 16;
 /** A picture taller than this gets larger letters, for it is looked at from farther. */

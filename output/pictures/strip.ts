@@ -50,16 +50,36 @@ export interface StripStyle {
   lines: readonly number[];
 }
 
+/** What a pixel's colour is found from. */
+interface Scene extends Pick<Snapshot, 'nx' | 'ny' | 'phi' | 'solid'>, Pick<StripStyle, 'speedTop_m_s' | 'lines'> {
+  scale: number;
+  /** shape (ny, nx) */
+  speed: Float32Array;
+  leftWall: Colour;
+  rightWall: Colour;
+  finned: boolean;
+  /** from this phi on, and below its mirror image, no edge line is in sight: most pixels are spared the logarithm */
+  clear: number;
+}
+
 /** Draws the channel itself: speed in the liquid, bubbles as light shapes with a dark edge, fins grey, walls along both sides. */
 export function drawStrip(canvas: Canvas, snapshot: Snapshot, placing: Placing, style: StripStyle): void {
-  const { nx, ny, phi, solid } = snapshot;
+  const { nx, ny } = snapshot;
   const { scale } = placing;
-  const speed = speeds(snapshot);
-  const leftWall = style.membranes.includes('left') ? MEMBRANE : PLAIN;
-  const rightWall = style.membranes.includes('right') ? MEMBRANE : PLAIN;
-  const finned = solid.includes(1);
-  // from this phi on, and below its mirror image, no edge line is in sight: most pixels are spared the logarithm
-  const clear = 0.5 + 0.5 * Math.tanh((2 * (EDGE_HALF + 0.51)) / (INTERFACE_CELLS * scale));
+  const scene: Scene = {
+    nx,
+    ny,
+    phi: snapshot.phi,
+    solid: snapshot.solid,
+    scale,
+    lines: style.lines,
+    speedTop_m_s: style.speedTop_m_s,
+    speed: speeds(snapshot),
+    leftWall: style.membranes.includes('left') ? MEMBRANE : PLAIN,
+    rightWall: style.membranes.includes('right') ? MEMBRANE : PLAIN,
+    finned: snapshot.solid.includes(1),
+    clear: 0.5 + 0.5 * Math.tanh((2 * (EDGE_HALF + 0.51)) / (INTERFACE_CELLS * scale)),
+  };
   const sin = Math.sin(placing.tilt_rad);
   const cos = Math.cos(placing.tilt_rad);
   const wall = WALL_PIXELS / scale;
@@ -80,52 +100,54 @@ export function drawStrip(canvas: Canvas, snapshot: Snapshot, placing: Placing, 
       // share of the pixel inside the strip, walls included
       const inside = cover(Math.min(along, nx - along, across + wall, ny + wall - across) * scale);
       if (inside === 0) continue;
-      canvas.blend(column, row, pixel(along, across), inside);
+      canvas.blend(column, row, colourOf(scene, along, across), inside);
     }
   }
+}
 
-  function pixel(along: number, across: number): Colour {
-    if (cover(-across * scale) === 1) return leftWall;
-    if (cover((across - ny) * scale) === 1) return rightWall;
-    // bilinear between the four nearest cell centres, held at the edges of the box
-    const cx = Math.min(Math.max(along - 0.5, 0), nx - 1);
-    const cy = Math.min(Math.max(across - 0.5, 0), ny - 1);
-    const x = Math.min(Math.floor(cx), Math.max(0, nx - 2));
-    const y = Math.min(Math.floor(cy), Math.max(0, ny - 2));
-    const fx = cx - x;
-    const fy = cy - y;
-    const i = y * nx + x;
-    const right = nx > 1 ? 1 : 0;
-    const up = ny > 1 ? nx : 0;
-    const w00 = (1 - fx) * (1 - fy);
-    const w10 = fx * (1 - fy);
-    const w01 = (1 - fx) * fy;
-    const w11 = fx * fy;
-    const j = i + up;
-    const liquid = w00 * phi[i] + w10 * phi[i + right] + w01 * phi[j] + w11 * phi[j + right];
+/** Colour at a place in cells. Outside of the drawing, for a function made anew for each frame is compiled anew, which took as long as the drawing. */
+function colourOf(scene: Scene, along: number, across: number): Colour {
+  const { nx, ny, phi, solid, speed, scale, leftWall, rightWall, clear } = scene;
+  if (cover(-across * scale) === 1) return leftWall;
+  if (cover((across - ny) * scale) === 1) return rightWall;
+  // bilinear between the four nearest cell centres, held at the edges of the box
+  const cx = Math.min(Math.max(along - 0.5, 0), nx - 1);
+  const cy = Math.min(Math.max(across - 0.5, 0), ny - 1);
+  const x = Math.min(Math.floor(cx), Math.max(0, nx - 2));
+  const y = Math.min(Math.floor(cy), Math.max(0, ny - 2));
+  const fx = cx - x;
+  const fy = cy - y;
+  const i = y * nx + x;
+  const right = nx > 1 ? 1 : 0;
+  const up = ny > 1 ? nx : 0;
+  const w00 = (1 - fx) * (1 - fy);
+  const w10 = fx * (1 - fy);
+  const w01 = (1 - fx) * fy;
+  const w11 = fx * fy;
+  const j = i + up;
+  const liquid = w00 * phi[i] + w10 * phi[i + right] + w01 * phi[j] + w11 * phi[j + right];
 
-    let colour = GAS;
-    if (liquid > 1 - clear) {
-      const fast = w00 * speed[i] + w10 * speed[i + right] + w01 * speed[j] + w11 * speed[j + right];
-      colour = colourAt(SPEED_MAP, fast / style.speedTop_m_s);
-      for (const line of style.lines) {
-        const off = Math.abs(along - line) * scale;
-        if (off < 0.75 && Math.floor((across * scale) / DASH_PIXELS) % 2 === 0) colour = mix(colour, GAS, 0.75);
-      }
-      if (liquid < clear) {
-        const toEdge = 0.5 * INTERFACE_CELLS * Math.atanh(2 * liquid - 1) * scale;
-        colour = mix(colour, GAS, cover(-toEdge));
-        colour = mix(colour, EDGE, cover(EDGE_HALF - Math.abs(toEdge)));
-      }
+  let colour = GAS;
+  if (liquid > 1 - clear) {
+    const fast = w00 * speed[i] + w10 * speed[i + right] + w01 * speed[j] + w11 * speed[j + right];
+    colour = colourAt(SPEED_MAP, fast / scene.speedTop_m_s);
+    for (const line of scene.lines) {
+      const off = Math.abs(along - line) * scale;
+      if (off < 0.75 && Math.floor((across * scale) / DASH_PIXELS) % 2 === 0) colour = mix(colour, GAS, 0.75);
     }
-    if (finned && solid[i] + solid[i + right] + solid[j] + solid[j + right] > 0) {
-      const within = w00 * solid[i] + w10 * solid[i + right] + w01 * solid[j] + w11 * solid[j + right];
-      colour = mix(colour, FIN, cover((within - 0.5) * scale));
+    if (liquid < clear) {
+      const toEdge = 0.5 * INTERFACE_CELLS * Math.atanh(2 * liquid - 1) * scale;
+      colour = mix(colour, GAS, cover(-toEdge));
+      colour = mix(colour, EDGE, cover(EDGE_HALF - Math.abs(toEdge)));
     }
-    if (across < 1 / scale) colour = mix(colour, leftWall, cover(-across * scale));
-    if (across > ny - 1 / scale) colour = mix(colour, rightWall, cover((across - ny) * scale));
-    return colour;
   }
+  if (scene.finned && solid[i] + solid[i + right] + solid[j] + solid[j + right] > 0) {
+    const within = w00 * solid[i] + w10 * solid[i + right] + w01 * solid[j] + w11 * solid[j + right];
+    colour = mix(colour, FIN, cover((within - 0.5) * scale));
+  }
+  if (across < 1 / scale) colour = mix(colour, leftWall, cover(-across * scale));
+  if (across > ny - 1 / scale) colour = mix(colour, rightWall, cover((across - ny) * scale));
+  return colour;
 }
 
 /** How much of a pixel lies inside, `depth` pixels from the edge to its centre. */

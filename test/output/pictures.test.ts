@@ -100,7 +100,7 @@ describe('a frame', () => {
       const { case: upright, derived } = makeRecording({ elements: nx, across: 8, samples: 1 });
       return pixels(framePainter({ case: upright, derived })(makeSnapshot(nx, 8, []))).height;
     });
-    expect(sizes).toEqual([150 * 6 + 32, 600 * 4 + 32, 3000 + 32]);
+    expect(sizes).toEqual([150 * 6 + 32, 600 * 3 + 32, 3000 + 32]);
   });
 
   test.each([
