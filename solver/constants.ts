@@ -16,6 +16,9 @@ export const W2 = 1.0 / 36.0;
 export const TILE = 8;
 /** rows of a block, over which sums are made in one go */
 export const BLOCK = 4;
+/** bytes of a piece of a row that is collided in one go, and how many such rows that takes; see kernel/scratch.ts */
+export const PIECE_BYTES = 2048;
+export const PIECE_ROWS = 7;
 /** where the words begin by which threads agree, which are no part of the state, and their bytes; see kernel/team.ts */
 export const AT_TEAM = 1024;
 export const TEAM_BYTES = 512;

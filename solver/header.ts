@@ -1,7 +1,7 @@
 // The header of the kernel's memory: one f64 per entry, at byte 8 * entry. Literals only, compiled by both compilers.
 
 /** checked by the host against the kernel's own copy when it is loaded */
-export const VERSION = 9;
+export const VERSION = 10;
 /** bytes kept for the header */
 export const HEADER_BYTES = 1024;
 
@@ -125,6 +125,9 @@ export const ALL_ACTIVE = 87;
 export const AT_ROWS = 88;
 /** per block of BLOCK rows two rows: sums of m and of gas over each section of it */
 export const AT_BLOCKS = 89;
+
+/** per block of BLOCK rows what a piece of a row passes on in its collision, see kernel/scratch.ts */
+export const AT_SCRATCH = 100;
 
 /** gas there should be by what was placed and skimmed; what tiles of liquid add to z in each cell so that there is as much */
 export const GAS_DUE = 93;

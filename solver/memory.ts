@@ -1,5 +1,5 @@
 import type { Box } from './box.ts';
-import { BLOCK } from './constants.ts';
+import { BLOCK, PIECE_BYTES, PIECE_ROWS } from './constants.ts';
 import * as H from './header.ts';
 import { listBytes, writeLists } from './lists.ts';
 import { sharesMemory } from './module.ts';
@@ -65,6 +65,7 @@ export function layMemory(box: Box): MemoryMap {
     [H.AT_SECTIONS, take(3 * strideBytes)],
     [H.AT_ROWS, take(32 * ny)],
     [H.AT_BLOCKS, take(2 * Math.ceil(ny / BLOCK) * strideBytes)],
+    [H.AT_SCRATCH, box.twoPhase ? take(PIECE_ROWS * PIECE_BYTES * Math.ceil(ny / BLOCK)) : 0],
     ...[...listBytes(box), ...(box.twoPhase ? tileBytes(box) : [])].map(([at, bytes]): [number, number] => [at, take(bytes)]),
     [H.AT_OMEGA, table.length > 0 && !box.twoPhase ? take(ny * strideBytes) + 16 : 0],
     [H.AT_TABLE, take(8 * table.length)],

@@ -1,4 +1,4 @@
-// The collision of one row of a box with gas: which of its tiles take everything (flow.ts), which the step of liquid alone (liquid.ts).
+// The collision of one row of a box with gas: which of its tiles take everything (force.ts, flow.ts), which the step of liquid alone (liquid.ts).
 // Leaves the sum of ux and the largest u^2 of the row in its sums.
 import * as H from '../header';
 import { collide, flux } from './flow';
@@ -7,7 +7,7 @@ import { nx, rowSums } from './rows';
 import { ACTIVE, LIQUID, runBytes, SOLID, tileRow, tiles } from './tiles';
 import { largest, splat } from './vector';
 
-/** Collides in row y, each tile as it arrived, and leaves what it will need next; `Thins` as in flow.ts. */
+/** Collides in row y, each tile as it arrived, and leaves what it will need next; `Thins` as in force.ts. */
 export function collideRow<T, Thins>(y: i32, flags: i32): void {
   const was = tileRow(H.AT_WAS, y);
   const will = tileRow(H.AT_TILES, y);

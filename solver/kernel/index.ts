@@ -6,6 +6,7 @@ import { arriveRow } from './arrive';
 import { bodyForces } from './bodies';
 import { FIELDS, RENEW, STRESS, bulkRow, bulkTopU2 } from './bulk';
 import { collideRow } from './collision';
+import { bindForce } from './force';
 import { clearSolids, fillGhosts, fillReturns } from './ghosts';
 import { phiGhosts } from './phi';
 import { pressGhosts, pressRow } from './pressure';
@@ -52,6 +53,7 @@ function together<T>(): i32 {
   const steps = <i32>entry(H.ASKED_STEPS);
   const sampleEvery = <i32>entry(H.ASKED_SAMPLES);
   let step = <i64>entry(H.STEP);
+  bindForce<T>();
   share();
   let done = 0;
   while (done < steps) {

@@ -1,4 +1,4 @@
-// Tiles of liquid alone in a box with gas: arrive.ts, pressure.ts and flow.ts with phi = 1 and no gradient of it. There
+// Tiles of liquid alone in a box with gas: arrive.ts, pressure.ts, force.ts and flow.ts with phi = 1 and no gradient of it. There
 //   p = P = rho/3 sum f,   z += 3 (p - p before)/rho + amends,   u - m = force/rho + (nu - nu0 where momentum passes) div S
 // Reads f, mask, open, P, z; writes f in place, m and its moments, P, z; on demand (FIELDS) the fields, for the edge (INTERFACE) g and p.
 import * as H from '../header';
@@ -73,7 +73,7 @@ export function arriveLiquid<T>(y: i32, start: usize, end: usize): void {
   lessLiquid = total<T>(lanes);
 }
 
-/** Collides from byte `start` to byte `end` of row y, `Thins` as in flow.ts; returns the larger of `top` and the largest u^2, lane by lane. */
+/** Collides from byte `start` to byte `end` of row y, `Thins` as in force.ts; returns the larger of `top` and the largest u^2, lane by lane. */
 export function collideLiquid<T, Thins>(y: i32, flags: i32, start: usize, end: usize, top: v128): v128 {
   const size = sizeof<T>();
   const out = row(y);
