@@ -10,8 +10,8 @@ import { wallSpeed } from './walls.ts';
 
 /** First byte the host gives out: the header lies at 0, the kernel's own statics at 65536. */
 const FIRST = 131072;
-/** room for samples between two hand-overs */
-const SAMPLE_BYTES = 4 << 20;
+/** room for samples between two hand-overs: hundreds of steps, and little beside the fields of a small box, for every checkpoint holds it */
+const SAMPLE_BYTES = 1 << 19;
 
 const FIELDS = [H.AT_PHI, H.AT_UX, H.AT_UY, H.AT_P, H.AT_MASK, H.AT_TAU];
 /** in boxes with gas alone */

@@ -56,6 +56,8 @@ export class RunFolder {
   private recordWrites: Promise<void> = Promise.resolve();
   /** of a write nobody waited for */
   private failure: unknown;
+  /** the write of the newest frame */
+  private frameWrite: Promise<void> = Promise.resolve();
 
   private constructor(path: string, hold: Hold) {
     this.path = path;
@@ -173,22 +175,34 @@ export class RunFolder {
     });
   }
 
-  /** Writes one frame, `frames/0000.png` and so on. */
+  /**
+   * Takes one frame, `frames/0000.png` and so on, and writes it while the run goes on, after the one before it. A checkpoint and the results
+   * wait for it, for a run that goes on draws nothing before its checkpoint again; whatever waits throws its failure.
+   */
   async writeFrame(index: number, png: Buffer): Promise<void> {
     this.begun();
+    await this.frameWrite;
+    this.frameWrite = this.putFrame(`${String(index).padStart(4, '0')}.png`, png);
+    // told to what waits for it
+    this.frameWrite.catch(() => {});
+  }
+
+  private async putFrame(name: string, png: Buffer): Promise<void> {
     await makeFolder(join(this.path, FRAME_FOLDER));
-    await writeWhole(join(this.path, FRAME_FOLDER, `${String(index).padStart(4, '0')}.png`), png);
+    await writeWhole(join(this.path, FRAME_FOLDER, name), png);
   }
 
   /** Puts a checkpoint beside the one before, which stays until the next call. */
   async writeCheckpoint(checkpoint: Checkpoint): Promise<void> {
     const { case_sha256, versions } = this.begun();
+    await this.frameWrite;
     await this.checkpoints.write(checkpoint, { case_sha256, version: versions.swathe });
   }
 
   /** Writes tables, shear maps, histogram and summary of a recording, complete or not. The status stays `running` until `end`. */
   async writeResults(recording: Recording, measures: Measures): Promise<void> {
     this.begun();
+    await this.frameWrite;
     for (const [name, text] of Object.entries(tables(recording, measures))) await writeWhole(join(this.path, name), text);
     const style = { limit_Pa: shearLimit(recording) };
     for (const side of ['left', 'right'] as const) {
@@ -201,6 +215,7 @@ export class RunFolder {
   /** The last word: lists the files and sets the status. Checkpoints go when the run is done, else they stay to go on from. */
   async end(ending: Ending): Promise<void> {
     const record = this.begun();
+    await Promise.allSettled([this.frameWrite]);
     record.error = ending.status === 'failed' ? { kind: ending.error.name, message: ending.error.message } : null;
     record.ended = new Date().toISOString();
     record.files = await this.files();
@@ -210,6 +225,7 @@ export class RunFolder {
 
   /** Lets other processes have the folder. */
   async release(): Promise<void> {
+    await Promise.allSettled([this.frameWrite]);
     await this.hold.release();
   }
 

@@ -222,7 +222,10 @@ describe('a disk that fills up', () => {
       const folder = await RunFolder.claim(${JSON.stringify(run)});
       await folder.resume(${JSON.stringify(beginning)});
       await folder.writeFrame(0, Buffer.alloc(10));
-      await folder.writeFrame(0, Buffer.alloc(100000)).catch((error) => console.log(error.message));
+      await folder.writeFrame(0, Buffer.alloc(100000));
+      await folder.writeFrame(1, Buffer.alloc(10)).catch((error) => console.log('frame', error.message));
+      await folder.writeCheckpoint({ step: 30, solver: new Uint8Array(8), json: '{}', arrays: {} }).catch((error) => console.log('checkpoint', error.message));
+      await folder.end({ status: 'failed', error: new Error('full') });
       await folder.release();`;
     const { stdout } = await promisify(execFile)('bash', [
       '-c',
@@ -230,7 +233,9 @@ describe('a disk that fills up', () => {
       process.execPath,
       program,
     ]);
-    expect(stdout).toContain('0000.png: writing failed (EFBIG)');
+    for (const waiting of ['frame', 'checkpoint'])
+      expect(stdout).toMatch(new RegExp(`^${waiting} .*0000.png: writing failed \\(EFBIG\\)`, 'm'));
+    expect(JSON.parse(readFileSync(join(run, 'run.json'), 'utf8')).status).toBe('failed');
     expect(readFileSync(join(run, 'frames', '0000.png'))).toHaveLength(10);
     expect(readdirSync(join(run, 'frames'))).toEqual(['0000.png']);
   });
