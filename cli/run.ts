@@ -70,6 +70,9 @@ async function beginOrResume(folder: RunFolder, path: string, beginning: Beginni
     return checkpoint;
   }
   await folder.begin(beginning);
+  const { nx, ny, steps } = beginning.derived;
+  const what = `${nx} x ${ny} cells, ${steps} steps, into ${path}`;
+  if (!options.quiet) process.stderr.write(`${beginning.title}: ${what}. Ctrl-C stops it; the same command goes on\n`);
   return undefined;
 }
 
@@ -113,7 +116,7 @@ async function compute(
       return interrupt.exit() ?? 1;
     }
     const taken = duration(folder.record?.timeTaken_s ?? 0);
-    const page = [`${laid.panel.title}: done in ${taken}`, summaryPage(measures), `files: ${path}`, CAUTION].join('\n');
+    const page = [`${laid.panel.title}: done in ${taken}`, summaryPage(measures), files(path, options), CAUTION].join('\n');
     if (!options.quiet && !options.partial) process.stdout.write(`${page}\n`);
     return 0;
   } catch (error) {
@@ -147,6 +150,11 @@ async function fail(folder: RunFolder, error: unknown): Promise<void> {
   } catch {
     // the disk that would not take a result may not take this either; the caller throws what came first
   }
+}
+
+/** Where to look first. */
+function files(path: string, { frames }: RunOptions): string {
+  return `files: ${path}; look at shear-map-left.png, shear-map-right.png${frames > 0 ? ' and frames/' : ''} first, summary.json holds every answer`;
 }
 
 function stoppedPage({ history }: Recording, path: string, { words }: RunOptions): string {

@@ -17,11 +17,11 @@ export function summaryPage(measures: Measures): string {
     sure(answers, `p95_shear_${place}_Pa`),
     sure(answers, `under_gas_${place}`),
   ]);
-  const heads = ['wall', 'swept', 'gas touched', 'mean |tau|', '95th perc.', 'time under gas'];
+  const heads = ['wall', 'swept', 'gas touched', 'mean shear', '95th percentile', 'time under gas'];
   return [
     `swept: share of the wall above ${plain(above_Pa)} Pa at least once within ${plain(within_s)} s`,
     table([heads, ...rows]),
-    `channel: hold-up ${sure(answers, 'holdup')}, upflow ${sure(answers, 'upflow_m_s')} (means after settling)`,
+    `channel: hold-up ${sure(answers, 'holdup')}, upflow ${sure(answers, 'upflow_m_s')} (means after settling; hold-up: share of gas)`,
     'in brackets: 95 % interval, ? where this recording cannot tell it',
     ...besides(answers, measures),
     basisLine(measures),
@@ -61,7 +61,9 @@ function besides(answers: Answers, { backTransport }: Measures): string[] {
   const { worst } = backTransport.together;
   if (worst !== null) {
     const [diameter_um, flux] = [2e6 * worst.radius_m, LITRES * worst.total_m_s];
-    found.push(`back-transport: least for particles of ${plain(diameter_um)} um, ${plain(flux)} L/(m2 h), an estimate`);
+    found.push(
+      `back-transport: a flux of up to ${plain(flux)} L/(m2 h) is sustained for particles of ${plain(diameter_um)} um, the worst size; an estimate`,
+    );
   }
   const cover = answers.get('settled_cover_together')?.value ?? null;
   if (cover !== null) found.push(`deposit: covers ${percent(cover)} of the membranes once settled, by a model`);

@@ -14,6 +14,12 @@ describe('a run from end to end', () => {
     ended = await bench.swathe('run', 'tiny.yaml', '--frames', '3', '--set', 'channel.tilt=20 deg');
   });
 
+  it('says at once what is computed, where to, and how to stop it', () => {
+    expect(ended.error).toMatch(
+      /^Short piece for tests: 72 x 16 cells, \d+ steps, into runs\/tiny\. Ctrl-C stops it; the same command goes on\n/,
+    );
+  });
+
   it('ends well and says where the files are and what they hold', () => {
     expect(ended.error).not.toContain('swathe:');
     expect(ended.exit).toBe(0);
@@ -21,7 +27,7 @@ describe('a run from end to end', () => {
     expect(ended.out).toContain('above 0.1 Pa at least once within 0.02 s');
     expect(ended.out).toMatch(/left +\d.*%.*Pa/);
     expect(ended.out).toMatch(/right +\d.*%.*Pa/);
-    expect(ended.out).toContain('runs/tiny');
+    expect(ended.out).toMatch(/^files: runs\/tiny; look at shear-map-left.png, shear-map-right.png and frames\/ first/m);
     expect(ended.out).toContain('softened');
     expect(ended.out).toContain('not for design');
   });
