@@ -1,5 +1,6 @@
 import type { Check } from '../row.ts';
 import { check as atRest } from './at-rest.ts';
+import { check as bubbleBalance } from './bubble-balance.ts';
 import { check as capillaryWave } from './capillary-wave.ts';
 import { check as cavity } from './cavity.ts';
 import { check as contactAngle } from './contact-angle.ts';
@@ -21,6 +22,6 @@ import { check as twoLayer } from './two-layer.ts';
 export const CHECKS: readonly Check[] = [
   ...[poiseuille, oscillating, taylorGreen, cavity, cylinders, inclined, rheology],
   ...[twoLayer, film, laplace, capillaryWave, contactAngle, contactAngleInclined],
-  ...[risingBubble, stallCheck, longCheck, atRest, drift],
+  ...[risingBubble, bubbleBalance, stallCheck, longCheck, atRest, drift],
   ...findingChecks,
 ];
