@@ -33,7 +33,7 @@ describe('plane Poiseuille flow', () => {
   });
 
   // A plain f32 sum loses 8e-5 of the force at tau 0.7, see kernel/tremble.ts. What is left grows as the force shrinks beside the
-  // momentum it is added to: 8e-7, 9e-7, 1.1e-5, 3.1e-5 were seen.
+  // momentum it is added to: 8e-7, 9e-7, 1.1e-5, 3.1e-5 were seen. It is a steady part, the same over 16 000 steps; in f64 2e-8.
   it.each([
     [1.5, 8e-6],
     [1, 9e-6],
