@@ -87,7 +87,7 @@ class LocalSweep {
 
     const queue = new PQueue({ concurrency: options.atOnce });
     const work = queue.addAll(
-      open.map((point) => async () => {
+      longestFirst(open, standing.work).map((point) => async () => {
         if (stopped.aborted || this.trouble !== undefined) return;
         try {
           await this.compute(point, stopped, view.say);
@@ -227,6 +227,11 @@ class LocalSweep {
       jobs: [],
     };
   }
+}
+
+/** In the order of starting: what is long and starts last keeps one core busy and the others waiting. Equal ones stay in the order of the plan. */
+function longestFirst(points: readonly Point[], work: readonly number[]): Point[] {
+  return points.toSorted((a, b) => work[b.number - 1] - work[a.number - 1]);
 }
 
 function failureLine({ kind, message }: Failure): string {

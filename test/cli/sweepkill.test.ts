@@ -1,13 +1,15 @@
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { Bench } from './swathe.ts';
-import { childrenOf, PIECE, PLAN, rowsOf, timeless, until } from './sweeps.ts';
+import { childrenOf, FINNED, PIECE, PLAN, PLAN24, rowsOf, SLOW, timeless, until } from './sweeps.ts';
 
-/** Kills of the sweep and of its runs; ten of each were survived when this was written, and are with SWATHE_SLOW=1. */
-const KILLS = process.env.SWATHE_SLOW === '1' ? 10 : 3;
+/** Kills of the sweep and of its runs. */
+const KILLS = SLOW ? 10 : 3;
+const POINTS = SLOW ? 24 : 6;
 
 const bench = new Bench();
 bench.file('piece.yaml', PIECE);
-bench.file('plan.yaml', PLAN.replace('base:', 'set: {record.span: 120 ms}\nbase:'));
+bench.file('finned.yaml', FINNED);
+bench.file('plan.yaml', (SLOW ? PLAN24 : PLAN).replace('base:', 'set: {record.span: 120 ms}\nbase:'));
 afterAll(() => bench.remove());
 
 let whole = '';
@@ -18,7 +20,7 @@ beforeAll(async () => {
   took_ms = performance.now() - start;
   expect(exit).toBe(0);
   whole = timeless(bench, 'whole/plan');
-});
+}, 600_000);
 
 describe('a sweep that is killed, and whose runs are killed', () => {
   it('at random moments, time and again, ends in the same table', async () => {
@@ -33,10 +35,10 @@ describe('a sweep that is killed, and whose runs are killed', () => {
     let killedRuns = 0;
     for (let round = 0; round < 4 * KILLS && kills < KILLS; round++) {
       const { child, ended } = bench.start(...words);
-      await until(() => childrenOf(bench, 'killed/plan', 6).length > 0 || child.exitCode !== null);
+      await until(() => childrenOf(bench, 'killed/plan', POINTS).length > 0 || child.exitCode !== null);
       const pause = (most_ms: number) => Promise.race([ended, new Promise((resolve) => setTimeout(resolve, random() * most_ms))]);
       await pause((0.5 * took_ms) / KILLS);
-      const runs = childrenOf(bench, 'killed/plan', 6);
+      const runs = childrenOf(bench, 'killed/plan', POINTS);
       if (runs.length > 0) {
         process.kill(runs[Math.floor(random() * runs.length)], 'SIGKILL');
         killedRuns++;
@@ -50,7 +52,7 @@ describe('a sweep that is killed, and whose runs are killed', () => {
     const { exit, error } = await bench.swathe(...words);
     expect(error).toBe('');
     expect(exit).toBe(0);
-    expect(rowsOf(bench, 'killed/plan')).toHaveLength(6);
+    expect(rowsOf(bench, 'killed/plan')).toHaveLength(POINTS);
     expect(timeless(bench, 'killed/plan')).toBe(whole);
-  }, 600_000);
+  }, 1_800_000);
 });

@@ -25,6 +25,22 @@ vary:
   - {key: channel.tilt, from: 0 deg, to: 20 deg, step: 20 deg}
 `;
 
+/** Twenty-four points of a piece with a fin: gap by tilt by angle. */
+export const FINNED = PIECE.replace(
+  'grid:',
+  'fins:\n  - {from: 20 mm, across: 2.4 mm, length: 4 mm, thickness: 1.2 mm, angle: 20 deg}\ngrid:',
+);
+export const PLAN24 = `title: Brackenfold, gap by tilt by fin angle
+base: finned.yaml
+vary:
+  - {key: channel.gap, values: [7 mm, 8 mm, 9 mm]}
+  - {key: channel.tilt, from: 0 deg, to: 30 deg, step: 10 deg}
+  - {key: fins.0.angle, values: [0 deg, 30 deg]}
+`;
+
+/** Long tests, on the plan of twenty-four points. */
+export const SLOW = process.env.SWATHE_SLOW === '1';
+
 /** The rows of a sweep's table. */
 export function rowsOf(bench: Bench, folder: string): DSVRowString[] {
   return [...csvParse(bench.read(folder, 'results.csv'))];
