@@ -7,8 +7,11 @@ import { drawMap } from './map.ts';
 import { drawOverview } from './overview.ts';
 import { type ResultRow, resultsCsv, resultsParquet } from './results.ts';
 
-/** Share of the time that writing the table may take: with thousands of rows it is not written after every case. */
-const WRITING_SHARE = 0.05;
+/**
+ * Share of the time that writing the table may take: with thousands of rows, or cases of seconds, it is not written after every case. The
+ * cases keep all cores busy, so what is written takes time from them.
+ */
+const WRITING_SHARE = 0.01;
 
 /** What the pictures show: whether the walls are swept, how hard, and how much gas that takes. */
 const SHOWN = ['swept_together', 'mean_shear_together_Pa', 'holdup'];
