@@ -38,8 +38,8 @@ export interface LocalOptions {
 export const SOME_FAILED = 5;
 
 const LOOK_MS = 1000;
-/** Until then a rate says nothing, s. */
-const FIRST_RATE_S = 2;
+/** Until so much of a case has been computed a rate says nothing. */
+const FIRST_SHARE = 0.05;
 
 /** Runs what is missing of a sweep, each case as a process of its own. Returns the exit code. */
 export async function runLocally(plan: Plan, folder: SweepFolder, options: LocalOptions): Promise<number> {
@@ -198,7 +198,8 @@ class LocalSweep {
     const { standing, plan } = this;
     const made = standing.made();
     const passed_s = (performance.now() - this.start.ms) / 1000;
-    const rate = passed_s < FIRST_RATE_S ? 0 : (made - this.start.made) / passed_s;
+    const gained = made - this.start.made;
+    const rate = gained < FIRST_SHARE * Math.max(...standing.work) ? 0 : gained / passed_s;
     return {
       points: plan.points.length,
       done: standing.count('done'),

@@ -52,14 +52,30 @@ function lines(stream: WriteStream): SweepView {
   };
 }
 
+/** Long lines go on in the next one, or end at the edge. */
+const WRAP = '\x1b[?7h';
+const CUT = '\x1b[?7l';
+const CLEAR_BELOW = '\x1b[J';
+
 /** One bar for the sweep and one for each running case; what has ended scrolls away above them. */
 function bars(stream: WriteStream): SweepView {
   const format = '{bar} {percentage} %  {says}';
   const view = new MultiBar(
-    { stream, format, barsize: 24, hideCursor: true, clearOnComplete: true, fps: 4, emptyOnZero: true },
+    // redrawn whole: a line that stays is written over the topmost bar, and those that did not change would be left where they were
+    {
+      stream,
+      format,
+      barsize: 24,
+      hideCursor: true,
+      clearOnComplete: true,
+      fps: 4,
+      emptyOnZero: true,
+      forceRedraw: true,
+      autopadding: true,
+    },
     Presets.shades_grey,
   );
-  const overall = view.create(1000, 0, { says: '' });
+  const overall = view.create(1000, 0, { says: 'starting' });
   const perCase = new Map<string, SingleBar>();
   const perMille = (share: number): number => Math.round(1000 * share);
   return {
@@ -76,7 +92,12 @@ function bars(stream: WriteStream): SweepView {
         bar.update(perMille(share), { says: `${name} ${says}` });
       }
     },
-    say: (text) => view.log(`${text}\n`),
-    end: () => view.stop(),
+    // in the place of the bars, which are drawn anew below; they are cut off at the edge, messages are not
+    say: (text) => view.log(`${CLEAR_BELOW}${WRAP}${text}${CUT}\n`),
+    end: () => {
+      // the last lines are said still
+      view.update();
+      view.stop();
+    },
   };
 }

@@ -3,7 +3,8 @@ import { mkdtempSync, readdirSync, readFileSync, rmSync, writeFileSync } from 'n
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
 
-const MAIN = join(import.meta.dirname, '../../.build/cli/main.js');
+/** The built command line. */
+export const MAIN = join(import.meta.dirname, '../../.build/cli/main.js');
 
 /** How a command ended. */
 export interface Ended {

@@ -1,7 +1,8 @@
+import { spawnSync } from 'node:child_process';
 import { existsSync, mkdirSync, readdirSync, writeFileSync } from 'node:fs';
 import { parquetReadObjects } from 'hyparquet';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
-import { Bench, type Ended } from './swathe.ts';
+import { Bench, type Ended, MAIN } from './swathe.ts';
 import { childrenOf, isAlive, PIECE, PLAN, rowsOf, timeless, until } from './sweeps.ts';
 
 const bench = new Bench();
@@ -99,6 +100,26 @@ describe('a sweep from end to end', () => {
     expect(error.match(/^000\d done in/gm)).toHaveLength(2);
     const [wider, plan] = ['one/wider', 'one/plan'].map((folder) => rowsOf(bench, folder).map(({ point, ...rest }) => rest));
     expect(wider.slice(0, 4)).toEqual([plan[0], plan[1], plan[4], plan[5]]);
+  });
+});
+
+describe('a sweep on a terminal', () => {
+  const noTerminal = spawnSync('script', ['--version']).status !== 0;
+  it.skipIf(noTerminal)(`draws its bars anew below each line that stays${noTerminal ? ' (left out: needs script)' : ''}`, () => {
+    const command = `stty cols 70; ${process.execPath} ${MAIN} sweep plan.yaml --out drawn/plan`;
+    const env = { ...process.env, TERM: 'xterm', NO_COLOR: '1' };
+    const drawn = spawnSync('script', ['-qec', command, '/dev/null'], { cwd: bench.folder, env, encoding: 'utf8' });
+    expect(drawn.status).toBe(0);
+    const text = drawn.stdout.replaceAll('\x1b', '^');
+    // up to where the cursor goes back to the topmost bar
+    const frames = text.split(/\^\[\d+A/);
+    const said = frames.filter((frame) => frame.includes('done in'));
+    expect(said.join('').match(/\^\[J\^\[\?7h\d{4} done in .* of 6.*\^\[\?7l\r\n/g)).toHaveLength(6);
+    for (const frame of said) expect(frame.slice(frame.lastIndexOf('done in'))).toMatch(/\n.* \d+ % {2}done \d, failed 0, running \d of 6/);
+    // nothing is told of the time left before anything is known
+    expect(frames.slice(0, 3).join('')).not.toContain('left');
+    // the bars are gone in the end, and the cursor is back
+    expect(text).toMatch(/\^\[\?25h[^░█]*6 of 6 cases done\r\n/);
   });
 });
 
