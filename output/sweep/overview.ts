@@ -14,6 +14,8 @@ export interface SweepPicture {
 }
 
 const PANEL = { width: 360, height: 230, gapAcross: 96, gapDown: 74, right: 30 };
+/** What the line below the title needs, where panels take less. */
+const TITLE_WIDTH = 700;
 const POINT: Colour = [40, 96, 160];
 const INTERVAL: Colour = [150, 178, 210];
 const MEAN: Colour = [196, 98, 16];
@@ -37,7 +39,7 @@ interface Placed {
 export function drawOverview(picture: SweepPicture): Buffer {
   const { keys, measures, rows, title } = picture;
   const width = ROOM.left + keys.length * (PANEL.width + PANEL.gapAcross) - PANEL.gapAcross + PANEL.right;
-  const canvas = new Canvas(Math.max(width, 520), ROOM.top + measures.length * (PANEL.height + PANEL.gapDown));
+  const canvas = new Canvas(Math.max(width, TITLE_WIDTH), ROOM.top + measures.length * (PANEL.height + PANEL.gapDown));
   const shown = rows.filter(({ status }) => status === 'done').length;
   drawTitle(canvas, ROOM.left, 10, title, `${shown} of ${rows.length} cases; bars: 95 % intervals; line: mean over the other keys`);
   measures.forEach((measure, j) => {
