@@ -75,7 +75,8 @@ describe.skipIf(reason !== undefined)(`a sweep on Slurm${reason === undefined ? 
     expect(twice.error).toMatch(
       /the sweep is on the cluster already \(jobs .*\); see how it stands with --status, or end it with --cancel/,
     );
-    const { out } = await bench.swathe('sweep', 'cluster/plan', '--status');
+    const { out, error } = await bench.swathe('sweep', 'cluster/plan', '--status');
+    expect(error).toBe('');
     expect(out).toMatch(new RegExp(`^on Slurm: jobs ${jobs}$`, 'm'));
     await until(() => {
       if (queue() !== '') hurry(`${first}_1`);
