@@ -35,10 +35,10 @@ export const KNOWN: readonly { check: string; quantity: string; reason: string }
     check: 'bubble-balance',
     quantity: 'bubble of 3.5 mm',
     reason:
-      'two causes at 40 cells. 10 % (20 at 24 cells, 12 at 80) is lost as momentum: the mass that the interface equation moves across the ' +
+      'two parts at 40 cells. 10 % (20 at 24 cells, 12 at 80) is lost as momentum, likely because the mass that the interface equation moves across the ' +
       'interface carries none in the velocity form. With mobility 0.05, 0.02 at 24 cells 10, 1.4 %; at 40 cells and 0.02, -0.8 %. The force ' +
       '-(density difference) J . grad u, J the flux of that equation, tried in the reference at 24 cells: 20.7, 4.1, -6.9, -11.1 % at 0, 0.3, ' +
-      '0.65, 1 of it; cause and sign right, its form on the grid is not. The other 3 % (9, 0.3; 9 with mobility 0.02, where phi spreads): ' +
+      '0.65, 1 of it; the sign is right, at its full strength it is too much. The other 3 % (9, 0.3; 9 with mobility 0.02, where phi spreads): ' +
       'buoyancy goes with 1 - h, not 1 - phi',
   },
   {
