@@ -19,9 +19,8 @@ export async function listPoints(plan: Plan, atOnce: number): Promise<void> {
   ]);
   const heads = ['point', ...plan.keys.map(({ key }) => key), 'seed', '1e9 updates'];
   const left = plan.leftOut === 0 ? '' : `, ${count(plan.leftOut)} left out by where`;
-  process.stdout.write(
-    `${plan.title}: ${count(plan.points.length)} cases${left}\n${table([heads, ...rows])}\n${await expected(plan, work, atOnce)}\n`,
-  );
+  process.stdout.write(`${plan.title}: ${count(plan.points.length)} cases${left}\n${table([heads, ...rows])}\n`);
+  process.stdout.write(`${await expected(plan, work, atOnce)}\n`);
 }
 
 async function expected(plan: Plan, work: readonly number[], atOnce: number): Promise<string> {
