@@ -82,7 +82,9 @@ export async function cancel(folder: SweepFolder): Promise<void> {
 
 /** Puts this task back into the queue, to go on from its checkpoint. Outside of a job nothing happens. */
 export async function requeue(): Promise<void> {
-  const job = process.env.SLURM_JOB_ID;
+  const { SLURM_ARRAY_JOB_ID: array, SLURM_ARRAY_TASK_ID: index, SLURM_JOB_ID: own } = process.env;
+  // one task of an array goes by the number of the array itself, which stands for all of them
+  const job = array !== undefined && index !== undefined ? `${array}_${index}` : own;
   if (job !== undefined) await slurm('scontrol', ['requeue', job]);
 }
 

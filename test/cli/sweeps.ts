@@ -72,10 +72,10 @@ export function isAlive(pid: number): boolean {
   }
 }
 
-export async function until(condition: () => boolean, most_ms = SLOW ? 600_000 : 60_000): Promise<void> {
+export async function until(condition: () => boolean, most_ms = SLOW ? 600_000 : 60_000, every_ms = 10): Promise<void> {
   const end = performance.now() + most_ms;
   while (!condition()) {
     if (performance.now() > end) throw new Error(`waited ${most_ms} ms in vain`);
-    await new Promise((resolve) => setTimeout(resolve, 10));
+    await new Promise((resolve) => setTimeout(resolve, every_ms));
   }
 }
