@@ -52,8 +52,8 @@ interface Part {
 }
 
 /**
- * Ranks geometries by one measure and says which differences are more than chance; of one geometry alone, its runs. Runs that are not there are computed first, each in a
- * process of its own. Returns the exit code: that of a run that failed or of an interrupt, else 0 whatever the verdicts.
+ * Ranks geometries by one measure and says which differences are more than chance; of one geometry alone, its runs. Runs that are not
+ * there are computed first, each in a process of its own. Returns the exit code: that of a run that failed or of an interrupt, else 0 whatever the verdicts.
  */
 export async function compare(options: CompareOptions): Promise<number> {
   const { by, quiet } = options;

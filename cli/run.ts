@@ -72,7 +72,7 @@ async function beginOrResume(folder: RunFolder, path: string, beginning: Beginni
   await folder.begin(beginning);
   const { nx, ny, steps } = beginning.derived;
   const what = `${nx} x ${ny} cells, ${steps} steps, into ${path}`;
-  if (!options.quiet && !options.partial) process.stderr.write(`${beginning.title}: ${what}. Ctrl-C stops it; the same command goes on\n`);
+  if (!options.quiet && !options.partial) process.stderr.write(`${beginning.title}: ${what}. Ctrl-C stops it and says how to go on\n`);
   return undefined;
 }
 

@@ -16,7 +16,7 @@ describe('a run from end to end', () => {
 
   it('says at once what is computed, where to, and how to stop it', () => {
     expect(ended.error).toMatch(
-      /^Short piece for tests: 72 x 16 cells, \d+ steps, into runs\/tiny\. Ctrl-C stops it; the same command goes on\n/,
+      /^Short piece for tests: 72 x 16 cells, \d+ steps, into runs\/tiny\. Ctrl-C stops it and says how to go on\n/,
     );
   });
 
